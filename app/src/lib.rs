@@ -1,0 +1,1 @@
+//! The rim: files, command line, window.

@@ -1,0 +1,2 @@
+//! Wedgewright.
+fn main() {}

@@ -1,0 +1,1 @@
+//! Text in, drawings out, and back.

@@ -1,0 +1,5 @@
+//! What the graph alone says: rings, symmetry, mancude systems.
+
+mod rings;
+
+pub use rings::Rings;

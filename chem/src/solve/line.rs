@@ -1,0 +1,1 @@
+//! A requirement line as typed: its grammar, notes and errors.

@@ -1,0 +1,7 @@
+//! Tetrahedral centres.
+
+use super::Unit;
+use crate::molecule::Molecule;
+use crate::perceive::Rings;
+
+pub(super) fn find(_molecule: &Molecule, _rings: &Rings, _list: &mut Vec<Unit>) {}

@@ -65,10 +65,7 @@ enum Role {
 
 /// For each atom, what it carries as a member of a delocalised ring system.
 pub fn delocalised(molecule: &Molecule, rings: &Rings) -> Vec<Option<Delocalised>> {
-    let mut roles: Vec<Role> = molecule
-        .atoms()
-        .map(|a| role(molecule, rings, a))
-        .collect();
+    let mut roles: Vec<Role> = molecule.atoms().map(|a| role(molecule, rings, a)).collect();
     drop_outsiders(molecule, rings, &mut roles);
     let mut carried = vec![None; molecule.n_atoms()];
     let mut seen = vec![false; molecule.n_atoms()];

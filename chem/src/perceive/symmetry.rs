@@ -85,10 +85,7 @@ mod tests {
 
     #[test]
     fn branches_that_look_alike_share_a_class() {
-        let m = build(
-            &["C", "C", "C", "O"],
-            &[(0, 1, 1), (1, 2, 1), (1, 3, 1)],
-        );
+        let m = build(&["C", "C", "C", "O"], &[(0, 1, 1), (1, 2, 1), (1, 3, 1)]);
         let s = Symmetry::find(&m);
         assert_eq!(s.class(AtomIx::new(0)), s.class(AtomIx::new(2)));
         assert_eq!(s.n_classes(), 3);

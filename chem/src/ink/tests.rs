@@ -253,6 +253,40 @@ fn special_bonds_look_like_nothing_else() {
 }
 
 #[test]
+fn a_wave_runs_from_atom_to_atom_and_to_both_sides() {
+    let ink = ink(&[("C", 0.0, 0.0), ("C", 1.0, 0.0)], &[(0, 1, 1, '~')]);
+    let points = plane::corners(strokes(&ink, 0)[0], 0.01);
+    assert!(points[0].distance(Point::ORIGIN) < 1e-9);
+    assert!(points[points.len() - 1].distance(Point::new(14.4, 0.0)) < 1e-9);
+    let high = 0.5 * journal().wedge_width - 0.05;
+    assert!(points.iter().any(|p| p.y > high) && points.iter().any(|p| p.y < -high));
+}
+
+#[test]
+fn a_crossed_double_bond_crosses_itself() {
+    let ink = ink(&[("C", 0.0, 0.0), ("C", 1.0, 0.0)], &[(0, 1, 2, 'x')]);
+    let [[a, b], [c, d]] = [0, 1].map(|i| line(strokes(&ink, 0)[i]));
+    assert!(crate::geom::cross(a, b, c, d));
+}
+
+#[test]
+fn labels_that_leave_little_room_still_show_their_bond() {
+    for style in STYLES {
+        let drawing = draw(&[("O", 0.0, 0.0), ("N", 1.0, 0.0)], &[(0, 1, 1, ' ')]);
+        let ink = compose(&drawing, style, &[], None);
+        let [a, b] = line(strokes(&ink, 0)[0]);
+        assert!(b.x - a.x > 0.15 * style.bond_length, "{}", style.name);
+        assert_eq!(
+            runs(&ink)
+                .iter()
+                .map(|r| r.text.as_str())
+                .collect::<String>(),
+            "HONH2"
+        );
+    }
+}
+
+#[test]
 fn a_carbon_in_a_straight_line_is_written() {
     let text = |x| -> Vec<String> {
         let ink = ink(

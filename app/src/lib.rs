@@ -1,1 +1,3 @@
 //! The rim: files, command line, window.
+
+pub mod export;

@@ -11,7 +11,9 @@ How a record is drawn (second column, words apart by blanks; `-` for the plain l
   move       first mark on another bond        half           the bonds of a centre within half a plane
   two        a second mark at a centre with four drawn bonds
 
-Usage: make_worked.py   (needs rdkit; rewrites worked.sdf, says which records it left out)
+Usage: make_worked.py [--check]   (needs rdkit 2026.9.1)
+Rewrites worked.sdf and says which records it left out; with --check it only reads what is there. Exit
+status 1 if a record was left out or is not as its row in the table.
 """
 import math
 import os
@@ -188,25 +190,31 @@ def is_right(block, want, inchi):
     return mol is not None and read_labels(mol) == want and Chem.MolBlockToInchi(block) == inchi
 
 
-def draw(title, options, name, smiles):
-    """The record's molfile and labels, or the reason why there is none."""
+def meaning(name, smiles):
+    """The structure (map numbers kept), its labels by the name, and its InChI.
+
+    Raises ValueError with the reason where name and structure do not agree.
+    """
     letters = descriptors(name)
-    params = Chem.SmilesParserParams()
-    params.removeHs = False
-    mol = Chem.MolFromSmiles(smiles, params)
+    mol = Chem.MolFromSmiles(smiles)
     if sorted(a.GetAtomMapNum() for a in mol.GetAtoms() if a.GetAtomMapNum()) != list(range(1, len(letters) + 1)):
-        return None, "map numbers and descriptors do not match"
+        raise ValueError("map numbers and descriptors do not match")
     want = wanted_labels(mol, letters)
-    centers = [a.GetIdx() for a in sorted(mol.GetAtoms(), key=lambda a: a.GetAtomMapNum())
-               if a.GetAtomMapNum() and want[a.GetIdx() + 1] not in "EZ" and a.GetTotalNumHs() == 1]
-    if ("H" in options or "two" in options) and centers:
-        mol = Chem.AddHs(mol, onlyOnAtoms=centers[:1])
     plain = Chem.Mol(mol)
     for atom in plain.GetAtoms():
         atom.SetAtomMapNum(0)
     if read_labels(plain) != want:
-        return None, f"the structure has {read_labels(plain)}, the name {want}"
-    inchi = Chem.MolToInchi(plain)
+        raise ValueError(f"the structure has {read_labels(plain)}, the name {want}")
+    return mol, want, Chem.MolToInchi(plain)
+
+
+def draw(title, options, name, smiles):
+    """The record's molfile. Raises ValueError with the reason where there is none."""
+    mol, want, inchi = meaning(name, smiles)
+    centers = [a.GetIdx() for a in sorted(mol.GetAtoms(), key=lambda a: a.GetAtomMapNum())
+               if a.GetAtomMapNum() and want[a.GetIdx() + 1] not in "EZ" and a.GetTotalNumHs() == 1]
+    if ("H" in options or "two" in options) and centers:
+        mol = Chem.AddHs(mol, onlyOnAtoms=centers[:1])
     sheet = Sheet(mol, options)
     if "hash" in options and next(iter(sheet.marks.values()))[1] != HASHED:
         sheet.points = [(-x, y) for x, y in sheet.points]
@@ -221,31 +229,64 @@ def draw(title, options, name, smiles):
                 sheet.marks = kept
     for block in blocks:
         if is_right(block, want, inchi):
-            return block, " ".join(f"{n}{want[n]}" for n in sorted(want))
-    return None, f"no drawing of {len(blocks)} is read as wanted"
+            return block
+    raise ValueError(f"no drawing of {len(blocks)} is read as wanted")
+
+
+def show(labels):
+    """Labels as '3R 7E 8E'."""
+    return " ".join(f"{n}{labels[n]}" for n in sorted(labels))
+
+
+def table():
+    """Rows of worked.tsv: title, options, name, structure, source."""
+    with open(os.path.join(CORPUS, "worked.tsv"), encoding="utf-8") as file:
+        for line in file:
+            if not line.startswith("#"):
+                title, how, name, smiles, source = line.rstrip("\n").split("\t")
+                options = dict(word.partition("=")[::2] for word in how.split() if word != "-")
+                yield title, options, name, smiles, SOURCES.get(source, f"IUPAC 2013 recommendations, {source}")
+
+
+def make(path):
+    """Writes worked.sdf; number of records left out."""
+    lost = 0
+    with open(path, "w", encoding="utf-8", newline="\n") as out:
+        for title, options, name, smiles, source in table():
+            try:
+                block = draw(title, options, name, smiles)
+            except ValueError as why:
+                lost += 1
+                print(f"{title}: left out: {why}")
+                continue
+            labels = show(meaning(name, smiles)[1])
+            for field, value in (("NAME", name), ("LABELS", labels), ("SOURCE", source + "; from memory")):
+                block += f"> <{field}>\n{value}\n\n"
+            out.write(block + "$$$$\n")
+    return lost
+
+
+def check(path):
+    """Whether both outside readers read from every record what its name says; number of faults."""
+    with open(path, encoding="utf-8") as file:
+        records = file.read().split("$$$$\n")[:-1]
+    rows = list(table())
+    bad = len(records) != len(rows)
+    for record, (title, _, name, smiles, _) in zip(records, rows):
+        _, want, inchi = meaning(name, smiles)
+        block = record[: record.index("M  END") + 7]
+        fields = dict(re.findall(r"> <(\w+)>\n(.*)", record))
+        if (fields["NAME"], fields["LABELS"]) != (name, show(want)) or not is_right(block, want, inchi):
+            bad += 1
+            print(f"  {title}: is not as its row in the table")
+    print(f"worked examples: {len(records)} records of {len(rows)} rows, {int(bad)} faults")
+    return bad
 
 
 def main():
-    """Rewrites worked.sdf."""
-    lost = 0
-    with open(os.path.join(CORPUS, "worked.tsv"), encoding="utf-8") as table, \
-            open(os.path.join(CORPUS, "worked.sdf"), "w", encoding="utf-8", newline="\n") as out:
-        for line in table:
-            if line.startswith("#"):
-                continue
-            title, how, name, smiles, source = line.rstrip("\n").split("\t")
-            options = dict(word.partition("=")[::2] for word in how.split() if word != "-")
-            block, labels = draw(title, options, name, smiles)
-            if block is None:
-                lost += 1
-                print(f"{title}: left out: {labels}")
-                continue
-            source = SOURCES.get(source, f"IUPAC 2013 recommendations, {source}") + "; from memory"
-            for field, value in (("NAME", name), ("LABELS", labels), ("SOURCE", source)):
-                block += f"> <{field}>\n{value}\n\n"
-            out.write(block + "$$$$\n")
-    print(f"{lost} records left out")
-    return 1 if lost else 0
+    """Writes or checks."""
+    path = os.path.join(CORPUS, "worked.sdf")
+    return 1 if (check if "--check" in sys.argv[1:] else make)(path) else 0
 
 
 if __name__ == "__main__":

@@ -81,11 +81,7 @@ pub fn moved(drawing: &Drawing, place: impl Fn(Point) -> Point) -> Drawing {
 /// The drawing with every mark put through `mark`.
 pub fn remarked(drawing: &Drawing, mark: impl Fn(Mark) -> Mark) -> Drawing {
     let marks = drawing.marks().iter().map(|m| mark(*m)).collect();
-    build(
-        drawing.molecule().clone(),
-        drawing.points().to_vec(),
-        marks,
-    )
+    build(drawing.molecule().clone(), drawing.points().to_vec(), marks)
 }
 
 /// Mirror image in the y axis, marks kept.

@@ -92,16 +92,17 @@ pub fn labels_of(drawing: &Drawing) -> Labels {
     Labels::parse(&pipeline::report(drawing, &Requirement::default()).labels_line())
 }
 
-/// Fails with all lines of a list, unless it is empty.
+/// Fails with the first lines of a list, unless it is empty.
 ///
 /// # Panics
 /// If it is not.
 pub fn no_misses(misses: &[String], tried: usize) {
     assert!(tried > 0, "nothing was tried");
+    let shown = &misses[..misses.len().min(40)];
     assert!(
         misses.is_empty(),
         "{} of {tried} went wrong:\n  {}",
         misses.len(),
-        misses.join("\n  ")
+        shown.join("\n  ")
     );
 }

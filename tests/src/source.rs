@@ -45,7 +45,10 @@ pub fn text(path: &Path) -> String {
 
 /// Path below the top folder, for messages.
 pub fn short(path: &Path) -> String {
-    path.strip_prefix(top()).unwrap_or(path).display().to_string()
+    path.strip_prefix(top())
+        .unwrap_or(path)
+        .display()
+        .to_string()
 }
 
 /// The lines of a source file that are code: no comment lines.

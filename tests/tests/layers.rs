@@ -97,7 +97,11 @@ fn no_module_uses_a_later_one() {
                 .collect();
             for name in named(&joined) {
                 tried += 1;
-                if order.iter().position(|m| m == name).is_none_or(|r| r > rank) {
+                if order
+                    .iter()
+                    .position(|m| m == name)
+                    .is_none_or(|r| r > rank)
+                {
                     misses.push(format!("{}:{number}: {own} uses {name}", short(&path)));
                 }
             }
@@ -117,7 +121,13 @@ fn the_chemistry_knows_no_window_clock_or_command_line() {
     .map(|name| format!("chem/Cargo.toml names {name}"))
     .collect();
     no_misses(&misses, 1);
-    let uses = ["std::fs", "std::net", "std::process", "std::time", "std::env"];
+    let uses = [
+        "std::fs",
+        "std::net",
+        "std::process",
+        "std::time",
+        "std::env",
+    ];
     let mut misses = Vec::new();
     let all = files("chem/src", &["rs"]);
     for path in &all {

@@ -1,8 +1,5 @@
 //! What is asked is carried, or refused with a reason.
-#![allow(
-    clippy::panic,
-    reason = "a check that cannot be set up has failed"
-)]
+#![allow(clippy::panic, reason = "a check that cannot be set up has failed")]
 
 use checks::change::bare;
 use checks::labels::Labels;
@@ -59,8 +56,7 @@ fn marked_drawings_are_turned_into_their_mirror_image() {
         .iter()
         .filter_map(|w| {
             let want = w.labels.mirrored();
-            fault(&w.drawing, &want.as_name(&w.drawing), &want)
-                .map(|f| format!("{}: {f}", w.title))
+            fault(&w.drawing, &want.as_name(&w.drawing), &want).map(|f| format!("{}: {f}", w.title))
         })
         .collect();
     no_misses(&misses, all.len());
@@ -91,7 +87,11 @@ fn the_impossible_is_refused_with_a_reason() {
         ("L-cysteine", "(2r)", "R or S here, never r or s"),
         ("L-cysteine", "(5E)", "a carboxyl group"),
         ("maleic acid", "(2E)", "a carboxyl group"),
-        ("maleic acid", "(4E,4Z)", "two geometries at one double bond"),
+        (
+            "maleic acid",
+            "(4E,4Z)",
+            "two geometries at one double bond",
+        ),
         ("maleic acid", "(4R)", "a double bond is no centre"),
         ("limonene", "(7E)", "a double bond in a ring of six"),
         ("trans-but-2-ene", "(1E)", "a methyl group"),

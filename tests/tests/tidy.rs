@@ -46,11 +46,19 @@ fn the_tree_for_developers_names_every_module() {
     no_misses(&misses, all.len());
 }
 
-/// Stem of a file; of `mod.rs`, and of `tests.rs` in the folder of a module, that of its folder.
+/// Stem of a file; of `mod.rs`, and of the tests of a module, that of the module's folder.
 fn module_name(path: &Path) -> String {
-    let name = |p: &Path| p.file_stem().unwrap_or_default().to_string_lossy().into_owned();
+    let name = |p: &Path| {
+        p.file_stem()
+            .unwrap_or_default()
+            .to_string_lossy()
+            .into_owned()
+    };
+    let above = || path.parent().map(module_name).unwrap_or_default();
+    let is_test = path.parent().is_some_and(|folder| folder.ends_with("tests"));
     match name(path).as_str() {
-        "mod" | "tests" => path.parent().map(name).unwrap_or_default(),
+        "mod" | "tests" => above(),
+        _ if is_test => above(),
         stem => stem.to_owned(),
     }
 }
@@ -69,7 +77,10 @@ fn no_word_that_means_nothing_to_a_reader() {
     .iter()
     .map(|(a, b)| [*a, *b].concat())
     .collect();
-    let all = files(".", &["rs", "md", "toml", "py", "tsv", "sdf", "mol", "svg", ""]);
+    let all = files(
+        ".",
+        &["rs", "md", "toml", "py", "tsv", "sdf", "mol", "svg", ""],
+    );
     let mut misses = Vec::new();
     for path in &all {
         let Ok(content) = std::fs::read_to_string(path) else {

@@ -193,6 +193,17 @@ impl<'a> Ranker<'a> {
             .collect()
     }
 
+    /// The labels of the units whose configuration is defined; `None` for the others, which are not ranked.
+    pub fn label_defined(&self, configurations: &[Configuration]) -> Vec<Option<UnitLabel>> {
+        let foci = OnceCell::new();
+        (0..self.units.len())
+            .map(|i| {
+                matches!(configurations[i], Configuration::Defined(_))
+                    .then(|| self.label_with(configurations, UnitIx::new(i), &foci))
+            })
+            .collect()
+    }
+
     fn label_with(
         &self,
         configurations: &[Configuration],

@@ -102,7 +102,6 @@ struct Scene<'a> {
     drawing: &'a Drawing,
     units: &'a Units,
     rings: &'a Rings,
-    targets: &'a [Target],
     /// Whether an atom is the focus of a centre, or an end of a double bond unit.
     is_center: Vec<bool>,
     is_double_end: Vec<bool>,
@@ -121,7 +120,6 @@ impl<'a> Scene<'a> {
             drawing,
             units,
             rings,
-            targets,
             is_center: vec![false; n],
             is_double_end: vec![false; n],
             is_target: vec![false; n],

@@ -10,13 +10,26 @@
 //! Source of the rules: IUPAC, Graphical representation standards for chemical structure diagrams (2008),
 //! named `GR-` and number where one is quoted; the rest is common practice, no source.
 
+mod bonds;
+mod captions;
+mod doubles;
+mod face;
+mod letters;
+mod marks;
+mod plane;
+mod scene;
+mod spelling;
 mod style;
 
 pub use style::{STYLES, Style};
 
+use captions::Obstacles;
+use face::Setter;
+use scene::Scene;
+
 use crate::drawing::Drawing;
 use crate::molecule::{AtomIx, BondIx};
-use kurbo::{BezPath, Point, Rect};
+use kurbo::{BezPath, Point, Rect, Shape as _};
 use std::ops::Range;
 
 /// A composed figure.
@@ -147,11 +160,68 @@ pub fn compose(
     captions: &[Caption],
     points_per_unit: Option<f64>,
 ) -> Ink {
-    let _ = captions;
-    let scale = points_per_unit.unwrap_or(style.bond_length / drawing.bond_length());
-    Ink {
-        items: Vec::new(),
+    let mut setter = Setter::default();
+    let scene = Scene::new(drawing, style, points_per_unit, &mut setter);
+    let mut items = Vec::new();
+    for bond in drawing.molecule().bonds() {
+        bonds::draw(&scene, bond, &mut items);
+    }
+    let mut obstacles = Obstacles::of(&items);
+    for atom in drawing.molecule().atoms() {
+        let Some(label) = scene.label(atom) else {
+            continue;
+        };
+        obstacles.add_sets(&label.sets);
+        items.extend(label.sets.iter().map(|set| Item {
+            part: Part::Atom(atom),
+            tone: Tone::Ink,
+            shape: Shape::Text(set.run.clone()),
+        }));
+    }
+    captions::write(&scene, captions, &mut setter, &mut obstacles, &mut items);
+    let mut ink = Ink {
+        items,
         bounds: Rect::ZERO,
-        points_per_unit: scale,
+        points_per_unit: scene.points_per_unit,
+    };
+    ink.measure();
+    ink
+}
+
+impl Ink {
+    /// Adds a note about the whole figure, such as `and enantiomer`: beneath it, in the middle, half a
+    /// bond clear (ST-6.3).
+    pub fn add_note(&mut self, text: &str, style: &Style) {
+        let mut setter = Setter::default();
+        let middle = 0.5 * (self.bounds.x0 + self.bounds.x1);
+        let width = setter.advance(text, Face::Upright, style.note_size);
+        let below = 0.5 * style.bond_length + face::CAP_HEIGHT * style.note_size;
+        let origin = Point::new(middle - 0.5 * width, self.bounds.y1 + below);
+        self.items.push(Item {
+            part: Part::Note,
+            tone: Tone::Ink,
+            shape: Shape::Text(setter.set(text, Face::Upright, style.note_size, origin).run),
+        });
+        self.measure();
+    }
+
+    fn measure(&mut self) {
+        let boxes = self.items.iter().filter_map(|item| item.shape.bounds());
+        self.bounds = boxes.reduce(|a, b| a.union(b)).unwrap_or(Rect::ZERO);
     }
 }
+
+impl Shape {
+    /// Box round its ink, line width included; `None` if it leaves none.
+    pub fn bounds(&self) -> Option<Rect> {
+        let (path, half) = match self {
+            Shape::Fill(path) => (path, 0.0),
+            Shape::Stroke(path, width) => (path, 0.5 * width),
+            Shape::Text(run) => (&run.outline, 0.0),
+        };
+        (!path.elements().is_empty()).then(|| path.bounding_box().inflate(half, half))
+    }
+}
+
+#[cfg(test)]
+mod tests;

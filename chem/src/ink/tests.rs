@@ -1,0 +1,1 @@
+//! What the paper must show, whole figures at a time.

@@ -1,1 +1,5 @@
 //! The rim: files, command line, window.
+
+pub mod command;
+pub mod session;
+pub mod window;

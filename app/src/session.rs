@@ -130,7 +130,7 @@ impl Session {
 
     /// A document with the line that it must carry; `path` is where it was read from.
     pub fn of(document: Document, path: Option<PathBuf>, line: String) -> Session {
-        let drawing = Arc::new(document.drawing.clone());
+        let drawing = Arc::new(document.record.drawing.clone());
         let history = History::new(State {
             name: "Open".to_owned(),
             drawing,
@@ -161,11 +161,9 @@ impl Session {
     /// If it cannot be read, or holds no drawing.
     pub fn open(path: &Path) -> Result<Session, files::FileError> {
         let document = files::read(path)?;
-        Ok(Session::of(
-            document,
-            Some(path.to_owned()),
-            String::new(),
-        ))
+        // saving must not lose the records beside this one
+        let own = (!document.has_more).then(|| path.to_owned());
+        Ok(Session::of(document, own, String::new()))
     }
 
     /// The drawing as it stands.
@@ -247,8 +245,8 @@ impl Session {
             .map(|n| n.to_string_lossy().into_owned());
         match file {
             Some(name) => name,
-            None if self.document.title.trim().is_empty() => "Untitled".to_owned(),
-            None => self.document.title.trim().to_owned(),
+            None if self.document.record.title.trim().is_empty() => "Untitled".to_owned(),
+            None => self.document.record.title.trim().to_owned(),
         }
     }
 
@@ -428,8 +426,10 @@ impl Session {
     /// If the file cannot be written; what stood there is then untouched.
     pub fn save(&mut self, path: &Path) -> Result<(), files::FileError> {
         self.settle();
-        self.document.drawing = (**self.drawing()).clone();
-        files::write(path, &self.document)?;
+        let drawing = (**self.drawing()).clone();
+        let record = self.document.record.clone().with_drawing(drawing);
+        files::write(path, &record)?;
+        self.document = Document::of(record);
         self.path = Some(path.to_owned());
         self.saved = self.history.now().revision;
         Ok(())

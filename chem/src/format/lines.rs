@@ -1,0 +1,78 @@
+//! Lines of a text with any line end: LF, CR LF, CR, also mixed.
+
+/// Walks over the lines of a text; knows the number of each line and where it starts.
+#[derive(Clone, Debug)]
+pub(super) struct Lines<'a> {
+    text: &'a str,
+    at: usize,
+    number: usize,
+}
+
+impl<'a> Lines<'a> {
+    /// The lines of `text`, whose first line is line `first` of its file.
+    pub(super) fn new(text: &'a str, first: usize) -> Lines<'a> {
+        Lines {
+            text,
+            at: 0,
+            number: first,
+        }
+    }
+
+    /// Number of the line that comes next.
+    pub(super) fn number(&self) -> usize {
+        self.number
+    }
+
+    /// Byte at which the next line starts.
+    pub(super) fn at(&self) -> usize {
+        self.at
+    }
+
+    /// The next line, which stays the next.
+    pub(super) fn peek(&self) -> Option<&'a str> {
+        self.clone().next()
+    }
+}
+
+impl<'a> Iterator for Lines<'a> {
+    type Item = &'a str;
+
+    fn next(&mut self) -> Option<&'a str> {
+        let bytes = self.text.as_bytes().get(self.at..)?;
+        if bytes.is_empty() {
+            return None;
+        }
+        let length = bytes
+            .iter()
+            .position(|b| *b == b'\n' || *b == b'\r')
+            .unwrap_or(bytes.len());
+        let line = self.text.get(self.at..self.at + length)?;
+        let ending = match bytes.get(length..) {
+            Some([b'\r', b'\n', ..]) => 2,
+            Some([_, ..]) => 1,
+            _ => 0,
+        };
+        self.at += length + ending;
+        self.number += 1;
+        Some(line)
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn every_line_end_counts_once() {
+        let mut lines = Lines::new("a\r\nb\rc\n\nd", 7);
+        let mut seen = Vec::new();
+        loop {
+            let number = lines.number();
+            let Some(line) = lines.next() else { break };
+            seen.push((number, line));
+        }
+        assert_eq!(seen, [(7, "a"), (8, "b"), (9, "c"), (10, ""), (11, "d")]);
+        assert_eq!(Lines::new("", 1).next(), None);
+        assert_eq!(Lines::new("x\n", 1).count(), 1);
+    }
+}

@@ -142,9 +142,9 @@ pub fn is_sd(path: &Path) -> bool {
     ending.is_some_and(|e| e == "sdf" || e == "sd")
 }
 
-/// Date and time as the molfile's second line has them, `MMDDYYHHmm`.
+/// Date and time in UTC as the second line of a molfile has them, `MMDDYYHHmm`.
 fn now() -> String {
-    jiff::Zoned::now().strftime("%m%d%y%H%M").to_string()
+    jiff::Timestamp::now().strftime("%m%d%y%H%M").to_string()
 }
 
 /// Writes a file so that at every moment either the old or the new content stands there whole.

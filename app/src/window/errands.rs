@@ -155,7 +155,7 @@ impl Window {
         }
         let dropped = ctx.input(|i| {
             let first = i.raw.dropped_files.first();
-            first.and_then(|f| f.path().map(Path::to_owned))
+            first.map(|f| f.path().to_owned())
         });
         if let Some(path) = dropped {
             self.go(Next::Open(path), ctx);

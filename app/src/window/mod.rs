@@ -36,7 +36,7 @@ use theme::{Colors, GRID};
 pub enum WindowError {
     /// The platform gave none.
     #[error(
-        "no window could be opened: {0}. The verbs of the command line (labels, place, figure ...) work without one"
+        "no window could be opened: {0}; the verbs of the command line (labels, place, figure ...) work without one"
     )]
     NoDisplay(String),
     /// The file named at the start cannot be opened.
@@ -351,5 +351,13 @@ pub fn run(path: Option<PathBuf>) -> Result<(), WindowError> {
     };
     let create: eframe::AppCreator<'_> = Box::new(|_| Ok(Box::new(window)));
     eframe::run_native("wedgewright", options, create)
-        .map_err(|e| WindowError::NoDisplay(e.to_string()))
+        .map_err(|e| WindowError::NoDisplay(reason(&e)))
+}
+
+/// What the platform said, without the places in its source that it says it from.
+fn reason(error: &eframe::Error) -> String {
+    let text = error.to_string();
+    let last = text.rsplit(".rs:").next().unwrap_or(&text);
+    let plain = last.trim_start_matches(|c: char| c.is_ascii_digit() || ": ".contains(c));
+    plain.trim_end_matches('.').to_owned()
 }

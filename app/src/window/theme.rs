@@ -36,7 +36,7 @@ pub(super) const LIGHT: Colors = Colors {
     desk: Color32::from_rgb(0xEF, 0xED, 0xE7),
     ink: Color32::from_rgb(0x1B, 0x1B, 0x1A),
     hairline: Color32::from_rgb(0xD9, 0xD5, 0xCB),
-    muted: Color32::from_rgb(0x6B, 0x67, 0x5F),
+    muted: Color32::from_rgb(0x64, 0x60, 0x58),
     accent: Color32::from_rgb(0x0B, 0x5C, 0x7A),
     on_accent: Color32::WHITE,
     chosen: Color32::from_rgb(0xE0, 0xE6, 0xE8),
@@ -133,7 +133,10 @@ pub(super) fn dress(ctx: &Context) {
             }],
         ));
     }
-    ctx.options_mut(|o| o.zoom_with_keyboard = false);
+    ctx.options_mut(|o| {
+        o.zoom_with_keyboard = false;
+        o.fallback_theme = Theme::Light;
+    });
     for (theme, colors) in [(Theme::Light, LIGHT), (Theme::Dark, DARK)] {
         ctx.style_mut_of(theme, |style| {
             style.text_styles = [

@@ -495,7 +495,7 @@ mod tests {
         let span = d.point(AtomIx::new(0)).distance(d.point(AtomIx::new(4)));
         assert!((span - 4.0 * (PI / 3.0).sin()).abs() < 1e-6);
         let alkyne = graft(&d, &on_atom(5), "#").unwrap();
-        assert_eq!(formula(&alkyne), "C7H13");
+        assert_eq!(formula(&alkyne), "C7H12");
     }
 
     #[test]

@@ -79,16 +79,16 @@ fn number(text: &str) -> Result<Word, String> {
 
 /// `+`, `-`, `2+`, `2-`; one sign or a figure and a sign.
 fn charge(text: &str) -> Option<i8> {
-    let (figure, sign) = text.split_at(text.len().checked_sub(1)?);
+    let (figure, sign) = match (text.strip_suffix('+'), text.strip_suffix('-')) {
+        (Some(figure), _) => (figure, 1),
+        (None, Some(figure)) => (figure, -1),
+        (None, None) => return None,
+    };
     let size = match figure {
         "" => 1,
         figure => figure.parse::<i8>().ok().filter(|n| (1..=9).contains(n))?,
     };
-    match sign {
-        "+" => Some(size),
-        "-" => Some(-size),
-        _ => None,
-    }
+    Some(sign * size)
 }
 
 fn no_element(symbol: &str) -> String {

@@ -1,7 +1,7 @@
 //! What lies over the drawing and is not printed: frame, selection, ghosts, ranking letters.
 
 use super::gesture::{self, Gesture};
-use super::{Sheet, View};
+use super::Sheet;
 use crate::session::Session;
 use crate::window::theme::{self, LIGHT};
 use chem::drawing::Drawing;
@@ -200,6 +200,7 @@ fn letters(place: &Place) -> Vec<(AtomIx, AtomIx, &'static str)> {
 
 #[cfg(test)]
 mod tests {
+    use super::super::View;
     use super::*;
 
     #[test]

@@ -1,5 +1,9 @@
-//! What the graph alone says: rings, symmetry, mancude systems.
+//! What the graph alone says: rings, symmetry, delocalised systems.
 
+mod mancude;
 mod rings;
+mod symmetry;
 
+pub use mancude::{Delocalised, Ratio, delocalised};
 pub use rings::Rings;
+pub use symmetry::Symmetry;

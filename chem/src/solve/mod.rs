@@ -2,6 +2,8 @@
 
 pub mod line;
 pub mod require;
+pub mod search;
+pub mod turn;
 
 use crate::molecule::AtomIx;
 use std::fmt;

@@ -13,6 +13,7 @@ mod double_bond;
 mod tetrahedral;
 
 pub use descriptor::Descriptor;
+pub use double_bond::LARGEST_CIS_RING;
 
 use crate::molecule::{AtomIx, Molecule};
 use crate::perceive::Rings;

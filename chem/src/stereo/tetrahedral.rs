@@ -1,7 +1,113 @@
-//! Tetrahedral centres.
+//! Tetrahedral centres: four ligands, one of which may be a hydrogen in the label or a lone pair.
 
-use super::Unit;
-use crate::molecule::Molecule;
+use super::{Focus, Kind, Ligand, Unit};
+use crate::element::Element;
+use crate::molecule::{AtomIx, Molecule, Order};
 use crate::perceive::Rings;
 
-pub(super) fn find(_molecule: &Molecule, _rings: &Rings, _list: &mut Vec<Unit>) {}
+pub(super) fn find(molecule: &Molecule, rings: &Rings, list: &mut Vec<Unit>) {
+    for atom in molecule.atoms() {
+        if let Some(ligands) = ligands(molecule, rings, atom) {
+            list.push(Unit {
+                kind: Kind::Tetrahedral,
+                focus: Focus::Center(atom),
+                ligands,
+            });
+        }
+    }
+}
+
+/// The four ligands of an atom in reference order, if it has the shape of a centre.
+fn ligands(molecule: &Molecule, rings: &Rings, atom: AtomIx) -> Option<[Ligand; 4]> {
+    let drawn = molecule.degree(atom);
+    let hydrogens = usize::from(molecule.hydrogens(atom));
+    let last = match (drawn, hydrogens) {
+        (4, 0) if four_ligands_hold(molecule, atom) => None,
+        (3, 1) if four_ligands_hold(molecule, atom) => Some(Ligand::Hydrogen),
+        (3, 0) if lone_pair_holds(molecule, rings, atom) => Some(Ligand::LonePair),
+        _ => return None,
+    };
+    let neighbors = molecule.neighbors(atom);
+    let mut ligands = [last.unwrap_or(Ligand::Hydrogen); 4];
+    for (slot, neighbor) in ligands.iter_mut().zip(neighbors) {
+        *slot = Ligand::Atom(neighbor.atom);
+    }
+    ligands[..drawn].sort_unstable();
+    Some(ligands)
+}
+
+/// Numbers of single, double and other bonds that are drawn at an atom.
+fn bonds(molecule: &Molecule, atom: AtomIx) -> (usize, usize, usize) {
+    let mut counts = (0, 0, 0);
+    for n in molecule.neighbors(atom) {
+        match n.order {
+            Order::Single => counts.0 += 1,
+            Order::Double => counts.1 += 1,
+            Order::Triple | Order::Special(_) => counts.2 += 1,
+        }
+    }
+    counts
+}
+
+fn four_ligands_hold(molecule: &Molecule, atom: AtomIx) -> bool {
+    let (_, double, other) = bonds(molecule, atom);
+    let charge = molecule.atom(atom).charge;
+    if other > 0 {
+        return false;
+    }
+    match molecule.element(atom) {
+        Element::C | Element::SI | Element::GE | Element::SN => double == 0 && charge == 0,
+        Element::B => double == 0 && charge == -1,
+        // ammonium and N-oxide, the latter also drawn with N=O
+        Element::N => (double == 0 && charge == 1) || (double == 1 && charge == 0),
+        Element::P | Element::AS | Element::SB => true,
+        Element::S | Element::SE | Element::TE => true,
+        _ => false,
+    }
+}
+
+fn lone_pair_holds(molecule: &Molecule, rings: &Rings, atom: AtomIx) -> bool {
+    let (_, double, other) = bonds(molecule, atom);
+    let charge = molecule.atom(atom).charge;
+    if other > 0 {
+        return false;
+    }
+    match molecule.element(atom) {
+        Element::N => double == 0 && charge == 0 && nitrogen_cannot_invert(molecule, rings, atom),
+        Element::P | Element::AS | Element::SB => double == 0 && charge == 0,
+        Element::S | Element::SE | Element::TE => {
+            (double == 1 && charge == 0) || (double == 0 && charge == 1)
+        }
+        _ => false,
+    }
+}
+
+/// Nitrogen in a three-membered ring, or at a bridgehead: all three bonds in rings, and two of the
+/// smallest rings through its neighbour pairs share three atoms or more (plain fusion shares two).
+fn nitrogen_cannot_invert(molecule: &Molecule, rings: &Rings, atom: AtomIx) -> bool {
+    let neighbors = molecule.neighbors(atom);
+    if !neighbors.iter().all(|n| rings.has_bond(n.bond)) {
+        return neighbors
+            .iter()
+            .any(|n| rings.smallest_through(n.bond) == Some(3));
+    }
+    if neighbors
+        .iter()
+        .any(|n| rings.smallest_through(n.bond) == Some(3))
+    {
+        return true;
+    }
+    let pairs = [(0, 1), (0, 2), (1, 2)];
+    let cycles: Vec<Vec<AtomIx>> = pairs
+        .iter()
+        .filter_map(|(i, j)| {
+            rings.through_pair(molecule, atom, neighbors[*i].atom, neighbors[*j].atom)
+        })
+        .collect();
+    // the nitrogen itself is shared and left out of each list
+    let shared = |a: &[AtomIx], b: &[AtomIx]| a.iter().filter(|x| b.contains(x)).count() + 1;
+    cycles
+        .iter()
+        .enumerate()
+        .any(|(i, a)| cycles[i + 1..].iter().any(|b| shared(a, b) >= 3))
+}

@@ -1,9 +1,15 @@
-//! The product in a few calls, shared by window and command line.
+//! The product in a few calls, shared by window and command line: understand what is asked, report what
+//! is carried, and carry it.
+
+mod carry;
+mod report;
+
+pub use carry::carry;
+pub use report::{labels_line, report};
 
 use crate::cip::Rule;
 use crate::drawing::{Drawing, Edit};
 use crate::molecule::AtomIx;
-use crate::solve::Refusal;
 use crate::solve::require::{Requirement, RequirementError};
 use crate::stereo::{Descriptor, Kind, Ligand};
 
@@ -94,15 +100,12 @@ pub struct Report {
 impl Report {
     /// Labels by atom number from 1, both ends of a double bond: `3R 7E 8E`; empty if there is none.
     pub fn labels_line(&self) -> String {
-        let mut labels: Vec<(usize, Descriptor)> = self
-            .places
-            .iter()
-            .filter_map(|p| p.carries.map(|d| (p, d)))
-            .flat_map(|(p, d)| p.atoms.iter().map(move |a| (a.index() + 1, d)))
-            .collect();
-        labels.sort_unstable();
-        let words: Vec<String> = labels.iter().map(|(n, d)| format!("{n}{d}")).collect();
-        words.join(" ")
+        let labels = self.places.iter().filter_map(|p| p.carries.map(|d| (p, d)));
+        report::spell(
+            labels
+                .flat_map(|(p, d)| p.atoms.iter().map(move |a| (*a, d)))
+                .collect(),
+        )
     }
 
     /// What is carried, as a requirement line: `(3R,7E)`, a double bond by its lower atom; empty if nothing.
@@ -160,24 +163,4 @@ impl Solution {
 /// What is wrong with the line, with the column it is at, or which part does not fit the drawing.
 pub fn understand(text: &str, drawing: &Drawing) -> Result<Requirement, RequirementError> {
     crate::solve::require::understand(text, drawing)
-}
-
-/// What a drawing carries, and how that stands to a requirement (an empty one asks nothing).
-pub fn report(drawing: &Drawing, requirement: &Requirement) -> Report {
-    let _ = (drawing, requirement);
-    Report { places: Vec::new() }
-}
-
-/// The drawing that carries the requirement, with the least change; places of which nothing is asked
-/// stay as they are.
-///
-/// # Errors
-/// Why no drawing could be made.
-pub fn carry(drawing: &Drawing, requirement: &Requirement) -> Result<Solution, Refusal> {
-    let report = report(drawing, requirement);
-    Ok(Solution {
-        drawing: drawing.clone(),
-        edits: Vec::new(),
-        report,
-    })
 }

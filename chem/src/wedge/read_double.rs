@@ -1,0 +1,179 @@
+//! Reads the geometry of a double bond from positions; wedges say nothing about it.
+//!
+//! Crossed, or with a wavy bond at an end: stated to be unknown. A ligand within 5 degrees of the axis
+//! (the InChI library's limit for an ambiguous drawing) has no side.
+
+use super::read::Doubt;
+use crate::drawing::{Drawing, Mark};
+use crate::molecule::{AtomIx, Order};
+use crate::stereo::{Configuration, Ligand, Parity};
+
+/// Sine of 5 degrees.
+const ON_AXIS: f64 = 0.087_155_742_747_658_17;
+
+pub(super) fn read(
+    drawing: &Drawing,
+    ends: [AtomIx; 2],
+    ligands: &[Ligand; 4],
+) -> Result<Configuration, Doubt> {
+    let molecule = drawing.molecule();
+    let crossed = molecule
+        .bond_between(ends[0], ends[1])
+        .is_some_and(|b| drawing.mark(b) == Mark::Crossed);
+    if crossed || has_wavy(drawing, ends[0]) || has_wavy(drawing, ends[1]) {
+        return Ok(Configuration::Either);
+    }
+    let first = side(drawing, ends, ends[0], &ligands[..2]);
+    let second = side(drawing, ends, ends[1], &ligands[2..]);
+    match (first, second) {
+        (Ok(a), Ok(b)) => Ok(Configuration::Defined(Parity::from_even(a == b))),
+        // one ligand at each end and all in line: a way to leave it unstated (IUPAC 2006, ST-4.4)
+        (Err(Doubt::Straight), Err(Doubt::Straight)) => Ok(Configuration::Open),
+        (Err(doubt), _) | (_, Err(doubt)) => Err(doubt),
+    }
+}
+
+fn has_wavy(drawing: &Drawing, end: AtomIx) -> bool {
+    drawing.molecule().neighbors(end).iter().any(|n| {
+        n.order == Order::Single && matches!(drawing.mark_from(end, n.bond), Mark::Wavy(_))
+    })
+}
+
+/// Whether the first ligand of an end lies to the left of the axis from the first to the second end.
+fn side(
+    drawing: &Drawing,
+    ends: [AtomIx; 2],
+    end: AtomIx,
+    ligands: &[Ligand],
+) -> Result<bool, Doubt> {
+    let left = |ligand: &Ligand| -> Result<Option<bool>, Doubt> {
+        let Some(atom) = ligand.atom() else {
+            return Ok(None);
+        };
+        let across = if drawing.depths().is_some() {
+            across_in_space(drawing, ends, end, atom)
+        } else {
+            across(drawing, ends, end, atom)
+        };
+        let across = across.ok_or(Doubt::Overlap)?;
+        if across.abs() < ON_AXIS {
+            return Err(Doubt::Straight);
+        }
+        Ok(Some(across > 0.0))
+    };
+    let first = left(&ligands[0])?;
+    let second = left(&ligands[1])?;
+    match (first, second) {
+        (Some(a), Some(b)) if a == b => Err(Doubt::SameSide),
+        (Some(a), _) => Ok(a),
+        (None, Some(b)) => Ok(!b),
+        (None, None) => Err(Doubt::Overlap),
+    }
+}
+
+/// Sine of the angle between the axis and the bond to a ligand.
+fn across(drawing: &Drawing, ends: [AtomIx; 2], end: AtomIx, ligand: AtomIx) -> Option<f64> {
+    let axis = drawing.direction(ends[0], ends[1])?;
+    Some(axis.cross(drawing.direction(end, ligand)?))
+}
+
+/// The same in a model with depth: the part of the bond across the axis, signed by the side it shares
+/// with a fixed ligand of the first end.
+fn across_in_space(
+    drawing: &Drawing,
+    ends: [AtomIx; 2],
+    end: AtomIx,
+    ligand: AtomIx,
+) -> Option<f64> {
+    let depths = drawing.depths()?;
+    let vector = |from: AtomIx, to: AtomIx| {
+        let v = drawing.point(to) - drawing.point(from);
+        [v.x, v.y, depths[to.index()] - depths[from.index()]]
+    };
+    let dot = |a: [f64; 3], b: [f64; 3]| a[0] * b[0] + a[1] * b[1] + a[2] * b[2];
+    let unit = |v: [f64; 3]| {
+        let length = dot(v, v).sqrt();
+        (length > 1e-9).then(|| v.map(|x| x / length))
+    };
+    let axis = unit(vector(ends[0], ends[1]))?;
+    let off_axis = |v: [f64; 3]| {
+        let along = dot(v, axis);
+        [0, 1, 2].map(|k| v[k] - along * axis[k])
+    };
+    let fixed = drawing
+        .molecule()
+        .neighbors(ends[0])
+        .iter()
+        .find(|n| n.atom != ends[1])?;
+    let reference = unit(off_axis(unit(vector(ends[0], fixed.atom))?))?;
+    Some(dot(off_axis(unit(vector(end, ligand))?), reference))
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::drawing::tests::draw;
+    use crate::perceive::Rings;
+    use crate::stereo::Units;
+
+    fn geometry(
+        atoms: &[(&str, f64, f64)],
+        bonds: &[(usize, usize, u8, char)],
+    ) -> Result<Configuration, Doubt> {
+        let d = draw(atoms, bonds);
+        let units = Units::find(d.molecule(), &Rings::find(d.molecule()));
+        let (_, unit) = units.iter().next().unwrap();
+        read(&d, unit.atoms().to_vec().try_into().unwrap(), &unit.ligands)
+    }
+
+    const BONDS: [(usize, usize, u8, char); 3] = [(0, 1, 1, ' '), (1, 2, 2, ' '), (2, 3, 1, ' ')];
+
+    #[test]
+    fn but_2_enes() {
+        let cis = [
+            ("C", -0.5, 0.8),
+            ("C", 0.0, 0.0),
+            ("C", 1.0, 0.0),
+            ("C", 1.5, 0.8),
+        ];
+        assert_eq!(
+            geometry(&cis, &BONDS),
+            Ok(Configuration::Defined(Parity::Even))
+        );
+        let mut trans = cis;
+        trans[3].2 = -0.8;
+        assert_eq!(
+            geometry(&trans, &BONDS),
+            Ok(Configuration::Defined(Parity::Odd))
+        );
+    }
+
+    // IUPAC 2006, ST-4.4: all in line, crossed, wavy
+    #[test]
+    fn ways_to_leave_it_open() {
+        let straight = [
+            ("C", -1.0, 0.0),
+            ("C", 0.0, 0.0),
+            ("C", 1.0, 0.0),
+            ("C", 2.0, 0.0),
+        ];
+        assert_eq!(geometry(&straight, &BONDS), Ok(Configuration::Open));
+        let bent = [
+            ("C", -0.5, 0.8),
+            ("C", 0.0, 0.0),
+            ("C", 1.0, 0.0),
+            ("C", 2.0, 0.0),
+        ];
+        assert_eq!(geometry(&bent, &BONDS), Err(Doubt::Straight));
+        let cis = [
+            ("C", -0.5, 0.8),
+            ("C", 0.0, 0.0),
+            ("C", 1.0, 0.0),
+            ("C", 1.5, 0.8),
+        ];
+        let crossed = [(0, 1, 1, ' '), (1, 2, 2, 'x'), (2, 3, 1, ' ')];
+        assert_eq!(geometry(&cis, &crossed), Ok(Configuration::Either));
+        let wavy = [(0, 1, 1, ' '), (1, 2, 2, ' '), (2, 3, 1, '~')];
+        assert_eq!(geometry(&cis, &wavy), Ok(Configuration::Either));
+    }
+}

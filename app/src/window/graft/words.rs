@@ -48,6 +48,9 @@ pub(crate) fn read(text: &str) -> Result<Word, String> {
         .find(|c: char| !c.is_ascii_alphabetic())
         .unwrap_or(text.len());
     let (symbol, rest) = text.split_at(letters);
+    if letters == 0 {
+        return Err(no_element(text));
+    }
     let charge = match rest {
         "" => None,
         rest => Some(charge(rest).ok_or_else(|| {
@@ -99,9 +102,7 @@ fn no_element(symbol: &str) -> String {
         .flat_map(char::to_uppercase)
         .chain(letters.flat_map(char::to_lowercase))
         .collect();
-    if symbol.is_empty() {
-        "an element starts with a letter".to_owned()
-    } else if Element::from_symbol(&proper).is_some() {
+    if Element::from_symbol(&proper).is_some() {
         format!("{symbol} is no element; {proper} is one")
     } else {
         format!("{symbol} is no element")

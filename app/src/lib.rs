@@ -1,28 +1,19 @@
-//! The rim: files, command line, window.
+//! The rim of Wedgewright: files, command line, window. It holds no chemistry.
 
 pub mod args;
 pub mod batch;
+pub mod command;
+pub mod export;
 pub mod files;
+pub mod session;
+pub mod window;
 
 use args::Args;
 use batch::Status;
 use clap::Parser;
 use std::ffi::OsString;
-use std::path::Path;
+use std::path::PathBuf;
 use std::process::ExitCode;
-
-/// Why the window cannot be opened.
-#[derive(Debug, thiserror::Error)]
-pub enum WindowError {
-    /// The file to open is not there or no file.
-    #[error(transparent)]
-    File(#[from] files::FileError),
-    /// There is no window in this build.
-    #[error(
-        "the window is not part of this build. Give a verb, as in 'wedgewright labels FILE'; 'wedgewright --help' lists them"
-    )]
-    Missing,
-}
 
 /// Runs the program with its arguments, the name of the program first.
 pub fn run(arguments: impl IntoIterator<Item = OsString>) -> ExitCode {
@@ -36,24 +27,18 @@ pub fn run(arguments: impl IntoIterator<Item = OsString>) -> ExitCode {
     };
     let status = match args.verb {
         Some(verb) => batch::run(verb),
-        None => match open_window(args.file.as_deref()) {
-            Ok(()) => Status::Good,
-            Err(error) => {
-                batch::say(&error.to_string());
-                Status::Unusable
-            }
-        },
+        None => open_window(args.file),
     };
     ExitCode::from(status.code())
 }
 
 /// Opens the window, with a file if one is given, and comes back when it is closed.
-///
-/// # Errors
-/// If the file is not there, or no window can be shown.
-pub fn open_window(path: Option<&Path>) -> Result<(), WindowError> {
-    if let Some(path) = path {
-        files::must_be_file(path)?;
+fn open_window(path: Option<PathBuf>) -> Status {
+    match window::run(path) {
+        Ok(()) => Status::Good,
+        Err(error) => {
+            batch::say(&error.to_string());
+            Status::Unusable
+        }
     }
-    Err(WindowError::Missing)
 }

@@ -150,7 +150,7 @@ pub(super) fn each<T: Send>(
     })
 }
 
-fn next(source: &mut Source) -> Result<Option<Piece>, Failure> {
+pub(super) fn next(source: &mut Source) -> Result<Option<Piece>, Failure> {
     Ok(source.next_chunk()?.map(|chunk| Piece {
         number: chunk.number,
         line: chunk.line,

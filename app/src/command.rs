@@ -1,0 +1,462 @@
+//! Everything a person can do: one enum with words, shortcut, help and effect.
+//!
+//! Menus and shortcuts are made from it. Panels send commands and change nothing themselves.
+
+use crate::session::{Selection, Session};
+use chem::drawing::{Edit, End, Mark};
+use chem::molecule::{AtomIx, BondIx, Order};
+use std::borrow::Cow;
+
+/// One thing to do.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Command {
+    /// An empty sheet.
+    New,
+    /// Another file.
+    Open,
+    /// Write the molfile where it was.
+    Save,
+    /// Write the molfile elsewhere.
+    SaveAs,
+    /// Write the picture.
+    SaveFigure,
+    /// Close the window.
+    Close,
+    /// Take the last step back.
+    Undo,
+    /// Make it again.
+    Redo,
+    /// Select everything.
+    SelectAll,
+    /// Select nothing.
+    Deselect,
+    /// Remove what is selected.
+    Delete,
+    /// Raise the wide end of the selected bond.
+    Raise,
+    /// Lower it.
+    Lower,
+    /// Swap the narrow end of the selected bond.
+    Swap,
+    /// Plain lines wherever a mark stands.
+    ClearMarks,
+    /// To the line.
+    GoToLine,
+    /// Seek marks for the line.
+    MakeItCarry,
+    /// The whole drawing in view.
+    Fit,
+    /// Larger.
+    Nearer,
+    /// Smaller.
+    Farther,
+    /// Light or dark desk.
+    Dim,
+    /// Show or fold the places.
+    Places,
+    /// A named step.
+    Step(String, Vec<Edit>),
+    /// The line now reads so.
+    Ask(String),
+    /// The line is done.
+    Settle,
+    /// Select this.
+    Select(Selection),
+}
+
+/// What the window must do itself, since it needs a dialog or the view.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Errand {
+    /// Ask about unsaved work, then an empty sheet.
+    New,
+    /// Ask about unsaved work, then choose a file.
+    Open,
+    /// Save, choosing a path if there is none.
+    Save,
+    /// Save, choosing a path.
+    SaveAs,
+    /// Save the figure, choosing a path.
+    SaveFigure,
+    /// Ask about unsaved work, then close.
+    Close,
+    /// Put the caret in the line.
+    GoToLine,
+    /// The whole drawing in view.
+    Fit,
+    /// Zoom by a step; `true` for nearer.
+    Zoom(bool),
+    /// Light or dark.
+    Dim,
+    /// Show or fold the places.
+    Places,
+}
+
+/// What came of a command.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub enum Effect {
+    /// Done.
+    Done,
+    /// The window must go on.
+    Errand(Errand),
+    /// It could not be done, and why.
+    Refused(String),
+}
+
+/// A key with Ctrl or Shift; `key` is the name that it has on the keyboard.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub struct Shortcut {
+    /// With Ctrl (the command key on a Mac).
+    pub ctrl: bool,
+    /// With Shift.
+    pub shift: bool,
+    /// `S`, `Delete`, `Up` ...
+    pub key: &'static str,
+}
+
+const fn plain(key: &'static str) -> Option<Shortcut> {
+    Some(Shortcut {
+        ctrl: false,
+        shift: false,
+        key,
+    })
+}
+
+const fn ctrl(key: &'static str) -> Option<Shortcut> {
+    Some(Shortcut {
+        ctrl: true,
+        shift: false,
+        key,
+    })
+}
+
+const fn ctrl_shift(key: &'static str) -> Option<Shortcut> {
+    Some(Shortcut {
+        ctrl: true,
+        shift: true,
+        key,
+    })
+}
+
+/// The menus: name, then the commands; `None` is a gap.
+pub const MENUS: [(&str, &[Option<Command>]); 4] = [
+    (
+        "File",
+        &[
+            Some(Command::New),
+            Some(Command::Open),
+            None,
+            Some(Command::Save),
+            Some(Command::SaveAs),
+            Some(Command::SaveFigure),
+            None,
+            Some(Command::Close),
+        ],
+    ),
+    (
+        "Edit",
+        &[
+            Some(Command::Undo),
+            Some(Command::Redo),
+            None,
+            Some(Command::SelectAll),
+            Some(Command::Deselect),
+            Some(Command::Delete),
+        ],
+    ),
+    (
+        "Stereo",
+        &[
+            Some(Command::GoToLine),
+            Some(Command::MakeItCarry),
+            None,
+            Some(Command::Raise),
+            Some(Command::Lower),
+            Some(Command::Swap),
+            Some(Command::ClearMarks),
+        ],
+    ),
+    (
+        "View",
+        &[
+            Some(Command::Fit),
+            Some(Command::Nearer),
+            Some(Command::Farther),
+            None,
+            Some(Command::Places),
+            Some(Command::Dim),
+        ],
+    ),
+];
+
+impl Command {
+    /// What a menu calls it; for undo and redo with the name of the step.
+    pub fn words(&self, session: &Session) -> Cow<'static, str> {
+        let named = |verb: &str, step: Option<&str>| match step {
+            Some(step) => Cow::Owned(format!("{verb}: {}", lower_first(step))),
+            None => Cow::Owned(verb.to_owned()),
+        };
+        let words = match self {
+            Command::New => "New",
+            Command::Open => "Open…",
+            Command::Save => "Save",
+            Command::SaveAs => "Save as…",
+            Command::SaveFigure => "Save figure…",
+            Command::Close => "Close",
+            Command::Undo => return named("Undo", session.undo_name()),
+            Command::Redo => return named("Redo", session.redo_name()),
+            Command::SelectAll => "Select all",
+            Command::Deselect => "Select nothing",
+            Command::Delete => "Delete",
+            Command::Raise => "Raise the wide end",
+            Command::Lower => "Lower the wide end",
+            Command::Swap => "Swap the narrow end",
+            Command::ClearMarks => "Clear marks",
+            Command::GoToLine => "Type what it must carry",
+            Command::MakeItCarry => "Make it carry",
+            Command::Fit => "Whole drawing",
+            Command::Nearer => "Nearer",
+            Command::Farther => "Farther",
+            Command::Dim => "Light or dark desk",
+            Command::Places => "Places",
+            Command::Step(name, _) => return Cow::Owned(name.clone()),
+            Command::Ask(_) => "Ask",
+            Command::Settle => "Settle",
+            Command::Select(_) => "Select",
+        };
+        Cow::Borrowed(words)
+    }
+
+    /// Its keys, if it has some.
+    pub fn shortcut(&self) -> Option<Shortcut> {
+        match self {
+            Command::New => ctrl("N"),
+            Command::Open => ctrl("O"),
+            Command::Save => ctrl("S"),
+            Command::SaveAs => ctrl_shift("S"),
+            Command::SaveFigure => ctrl_shift("F"),
+            Command::Close => ctrl("W"),
+            Command::Undo => ctrl("Z"),
+            Command::Redo => ctrl_shift("Z"),
+            Command::SelectAll => ctrl("A"),
+            Command::Deselect => plain("Escape"),
+            Command::Delete => plain("Delete"),
+            Command::Raise => plain("Up"),
+            Command::Lower => plain("Down"),
+            Command::Swap => plain("Left"),
+            Command::GoToLine => ctrl("L"),
+            Command::MakeItCarry => ctrl("Enter"),
+            Command::Fit => ctrl("0"),
+            Command::Nearer => ctrl("Plus"),
+            Command::Farther => ctrl("Minus"),
+            Command::Dim => ctrl("D"),
+            Command::Places => ctrl("P"),
+            Command::ClearMarks
+            | Command::Step(..)
+            | Command::Ask(_)
+            | Command::Settle
+            | Command::Select(_) => None,
+        }
+    }
+
+    /// What it does, in a sentence.
+    pub fn help(&self) -> &'static str {
+        match self {
+            Command::New => "An empty sheet",
+            Command::Open => "A molfile or SDF; dropping a file on the window does the same",
+            Command::Save => "Writes the molfile",
+            Command::SaveAs => "Writes the molfile to another place",
+            Command::SaveFigure => "Writes the picture as SVG, PDF or PNG, by the name's ending",
+            Command::Close => "Asks first if something is not saved",
+            Command::Undo => "Takes the last step back",
+            Command::Redo => "Makes the step again",
+            Command::SelectAll => "Selects every atom and bond",
+            Command::Deselect => "Selects nothing",
+            Command::Delete => "Removes what is selected",
+            Command::Raise => "Solid wedge on the selected bond; again: plain",
+            Command::Lower => "Hashed wedge on the selected bond; again: plain",
+            Command::Swap => "The wedge of the selected bond starts at its other end",
+            Command::ClearMarks => "Plain bonds, within the selection if there is one",
+            Command::GoToLine => "To the line of stereodescriptors, such as (1R,2S)",
+            Command::MakeItCarry => "Sets the marks so that the drawing carries the line",
+            Command::Fit => "Shows the whole drawing",
+            Command::Nearer => "Enlarges the view",
+            Command::Farther => "Reduces the view",
+            Command::Dim => "Changes between a light and a dark desk; the paper stays white",
+            Command::Places => "Shows or folds the list of stereogenic places",
+            Command::Step(..) | Command::Ask(_) | Command::Settle | Command::Select(_) => "",
+        }
+    }
+
+    /// Whether it can do something now.
+    pub fn enabled(&self, session: &Session) -> bool {
+        let bond = || wedgeable(session);
+        match self {
+            Command::Undo => session.undo_name().is_some(),
+            Command::Redo => session.redo_name().is_some(),
+            Command::SelectAll | Command::Fit | Command::SaveFigure => {
+                session.drawing().molecule().n_atoms() > 0
+            }
+            Command::Deselect | Command::Delete => !session.selection().is_empty(),
+            Command::Raise | Command::Lower => bond().is_some(),
+            Command::Swap => {
+                bond().is_some_and(|b| session.drawing().mark(b).narrow().is_some())
+            }
+            Command::ClearMarks => session.drawing().marks().iter().any(|m| *m != Mark::Plain),
+            Command::MakeItCarry => session.can_carry(),
+            _ => true,
+        }
+    }
+
+    /// Does it, or says what the window must do.
+    pub fn run(self, session: &mut Session) -> Effect {
+        match self {
+            Command::New => Effect::Errand(Errand::New),
+            Command::Open => Effect::Errand(Errand::Open),
+            Command::Save => Effect::Errand(Errand::Save),
+            Command::SaveAs => Effect::Errand(Errand::SaveAs),
+            Command::SaveFigure => Effect::Errand(Errand::SaveFigure),
+            Command::Close => Effect::Errand(Errand::Close),
+            Command::GoToLine => Effect::Errand(Errand::GoToLine),
+            Command::Fit => Effect::Errand(Errand::Fit),
+            Command::Nearer => Effect::Errand(Errand::Zoom(true)),
+            Command::Farther => Effect::Errand(Errand::Zoom(false)),
+            Command::Dim => Effect::Errand(Errand::Dim),
+            Command::Places => Effect::Errand(Errand::Places),
+            Command::Undo => done(session.undo()),
+            Command::Redo => done(session.redo()),
+            Command::SelectAll => {
+                let all = Selection::all(session.drawing());
+                done(session.select(all))
+            }
+            Command::Deselect => done(session.select(Selection::default())),
+            Command::Select(selection) => done(session.select(selection)),
+            Command::Ask(text) => done(session.ask(&text)),
+            Command::Settle => done(session.settle()),
+            Command::MakeItCarry => done(session.make_it_carry()),
+            Command::Delete => {
+                let edits = removal(session);
+                step(session, "Delete", &edits)
+            }
+            Command::Raise => wedge(session, "Raise the wide end", Mark::Solid),
+            Command::Lower => wedge(session, "Lower the wide end", Mark::Hashed),
+            Command::Swap => swap(session),
+            Command::ClearMarks => clear_marks(session),
+            Command::Step(name, edits) => step(session, &name, &edits),
+        }
+    }
+}
+
+fn done((): ()) -> Effect {
+    Effect::Done
+}
+
+fn lower_first(words: &str) -> String {
+    let mut letters = words.chars();
+    match letters.next() {
+        Some(first) => first.to_lowercase().chain(letters).collect(),
+        None => String::new(),
+    }
+}
+
+fn step(session: &mut Session, name: &str, edits: &[Edit]) -> Effect {
+    if edits.is_empty() {
+        return Effect::Done;
+    }
+    match session.step(name, edits) {
+        Ok(_) => Effect::Done,
+        Err(e) => Effect::Refused(format!("{name}: {e}")),
+    }
+}
+
+/// Removal of the selection. A carbon that only the removed bonds held goes with them: nobody who
+/// deletes the last bond of a chain means to leave methane.
+fn removal(session: &Session) -> Vec<Edit> {
+    let drawing = session.drawing();
+    let (m, selection) = (drawing.molecule(), session.selection());
+    let mut atoms = selection.atoms.clone();
+    for bond in &selection.bonds {
+        for end in m.bond(*bond).ends {
+            let bare = m
+                .neighbors(end)
+                .iter()
+                .all(|n| selection.bonds.contains(&n.bond));
+            let plain = *m.atom(end) == chem::molecule::Atom::new(chem::element::Element::C);
+            if bare && plain && m.degree(end) == 1 {
+                atoms.insert(end);
+            }
+        }
+    }
+    let bonds = selection.bonds.iter().map(|b| Edit::RemoveBond(*b));
+    bonds.chain(atoms.into_iter().map(Edit::RemoveAtom)).collect()
+}
+
+/// The selected bond, if it is one single bond that can bear a wedge.
+fn wedgeable(session: &Session) -> Option<BondIx> {
+    let bond = session.selection().only_bond()?;
+    (session.drawing().molecule().bond(bond).order == Order::Single).then_some(bond)
+}
+
+fn wedge(session: &mut Session, name: &str, mark: fn(End) -> Mark) -> Effect {
+    let Some(bond) = wedgeable(session) else {
+        return Effect::Done;
+    };
+    let now = session.drawing().mark(bond);
+    let narrow = now.narrow().unwrap_or_else(|| narrow_end(session, bond));
+    let next = if now == mark(narrow) {
+        Mark::Plain
+    } else {
+        mark(narrow)
+    };
+    step(session, name, &[Edit::Mark(bond, next)])
+}
+
+fn swap(session: &mut Session) -> Effect {
+    let Some(bond) = wedgeable(session) else {
+        return Effect::Done;
+    };
+    let now = session.drawing().mark(bond);
+    match now.narrow() {
+        Some(end) => {
+            let edit = Edit::Mark(bond, now.at(end.other()));
+            step(session, "Swap the narrow end", &[edit])
+        }
+        None => Effect::Done,
+    }
+}
+
+/// Where a new wedge starts: at the end that is a stereogenic place, else at the one with more bonds.
+fn narrow_end(session: &Session, bond: BondIx) -> End {
+    let m = session.drawing().molecule();
+    let weight = |atom: AtomIx| {
+        let place = session
+            .report()
+            .places
+            .iter()
+            .any(|p| p.atoms.as_slice() == [atom]);
+        (place, m.degree(atom))
+    };
+    let [first, second] = m.bond(bond).ends;
+    if weight(second) > weight(first) {
+        End::Second
+    } else {
+        End::First
+    }
+}
+
+fn clear_marks(session: &mut Session) -> Effect {
+    let (drawing, selection) = (session.drawing(), session.selection());
+    let within = |b: &BondIx| {
+        let ends = drawing.molecule().bond(*b).ends;
+        selection.is_empty()
+            || selection.bonds.contains(b)
+            || ends.iter().any(|a| selection.atoms.contains(a))
+    };
+    let edits: Vec<Edit> = drawing
+        .molecule()
+        .bonds()
+        .filter(|b| drawing.mark(*b) != Mark::Plain)
+        .filter(within)
+        .map(|b| Edit::Mark(b, Mark::Plain))
+        .collect();
+    step(session, "Clear marks", &edits)
+}

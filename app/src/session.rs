@@ -1,0 +1,482 @@
+//! The open document: one drawing, the line it must carry, every step that led here.
+//!
+//! Nothing here knows of windows. All change goes through [`Edit`]s in [`Session::step`] or through
+//! the search for marks ([`Session::ask`], [`Session::make_it_carry`]), so that each change has a
+//! name and can be taken back. After every step the locants of the requirement follow the atoms they
+//! mean, and the drawing is read afresh.
+//!
+//! The search itself is not run here: it is handed out as [`Work`], may run anywhere, and comes back
+//! through [`Session::answer`].
+
+pub mod files;
+mod history;
+mod line;
+mod selection;
+
+pub use selection::Selection;
+
+use chem::drawing::{Drawing, Edit, EditError, Renumbering};
+use chem::pipeline::{self, Report, Solution, Verdict};
+use chem::solve::Refusal;
+use chem::solve::require::{Requirement, RequirementError};
+use files::Document;
+use history::{History, State};
+use std::path::{Path, PathBuf};
+use std::sync::Arc;
+
+/// A search for marks, to be run off the thread that paints.
+#[derive(Clone, Debug)]
+pub struct Work {
+    id: u64,
+    drawing: Arc<Drawing>,
+    requirement: Requirement,
+}
+
+impl Work {
+    /// Runs the search; the result goes to [`Session::answer`].
+    pub fn run(&self) -> Answer {
+        Answer {
+            id: self.id,
+            result: pipeline::carry(&self.drawing, &self.requirement),
+        }
+    }
+}
+
+/// What came of a [`Work`].
+#[derive(Debug)]
+pub struct Answer {
+    id: u64,
+    result: Result<Solution, Refusal>,
+}
+
+/// What waits for an answer.
+#[derive(Debug)]
+struct Pending {
+    id: u64,
+    then: Then,
+}
+
+/// What an answer does.
+#[derive(Debug)]
+enum Then {
+    /// Completes the step of a typed line, whose marks were sought from this drawing.
+    Typed(Arc<Drawing>),
+    /// Makes a step of this name.
+    Step(String),
+}
+
+/// The line while it is typed: everything typed in one go is one step.
+#[derive(Debug)]
+struct Typing {
+    /// The drawing before the first key: marks are always sought from it.
+    base: Arc<Drawing>,
+    base_text: String,
+}
+
+/// How many places stand how.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub struct Tally {
+    /// Places that carry what they must.
+    pub agrees: usize,
+    /// Places that carry something else.
+    pub opposite: usize,
+    /// Places that must carry something and carry nothing.
+    pub open: usize,
+    /// Places whose marks contradict each other.
+    pub contradiction: usize,
+    /// Places of which nothing is asked.
+    pub not_asked: usize,
+}
+
+impl Tally {
+    /// The verdict to show for the whole line.
+    pub fn verdict(&self) -> Verdict {
+        if self.contradiction > 0 {
+            Verdict::Contradiction
+        } else if self.opposite > 0 {
+            Verdict::Opposite
+        } else if self.open > 0 {
+            Verdict::Open
+        } else if self.agrees > 0 {
+            Verdict::Agrees
+        } else {
+            Verdict::NotAsked
+        }
+    }
+}
+
+/// The open document.
+#[derive(Debug)]
+pub struct Session {
+    history: History,
+    document: Document,
+    path: Option<PathBuf>,
+    saved: u64,
+    requirement: Result<Requirement, RequirementError>,
+    refusal: Option<Refusal>,
+    report: Report,
+    selection: Selection,
+    typing: Option<Typing>,
+    pending: Option<Pending>,
+    work: Option<Work>,
+    next_work: u64,
+}
+
+impl Session {
+    /// An empty sheet.
+    pub fn empty() -> Session {
+        Session::of(Document::empty(), None, String::new())
+    }
+
+    /// A document with the line that it must carry; `path` is where it was read from.
+    pub fn of(document: Document, path: Option<PathBuf>, line: String) -> Session {
+        let drawing = Arc::new(document.record.drawing.clone());
+        let history = History::new(State {
+            name: "Open".to_owned(),
+            drawing,
+            line,
+            revision: 0,
+        });
+        let mut session = Session {
+            history,
+            document,
+            path,
+            saved: 0,
+            requirement: Ok(Requirement::default()),
+            refusal: None,
+            report: Report { places: Vec::new() },
+            selection: Selection::default(),
+            typing: None,
+            pending: None,
+            work: None,
+            next_work: 0,
+        };
+        session.read();
+        session
+    }
+
+    /// Opens a file, told by its content.
+    ///
+    /// # Errors
+    /// If it cannot be read, or holds no drawing.
+    pub fn open(path: &Path) -> Result<Session, files::FileError> {
+        let document = files::read(path)?;
+        // saving must not lose the records beside this one
+        let own = (!document.has_more).then(|| path.to_owned());
+        Ok(Session::of(document, own, String::new()))
+    }
+
+    /// The drawing as it stands.
+    pub fn drawing(&self) -> &Arc<Drawing> {
+        &self.history.now().drawing
+    }
+
+    /// A number that changes with every change of the drawing or the line.
+    pub fn revision(&self) -> u64 {
+        self.history.now().revision
+    }
+
+    /// The line as typed.
+    pub fn line(&self) -> &str {
+        &self.history.now().line
+    }
+
+    /// The line understood, or what is wrong with it.
+    pub fn requirement(&self) -> Result<&Requirement, &RequirementError> {
+        self.requirement.as_ref()
+    }
+
+    /// Why the last search made no drawing; gone with the next change.
+    pub fn refusal(&self) -> Option<&Refusal> {
+        self.refusal.as_ref()
+    }
+
+    /// What the drawing carries and how that stands to the line.
+    pub fn report(&self) -> &Report {
+        &self.report
+    }
+
+    /// How many places stand how.
+    pub fn tally(&self) -> Tally {
+        let mut tally = Tally::default();
+        for place in &self.report.places {
+            match place.verdict {
+                Verdict::Agrees => tally.agrees += 1,
+                Verdict::Opposite => tally.opposite += 1,
+                Verdict::Open if place.must.is_some() => tally.open += 1,
+                Verdict::Contradiction => tally.contradiction += 1,
+                Verdict::Open | Verdict::NotAsked => tally.not_asked += 1,
+            }
+        }
+        tally
+    }
+
+    /// Whether something is asked that the drawing does not carry yet.
+    pub fn can_carry(&self) -> bool {
+        let asks = self
+            .requirement
+            .as_ref()
+            .is_ok_and(|r| !r.wanted.is_empty());
+        asks && !self.report.all_agree()
+    }
+
+    /// What is selected.
+    pub fn selection(&self) -> &Selection {
+        &self.selection
+    }
+
+    /// Selects; what is not there is left out.
+    pub fn select(&mut self, mut selection: Selection) {
+        selection.keep_within(self.drawing());
+        self.selection = selection;
+    }
+
+    /// Where the document is kept.
+    pub fn path(&self) -> Option<&Path> {
+        self.path.as_deref()
+    }
+
+    /// The file's name, or the title, or "Untitled".
+    pub fn name(&self) -> String {
+        let file = self
+            .path
+            .as_ref()
+            .and_then(|p| p.file_name())
+            .map(|n| n.to_string_lossy().into_owned());
+        match file {
+            Some(name) => name,
+            None if self.document.record.title.trim().is_empty() => "Untitled".to_owned(),
+            None => self.document.record.title.trim().to_owned(),
+        }
+    }
+
+    /// What there is to know of the file it came from, in a sentence; empty if nothing.
+    pub fn notice(&self) -> &str {
+        &self.document.notice
+    }
+
+    /// Whether something would be lost by closing.
+    pub fn is_dirty(&self) -> bool {
+        self.history.now().revision != self.saved
+    }
+
+    /// Makes one step of several edits.
+    ///
+    /// # Errors
+    /// If the edits do not fit the drawing, which is then unchanged.
+    pub fn step(&mut self, name: &str, edits: &[Edit]) -> Result<Renumbering, EditError> {
+        self.settle();
+        self.stop_work();
+        let (drawing, map) = self.drawing().apply(edits)?;
+        let line = match &self.requirement {
+            Ok(requirement) => line::follow(requirement, &map),
+            Err(_) => self.line().to_owned(),
+        };
+        self.selection = self.selection.renumbered(&map);
+        self.history.push(name, Arc::new(drawing), line);
+        self.read();
+        Ok(map)
+    }
+
+    /// The line is being typed and now reads `text`. Everything up to [`Session::settle`] is one step.
+    /// A line that is understood gives [`Work`]; one that is not leaves the drawing as it is shown.
+    pub fn ask(&mut self, text: &str) {
+        if text == self.line() {
+            return;
+        }
+        self.stop_work();
+        if self.typing.is_none() {
+            self.typing = Some(Typing {
+                base: self.drawing().clone(),
+                base_text: self.line().to_owned(),
+            });
+            let drawing = self.drawing().clone();
+            self.history.push("", drawing, text.to_owned());
+        }
+        let base = match &self.typing {
+            Some(typing) => typing.base.clone(),
+            None => return,
+        };
+        let drawing = if text.trim().is_empty() {
+            base.clone()
+        } else {
+            self.drawing().clone()
+        };
+        let name = if text.trim().is_empty() {
+            "Clear the line".to_owned()
+        } else {
+            format!("Carry {}", text.trim())
+        };
+        self.history.amend(&name, drawing, text.to_owned());
+        self.read();
+        if let Ok(requirement) = &self.requirement
+            && !requirement.wanted.is_empty()
+        {
+            let requirement = requirement.clone();
+            self.give_work(base.clone(), requirement, Then::Typed(base));
+        }
+    }
+
+    /// Typing has ended. A line that is not understood leaves the drawing as it was before typing; a
+    /// step that changed nothing goes.
+    pub fn settle(&mut self) {
+        let Some(typing) = self.typing.take() else {
+            return;
+        };
+        let line = self.line().to_owned();
+        if self.requirement.is_err() {
+            let name = self.history.now().name.clone();
+            self.history.amend(&name, typing.base.clone(), line.clone());
+            self.read();
+        }
+        let idle = self.pending.is_none() && line == typing.base_text;
+        if idle && Arc::ptr_eq(self.drawing(), &typing.base) {
+            self.history.drop_last();
+            self.read();
+        }
+    }
+
+    /// Seeks marks for the line on the drawing as it stands; one step when the answer comes.
+    pub fn make_it_carry(&mut self) {
+        self.settle();
+        self.stop_work();
+        if let Ok(requirement) = &self.requirement
+            && !requirement.wanted.is_empty()
+        {
+            let requirement = requirement.clone();
+            let name = format!("Carry {}", self.line().trim());
+            let drawing = self.drawing().clone();
+            self.give_work(drawing, requirement, Then::Step(name));
+        }
+    }
+
+    /// The search to run next, once.
+    pub fn take_work(&mut self) -> Option<Work> {
+        self.work.take()
+    }
+
+    /// Whether an answer is awaited.
+    pub fn is_searching(&self) -> bool {
+        self.pending.is_some()
+    }
+
+    /// Takes the answer of a search; one that is no longer awaited is dropped.
+    pub fn answer(&mut self, answer: Answer) {
+        let Some(pending) = self.pending.take_if(|p| p.id == answer.id) else {
+            return;
+        };
+        let line = self.line().to_owned();
+        match (answer.result, pending.then) {
+            (Ok(solution), Then::Typed(base)) => {
+                let drawing = changed(&solution).unwrap_or(base);
+                self.complete_typed(drawing);
+            }
+            (Ok(solution), Then::Step(name)) => {
+                if let Some(drawing) = changed(&solution) {
+                    self.history.push(&name, drawing, line);
+                    self.read();
+                }
+            }
+            (Err(refusal), then) => {
+                if let Then::Typed(base) = then {
+                    self.complete_typed(base);
+                }
+                self.refusal = Some(refusal);
+            }
+        }
+    }
+
+    fn complete_typed(&mut self, drawing: Arc<Drawing>) {
+        let State { name, line, .. } = self.history.now().clone();
+        self.history.amend(&name, drawing, line);
+        self.read();
+    }
+
+    /// The name of the step that undo would take back.
+    pub fn undo_name(&self) -> Option<&str> {
+        self.history.undo_name()
+    }
+
+    /// The name of the step that redo would make again.
+    pub fn redo_name(&self) -> Option<&str> {
+        self.history.redo_name()
+    }
+
+    /// Takes the last step back.
+    pub fn undo(&mut self) {
+        self.settle();
+        self.stop_work();
+        if self.history.undo() {
+            self.moved_in_history();
+        }
+    }
+
+    /// Makes the step again that was taken back.
+    pub fn redo(&mut self) {
+        self.settle();
+        self.stop_work();
+        if self.history.redo() {
+            self.moved_in_history();
+        }
+    }
+
+    /// Writes the document as a molfile, and from then on keeps it there.
+    ///
+    /// # Errors
+    /// If the file cannot be written; what stood there is then untouched.
+    pub fn save(&mut self, path: &Path) -> Result<(), files::FileError> {
+        self.settle();
+        let drawing = (**self.drawing()).clone();
+        let record = self.document.record.clone().with_drawing(drawing);
+        files::write(path, &record)?;
+        self.document = Document::of(record);
+        self.path = Some(path.to_owned());
+        self.saved = self.history.now().revision;
+        Ok(())
+    }
+
+    fn moved_in_history(&mut self) {
+        let drawing = self.drawing().clone();
+        self.selection.keep_within(&drawing);
+        self.read();
+    }
+
+    fn give_work(&mut self, drawing: Arc<Drawing>, requirement: Requirement, then: Then) {
+        self.next_work += 1;
+        let id = self.next_work;
+        self.pending = Some(Pending { id, then });
+        self.work = Some(Work {
+            id,
+            drawing,
+            requirement,
+        });
+    }
+
+    fn stop_work(&mut self) {
+        self.pending = None;
+        self.work = None;
+    }
+
+    /// Understands the line and reads the drawing afresh.
+    fn read(&mut self) {
+        self.refusal = None;
+        let drawing = self.drawing().clone();
+        self.requirement = if self.line().trim().is_empty() {
+            Ok(Requirement::default())
+        } else {
+            pipeline::understand(self.line(), &drawing)
+        };
+        let nothing = Requirement::default();
+        let asked = self.requirement.as_ref().unwrap_or(&nothing);
+        self.report = pipeline::report(&drawing, asked);
+        self.selection.keep_within(&drawing);
+    }
+}
+
+/// The drawing of a solution that changes something.
+fn changed(solution: &Solution) -> Option<Arc<Drawing>> {
+    (!solution.edits().is_empty()).then(|| Arc::new(solution.drawing().clone()))
+}
+
+#[cfg(test)]
+mod tests;

@@ -1,0 +1,188 @@
+use super::*;
+use chem::format::{Record, molfile};
+use chem::geom::Point;
+use chem::molecule::AtomIx;
+
+/// Alanine with nothing marked; atom 2 is the centre.
+const ALANINE: &str = "alanine
+
+
+  6  5  0  0  0  0            999 V2000
+   -1.2000    0.7000    0.0000 N   0  0
+    0.0000    0.0000    0.0000 C   0  0
+    0.0000   -1.4000    0.0000 C   0  0
+    1.2000    0.7000    0.0000 C   0  0
+    2.4000    0.0000    0.0000 O   0  0
+    1.2000    2.1000    0.0000 O   0  0
+  1  2  1  0
+  2  3  1  0
+  2  4  1  0
+  4  5  1  0
+  4  6  2  0
+M  END
+";
+
+fn alanine(line: &str) -> Session {
+    let record: Record = molfile::read(ALANINE, 1).unwrap();
+    Session::of(Document::of(record), None, line.to_owned())
+}
+
+fn work(session: &mut Session) {
+    while let Some(work) = session.take_work() {
+        session.answer(work.run());
+    }
+}
+
+fn shift(session: &Session, atom: usize) -> Edit {
+    let a = AtomIx::new(atom);
+    let p = session.drawing().point(a);
+    Edit::Move(a, Point::new(p.x + 0.1, p.y))
+}
+
+#[test]
+fn steps_have_names_and_can_be_taken_back() {
+    let mut s = alanine("");
+    assert!(!s.is_dirty() && s.undo_name().is_none());
+    let before = s.drawing().clone();
+    let edit = shift(&s, 0);
+    s.step("Move", &[edit]).unwrap();
+    assert_eq!((s.undo_name(), s.is_dirty()), (Some("Move"), true));
+    s.undo();
+    assert!(Arc::ptr_eq(s.drawing(), &before) && !s.is_dirty());
+    assert_eq!(s.redo_name(), Some("Move"));
+    s.redo();
+    assert!(s.is_dirty());
+    s.undo();
+    let edit = shift(&s, 1);
+    s.step("Move another", &[edit]).unwrap();
+    assert_eq!(s.redo_name(), None);
+}
+
+#[test]
+fn a_faulty_step_changes_nothing() {
+    let mut s = alanine("");
+    let before = s.revision();
+    assert!(s.step("Remove", &[Edit::RemoveAtom(AtomIx::new(77))]).is_err());
+    assert_eq!(s.revision(), before);
+}
+
+#[test]
+fn locants_follow_their_atoms() {
+    let mut s = alanine("(2S)");
+    s.step("Delete", &[Edit::RemoveAtom(AtomIx::new(0))]).unwrap();
+    assert_eq!(s.line(), "(1S)");
+    s.undo();
+    assert_eq!(s.line(), "(2S)");
+    s.step("Delete", &[Edit::RemoveAtom(AtomIx::new(2))]).unwrap();
+    assert_eq!(s.line(), "(2S)");
+    s.step("Delete", &[Edit::RemoveAtom(AtomIx::new(1))]).unwrap();
+    assert_eq!(s.line(), "");
+}
+
+#[test]
+fn a_typed_line_is_one_step_and_its_marks_come_with_it() {
+    let mut s = alanine("");
+    for text in ["(", "(2", "(2S", "(2S)"] {
+        s.ask(text);
+        work(&mut s);
+    }
+    s.settle();
+    assert_eq!(s.undo_name(), Some("Carry (2S)"));
+    assert_eq!(s.tally().verdict(), Verdict::Agrees);
+    assert_eq!(s.report().descriptor_line(), "(2S)");
+    s.undo();
+    assert_eq!((s.line(), s.undo_name()), ("", None));
+    assert!(s.drawing().marks().iter().all(|m| *m == chem::drawing::Mark::Plain));
+    s.redo();
+    assert_eq!(s.report().descriptor_line(), "(2S)");
+}
+
+#[test]
+fn a_refused_line_says_why_and_changes_nothing() {
+    let mut s = alanine("");
+    let before = s.drawing().clone();
+    s.ask("(2S,3R)");
+    work(&mut s);
+    s.settle();
+    let why = match (s.refusal(), s.requirement()) {
+        (Some(refusal), _) => refusal.text.clone(),
+        (None, Err(error)) => error.text.clone(),
+        (None, Ok(_)) => String::new(),
+    };
+    assert!(!why.is_empty());
+    assert!(Arc::ptr_eq(s.drawing(), &before));
+}
+
+#[test]
+fn a_line_that_is_not_understood_keeps_the_marks_while_it_is_typed_and_loses_them_after() {
+    let mut s = alanine("");
+    let before = s.drawing().clone();
+    s.ask("(2S)");
+    work(&mut s);
+    assert!(!Arc::ptr_eq(s.drawing(), &before));
+    let shown = s.drawing().clone();
+    s.ask("(2S,?");
+    work(&mut s);
+    assert!(s.requirement().is_err());
+    assert!(Arc::ptr_eq(s.drawing(), &shown));
+    s.settle();
+    assert!(Arc::ptr_eq(s.drawing(), &before));
+}
+
+#[test]
+fn typing_that_ends_where_it_began_is_no_step() {
+    let mut s = alanine("");
+    s.ask("?");
+    s.ask("");
+    s.settle();
+    assert_eq!(s.undo_name(), None);
+    assert!(!s.is_dirty());
+}
+
+#[test]
+fn an_answer_that_comes_too_late_is_dropped() {
+    let mut s = alanine("");
+    s.ask("(2S)");
+    let late = s.take_work().unwrap().run();
+    let edit = shift(&s, 0);
+    s.step("Move", &[edit]).unwrap();
+    let before = s.drawing().clone();
+    s.answer(late);
+    assert!(Arc::ptr_eq(s.drawing(), &before));
+    assert!(s.can_carry());
+    s.make_it_carry();
+    work(&mut s);
+    assert_eq!(s.undo_name(), Some("Carry (2S)"));
+    assert_eq!(s.tally().verdict(), Verdict::Agrees);
+}
+
+#[test]
+fn what_is_saved_is_read_again() {
+    let folder = tempfile::tempdir().unwrap();
+    let path = folder.path().join("a.mol");
+    let mut s = alanine("");
+    s.ask("(2R)");
+    work(&mut s);
+    s.save(&path).unwrap();
+    assert!(!s.is_dirty());
+    let again = Session::open(&path).unwrap();
+    assert_eq!(again.report().descriptor_line(), "(2R)");
+    assert_eq!(again.name(), "a.mol");
+    let nowhere = folder.path().join("no/such/place.mol");
+    let error = s.save(&nowhere).unwrap_err().to_string();
+    assert!(error.contains("written"), "{error}");
+    assert_eq!(s.path(), Some(path.as_path()));
+    let error = Session::open(folder.path()).unwrap_err().to_string();
+    assert!(error.contains("read"), "{error}");
+}
+
+#[test]
+fn a_file_of_many_records_is_not_overwritten_by_one() {
+    let folder = tempfile::tempdir().unwrap();
+    let path = folder.path().join("two.sdf");
+    let two = format!("{ALANINE}$$$$\n{ALANINE}$$$$\n");
+    std::fs::write(&path, two).unwrap();
+    let s = Session::open(&path).unwrap();
+    assert_eq!(s.path(), None);
+    assert!(s.notice().contains("2 records"));
+}

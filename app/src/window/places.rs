@@ -1,0 +1,321 @@
+//! The places: a row for each stereogenic unit, and beneath why the chosen one carries what it does.
+
+use super::sheet::locant;
+use super::signs;
+use super::theme::{self, CAPTION, Colors, GRID, TEXT};
+use crate::command::Command;
+use crate::session::{Selection, Session};
+use chem::cip::Rule;
+use chem::pipeline::{Place, Verdict};
+use chem::stereo::{Kind, Ligand};
+use egui::{
+    Align2, CornerRadius, Key, Painter, Pos2, Rect, RichText, Role, ScrollArea, Sense, Stroke, StrokeKind,
+    Ui, WidgetInfo, pos2, vec2,
+};
+
+/// Height of a row.
+const ROW: f32 = 32.0;
+/// Left edges of the columns, from the left edge of the panel's content.
+const COLUMNS: [f32; 4] = [0.0, 72.0, 128.0, 192.0];
+
+/// The place that is selected on the sheet, if it is one.
+pub(super) fn chosen(session: &Session) -> Option<&Place> {
+    let drawing = session.drawing();
+    let selection = session.selection();
+    let wanted = selection.carried(drawing);
+    if wanted.is_empty() || wanted.len() > 2 {
+        return None;
+    }
+    let whole = |place: &&Place| {
+        place.atoms.len() == wanted.len() && place.atoms.iter().all(|a| wanted.contains(a))
+    };
+    session.report().places.iter().find(whole)
+}
+
+/// The selection of a place: its centre, or its bond.
+fn selection(session: &Session, place: &Place) -> Selection {
+    match place.atoms.as_slice() {
+        [a] => Selection::atom(*a),
+        [a, b] => match session.drawing().molecule().bond_between(*a, *b) {
+            Some(bond) => Selection::bond(bond),
+            None => Selection {
+                atoms: [*a, *b].into(),
+                ..Selection::default()
+            },
+        },
+        more => Selection {
+            atoms: more.iter().copied().collect(),
+            ..Selection::default()
+        },
+    }
+}
+
+/// Shows the panel.
+pub(super) fn show(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
+    ScrollArea::vertical().auto_shrink(false).show(ui, |ui| {
+        ui.spacing_mut().item_spacing.y = 0.0;
+        heading(ui, "Places");
+        ui.add_space(GRID);
+        let places = &session.report().places;
+        if places.is_empty() {
+            let colors = Colors::of(ui);
+            let text = if session.drawing().molecule().n_atoms() == 0 {
+                "nothing is drawn yet"
+            } else {
+                "no stereogenic place in this drawing"
+            };
+            ui.label(RichText::new(text).color(colors.muted));
+            return;
+        }
+        header(ui);
+        let chosen = chosen(session);
+        for place in places {
+            row(ui, session, place, chosen.is_some_and(|c| c == place), out);
+        }
+        if let Some(place) = chosen {
+            ui.add_space(2.0 * GRID);
+            hairline(ui);
+            ui.add_space(2.0 * GRID);
+            why(ui, session, place);
+        }
+    });
+}
+
+fn heading(ui: &mut Ui, text: &str) {
+    let colors = Colors::of(ui);
+    ui.label(
+        RichText::new(text)
+            .font(theme::bold(TEXT))
+            .color(colors.muted),
+    );
+}
+
+fn hairline(ui: &mut Ui) {
+    let colors = Colors::of(ui);
+    let (rect, _) = ui.allocate_exact_size(vec2(ui.available_width(), 1.0), Sense::hover());
+    ui.painter()
+        .hline(rect.x_range(), rect.center().y, Stroke::new(1.0, colors.hairline));
+}
+
+fn header(ui: &mut Ui) {
+    let colors = Colors::of(ui);
+    let (rect, _) = ui.allocate_exact_size(vec2(ui.available_width(), 20.0), Sense::hover());
+    for (x, text) in COLUMNS.iter().zip(["locant", "must", "carries", "verdict"]) {
+        ui.painter().text(
+            pos2(rect.min.x + x, rect.center().y),
+            Align2::LEFT_CENTER,
+            text,
+            theme::upright(CAPTION),
+            colors.muted,
+        );
+    }
+    hairline(ui);
+}
+
+fn letter(d: Option<chem::stereo::Descriptor>) -> String {
+    d.map_or_else(|| "·".to_owned(), |d| d.to_string())
+}
+
+/// What a screen reader says of a row.
+fn spoken(place: &Place) -> String {
+    let asked = place.must.map_or_else(
+        || "nothing asked".to_owned(),
+        |d| format!("must carry {d}"),
+    );
+    let carried = place
+        .carries
+        .map_or_else(|| "carries nothing".to_owned(), |d| format!("carries {d}"));
+    format!(
+        "Place {}: {asked}, {carried}, {}",
+        locant(place),
+        place.verdict.name()
+    )
+}
+
+fn row(ui: &mut Ui, session: &Session, place: &Place, chosen: bool, out: &mut Vec<Command>) {
+    let colors = Colors::of(ui);
+    let size = vec2(ui.available_width(), ROW);
+    let (rect, response) = ui.allocate_exact_size(size, Sense::click());
+    response.widget_info(|| WidgetInfo::selected(Role::Button, true, chosen, spoken(place)));
+    let response = response.on_hover_text(tip(place));
+    if response.clicked() {
+        out.push(Command::Select(selection(session, place)));
+    }
+    if response.has_focus() && !chosen && ui.input(|i| i.key_pressed(Key::Space)) {
+        out.push(Command::Select(selection(session, place)));
+    }
+    let painter = ui.painter();
+    let wide = rect.expand2(vec2(GRID, 0.0));
+    if chosen || response.hovered() {
+        let fill = if chosen {
+            colors.chosen
+        } else {
+            colors.chosen.gamma_multiply(0.5)
+        };
+        painter.rect_filled(wide, CornerRadius::same(4), fill);
+    }
+    if response.has_focus() {
+        let line = Stroke::new(1.0, colors.accent);
+        painter.rect_stroke(wide, CornerRadius::same(4), line, StrokeKind::Inside);
+    }
+    cells(painter, rect, place, &colors);
+}
+
+fn cells(painter: &Painter, rect: Rect, place: &Place, colors: &Colors) {
+    let y = rect.center().y;
+    let [x0, x1, x2, x3] = COLUMNS.map(|x| rect.min.x + x);
+    let color = colors.verdict(place.verdict);
+    let number = place_number(place);
+    let write = |at: Pos2, text: String, font, color| {
+        painter.text(at, Align2::LEFT_CENTER, text, font, color);
+    };
+    write(pos2(x0, y), number, theme::upright(TEXT + 1.0), colors.ink);
+    let asked = if place.must.is_some() {
+        colors.ink
+    } else {
+        colors.muted
+    };
+    write(pos2(x1, y), letter(place.must), theme::italic(TEXT + 1.0), asked);
+    let carried = match place.verdict {
+        Verdict::Agrees => colors.ink,
+        _ => color,
+    };
+    write(pos2(x2, y), letter(place.carries), theme::italic(TEXT + 1.0), carried);
+    signs::paint(painter, pos2(x3 + 6.0, y), 6.0, place.verdict, colors);
+    let words = place.verdict.name().to_owned();
+    write(pos2(x3 + 22.0, y), words, theme::upright(TEXT - 0.5), color);
+}
+
+/// `3`, or `5=6` of a double bond.
+fn place_number(place: &Place) -> String {
+    let numbers: Vec<String> = place
+        .atoms
+        .iter()
+        .map(|a| (a.index() + 1).to_string())
+        .collect();
+    numbers.join("=")
+}
+
+fn tip(place: &Place) -> String {
+    let what = match place.kind {
+        Kind::Tetrahedral => "stereogenic centre",
+        Kind::DoubleBond => "stereogenic double bond",
+    };
+    let sense = place.sense.name();
+    format!("{what}, drawn: {sense}")
+}
+
+fn why(ui: &mut Ui, session: &Session, place: &Place) {
+    let colors = Colors::of(ui);
+    ui.horizontal(|ui| {
+        ui.spacing_mut().item_spacing.x = 0.0;
+        let number = place_number(place);
+        match place.carries {
+            Some(d) => {
+                heading(ui, &format!("Why {number} carries "));
+                let color = match place.verdict {
+                    Verdict::NotAsked => colors.ink,
+                    other => colors.verdict(other),
+                };
+                let letter = RichText::new(d.to_string()).font(theme::italic(TEXT + 1.0));
+                ui.label(letter.color(color));
+            }
+            None => heading(ui, &format!("Why {number} carries nothing")),
+        }
+    });
+    ui.add_space(GRID);
+    let split = place.kind == Kind::DoubleBond;
+    for (i, ligand) in place.ranking.iter().enumerate() {
+        if split && i % 2 == 0 {
+            let end = place.atoms.get(i / 2).map_or(0, |a| a.index() + 1);
+            ui.label(RichText::new(format!("at {end}")).small().color(colors.muted));
+        }
+        let name = ["a", "b", "c", "d"][if split { i % 2 } else { i.min(3) }];
+        ligand_row(ui, session, name, *ligand, &colors);
+    }
+    if let Some(rule) = place.rule {
+        ui.add_space(GRID / 2.0);
+        let text = format!("The last tie broke by Rule {}: {}", rule.name(), meaning(rule));
+        ui.add(egui::Label::new(RichText::new(text).size(TEXT - 1.0).color(colors.muted)).wrap());
+    }
+    if !place.note.is_empty() {
+        ui.add_space(GRID / 2.0);
+        ui.add(egui::Label::new(RichText::new(&place.note).size(TEXT - 0.5)).wrap());
+    }
+}
+
+fn ligand_row(ui: &mut Ui, session: &Session, name: &str, ligand: Ligand, colors: &Colors) {
+    ui.horizontal(|ui| {
+        ui.spacing_mut().item_spacing.x = 0.0;
+        ui.set_min_height(26.0);
+        let (rect, _) = ui.allocate_exact_size(vec2(26.0, 22.0), Sense::hover());
+        ui.painter().text(
+            rect.left_center(),
+            Align2::LEFT_CENTER,
+            name,
+            theme::italic(TEXT + 1.0),
+            colors.accent,
+        );
+        let (text, number) = describe(session, ligand);
+        ui.label(RichText::new(text).size(TEXT));
+        if !number.is_empty() {
+            ui.add_space(GRID);
+            ui.label(RichText::new(number).size(CAPTION + 1.0).color(colors.muted));
+        }
+    });
+}
+
+/// A ligand in words, and its atom's number.
+fn describe(session: &Session, ligand: Ligand) -> (String, String) {
+    let m = session.drawing().molecule();
+    match ligand {
+        Ligand::Hydrogen => ("H".to_owned(), "not drawn".to_owned()),
+        Ligand::LonePair => ("lone pair".to_owned(), String::new()),
+        Ligand::Atom(a) if a.index() >= m.n_atoms() => (String::new(), String::new()),
+        Ligand::Atom(a) => {
+            let mut text = m.element(a).symbol().to_owned();
+            match m.hydrogens(a) {
+                0 => {}
+                1 => text.push('H'),
+                n => {
+                    text.push('H');
+                    text.push_str(&subscript(usize::from(n)));
+                }
+            }
+            (text, format!("atom {}", a.index() + 1))
+        }
+    }
+}
+
+/// A number in subscript figures.
+pub(super) fn subscript(n: usize) -> String {
+    n.to_string()
+        .bytes()
+        .filter_map(|b| char::from_u32(0x2080 + u32::from(b - b'0')))
+        .collect()
+}
+
+/// What a rule prefers.
+fn meaning(rule: Rule) -> &'static str {
+    match rule {
+        Rule::R1a => "the higher atomic number goes first",
+        Rule::R1b => "the duplicate of an atom nearer the root goes first",
+        Rule::R2 => "the higher mass goes first",
+        Rule::R3 => "Z goes before E",
+        Rule::R4a => "chiral units go before pseudoasymmetric ones",
+        Rule::R4b => "like pairs of descriptors go before unlike ones",
+        Rule::R4c => "r goes before s",
+        Rule::R5 => "R goes before S",
+        Rule::R6 => "the chosen reference goes first",
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn figures_go_down() {
+        assert_eq!(subscript(20), "₂₀");
+    }
+}

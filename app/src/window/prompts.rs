@@ -1,0 +1,155 @@
+//! Questions that must be answered before anything else: unsaved work, and a path to type.
+
+use super::dialogs::Purpose;
+use super::theme::{self, Colors, GRID, TEXT};
+use egui::{Button, Context, Frame, Id, Key, Margin, Modal, RichText, Stroke, TextEdit, Ui, vec2};
+use std::path::PathBuf;
+
+/// What is to be done once nothing can be lost.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub(super) enum Next {
+    /// An empty sheet.
+    New,
+    /// Choose a file to open.
+    Choose,
+    /// Open this file.
+    Open(PathBuf),
+    /// Close the window.
+    Close,
+}
+
+/// Answer to the question about unsaved work.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) enum Keep {
+    /// Save first.
+    Save,
+    /// Go on without saving.
+    Drop,
+    /// Do not go on.
+    Stay,
+}
+
+fn frame(ui: &Ui) -> Frame {
+    let colors = Colors::of(ui);
+    Frame::new()
+        .fill(colors.field)
+        .stroke(Stroke::new(1.0, colors.hairline))
+        .corner_radius(4)
+        .inner_margin(Margin::same(24))
+}
+
+/// A button that does what Enter does.
+fn filled(ui: &mut Ui, words: &str) -> egui::Response {
+    let colors = Colors::of(ui);
+    let text = RichText::new(words).color(colors.on_accent);
+    let button = Button::new(text)
+        .fill(colors.accent)
+        .stroke(Stroke::NONE)
+        .min_size(vec2(88.0, 32.0));
+    ui.add(button)
+}
+
+fn quiet(ui: &mut Ui, words: &str) -> egui::Response {
+    ui.add(Button::new(words).min_size(vec2(88.0, 32.0)))
+}
+
+/// Asks whether unsaved work is to be kept.
+pub(super) fn keep(ui: &Ui, name: &str) -> Option<Keep> {
+    let mut answer = None;
+    let modal = Modal::new(Id::unique("unsaved"))
+        .frame(frame(ui))
+        .show(ui.ctx(), |ui| {
+            ui.set_width(380.0);
+            ui.label(RichText::new(format!("{name} has changes that are not saved")).font(theme::bold(TEXT + 1.0)));
+            ui.add_space(2.0 * GRID);
+            ui.horizontal(|ui| {
+                let save = filled(ui, "Save");
+                if ui.memory(|m| m.focused().is_none()) {
+                    save.request_focus();
+                }
+                if save.clicked() {
+                    answer = Some(Keep::Save);
+                }
+                if quiet(ui, "Leave without saving").clicked() {
+                    answer = Some(Keep::Drop);
+                }
+                if quiet(ui, "Cancel").clicked() {
+                    answer = Some(Keep::Stay);
+                }
+            });
+        });
+    if answer.is_none() && modal.should_close() {
+        return Some(Keep::Stay);
+    }
+    answer
+}
+
+/// A path that is typed, where the platform shows no dialog.
+#[derive(Debug)]
+pub(super) struct PathField {
+    pub(super) purpose: Purpose,
+    text: String,
+    fresh: bool,
+    /// Whether the reason is to be told.
+    no_dialog: bool,
+}
+
+/// How the typed path ended.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub(super) enum Typed {
+    Open,
+    Path(PathBuf),
+    Cancelled,
+}
+
+impl PathField {
+    pub(super) fn new(purpose: Purpose, text: String, no_dialog: bool) -> PathField {
+        PathField {
+            purpose,
+            text,
+            fresh: true,
+            no_dialog,
+        }
+    }
+
+    pub(super) fn show(&mut self, ctx: &Context, ui: &Ui) -> Typed {
+        let colors = Colors::of(ui);
+        let mut result = Typed::Open;
+        let modal = Modal::new(Id::unique("path")).frame(frame(ui)).show(ctx, |ui| {
+            ui.set_width(520.0);
+            ui.label(RichText::new(self.purpose.title()).font(theme::bold(TEXT + 1.0)));
+            if self.no_dialog {
+                let text = "This desktop offers no file dialog, so the path is typed here";
+                ui.label(RichText::new(text).small().color(colors.muted));
+            }
+            ui.add_space(GRID);
+            let label = ui.label(RichText::new("file path").small().color(colors.muted));
+            let field = ui
+                .add(
+                    TextEdit::singleline(&mut self.text)
+                        .desired_width(f32::INFINITY)
+                        .margin(Margin::symmetric(8, 6)),
+                )
+                .labelled_by(label.id);
+            if std::mem::take(&mut self.fresh) {
+                field.request_focus();
+            }
+            let entered = field.lost_focus() && ui.input(|i| i.key_pressed(Key::Enter));
+            ui.add_space(2.0 * GRID);
+            ui.horizontal(|ui| {
+                let go = filled(ui, self.purpose.verb()).clicked() || entered;
+                let path = self.text.trim();
+                if go && !path.is_empty() {
+                    result = Typed::Path(PathBuf::from(path));
+                }
+                if quiet(ui, "Cancel").clicked() {
+                    result = Typed::Cancelled;
+                }
+            });
+        });
+        if result == Typed::Open && modal.should_close() {
+            result = Typed::Cancelled;
+        }
+        result
+    }
+}

@@ -1,0 +1,122 @@
+//! Where the drawing is on the screen.
+
+use super::super::paint::ToScreen;
+use chem::drawing::Drawing;
+use chem::geom::Point;
+use chem::ink::{Ink, Style};
+use egui::{Pos2, Rect, Vec2, pos2, vec2};
+
+/// Screen points for a bond on an empty sheet.
+const BOND: f32 = 56.0;
+/// Smallest and largest size of a bond on the screen, in screen points.
+const BONDS: (f32, f32) = (4.0, 400.0);
+/// Screen points in an inch, for the size that is shown in percent.
+const PER_INCH: f32 = 96.0;
+
+/// A place in the drawing at the middle of the sheet, and a scale.
+#[derive(Clone, Copy, Debug)]
+pub(in super::super) struct View {
+    center: Point,
+    /// Screen points for a unit of the drawing.
+    scale: f32,
+    /// The sheet on the screen.
+    rect: Rect,
+}
+
+impl View {
+    pub(in super::super) fn new() -> View {
+        View {
+            center: Point::ORIGIN,
+            scale: BOND,
+            rect: Rect::NOTHING,
+        }
+    }
+
+    /// The sheet is here now.
+    pub(super) fn place(&mut self, rect: Rect) {
+        self.rect = rect;
+    }
+
+    pub(super) fn rect(&self) -> Rect {
+        self.rect
+    }
+
+    /// Shows the whole figure, at most at the size that suits a single bond.
+    pub(super) fn fit(&mut self, drawing: &Drawing) {
+        let bounds = drawing.bounds();
+        let bond = drawing.bond_length();
+        self.center = bounds.center();
+        let wide = (bounds.width() + 3.0 * bond) as f32;
+        let high = (bounds.height() + 3.4 * bond) as f32;
+        let fits = (self.rect.width() / wide).min(self.rect.height() / high);
+        let most = 1.3 * BOND / bond as f32;
+        self.scale = fits.min(most).max(BONDS.0 / bond as f32);
+    }
+
+    pub(in super::super) fn to_screen(self, p: Point) -> Pos2 {
+        let v = p - self.center;
+        self.rect.center() + self.scale * vec2(v.x as f32, -v.y as f32)
+    }
+
+    pub(super) fn to_drawing(self, p: Pos2) -> Point {
+        let v = (p - self.rect.center()) / self.scale;
+        Point::new(
+            self.center.x + f64::from(v.x),
+            self.center.y - f64::from(v.y),
+        )
+    }
+
+    /// Screen points for a unit of the drawing.
+    pub(super) fn scale(&self) -> f32 {
+        self.scale
+    }
+
+    pub(super) fn pan(&mut self, by: Vec2) {
+        let v = by / self.scale;
+        self.center.x -= f64::from(v.x);
+        self.center.y += f64::from(v.y);
+    }
+
+    /// Enlarges by `factor`; what is at `fixed` stays there.
+    pub(super) fn zoom(&mut self, factor: f32, fixed: Pos2, bond: f64) {
+        let bond = bond as f32;
+        let before = self.to_drawing(fixed);
+        self.scale = (self.scale * factor).clamp(BONDS.0 / bond, BONDS.1 / bond);
+        let after = self.to_drawing(fixed);
+        self.center += before - after;
+    }
+
+    /// For ink, whose origin is that of the drawing.
+    pub(super) fn of_ink(&self, ink: &Ink) -> ToScreen {
+        ToScreen {
+            origin: self.to_screen(Point::ORIGIN),
+            scale: self.scale / ink.points_per_unit as f32,
+        }
+    }
+
+    /// The page of a figure on the screen: its ink and the margin of its style.
+    pub(super) fn page(&self, ink: &Ink, style: &Style) -> Rect {
+        let to = self.of_ink(ink);
+        let b = ink.bounds.inflate(style.page_margin, style.page_margin);
+        Rect::from_min_max(
+            to.origin + to.scale * vec2(b.x0 as f32, b.y0 as f32),
+            to.origin + to.scale * vec2(b.x1 as f32, b.y1 as f32),
+        )
+    }
+
+    /// Size on screen in percent of the printed size.
+    pub(in super::super) fn percent(&self, points_per_unit: f64) -> f32 {
+        100.0 * self.scale * 72.0 / (PER_INCH * points_per_unit as f32)
+    }
+}
+
+/// A place beside a rectangle where another fits inside the sheet.
+pub(in super::super) fn beside(sheet: Rect, around: Rect, size: Vec2) -> Pos2 {
+    let gap = 20.0;
+    let y = (around.max.y + gap).min(sheet.max.y - size.y - gap);
+    let x = around.center().x - size.x / 2.0;
+    pos2(
+        x.clamp(sheet.min.x + gap, (sheet.max.x - size.x - gap).max(sheet.min.x + gap)),
+        y.max(sheet.min.y + gap),
+    )
+}

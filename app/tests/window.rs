@@ -1,0 +1,326 @@
+//! The window, driven by role and label as a person would.
+
+use chem::drawing::{End, Mark};
+use chem::molecule::{AtomIx, BondIx, Order};
+use egui::accesskit::Role;
+use egui::{Key, Modifiers, Pos2, vec2};
+use egui_kittest::Harness;
+use egui_kittest::kittest::Queryable;
+use wedgewright::session::Session;
+use wedgewright::window::Window;
+
+type Driven<'a> = Harness<'a, Window>;
+
+fn drive<'a>(window: Window) -> Driven<'a> {
+    let mut h = Harness::builder()
+        .with_size(vec2(1280.0, 800.0))
+        .build_ui_state(|ui, w: &mut Window| w.show(ui), window.with_typed_paths());
+    h.run_steps(3);
+    h
+}
+
+fn empty<'a>() -> Driven<'a> {
+    drive(Window::new(Session::empty()))
+}
+
+fn sheet(h: &Driven<'_>) -> Pos2 {
+    h.get_by_role_and_label(Role::Canvas, "Sheet").rect().center()
+}
+
+fn drag(h: &mut Driven<'_>, from: Pos2, to: Pos2) {
+    h.hover_at(from);
+    h.run_steps(1);
+    h.drag_at(from);
+    h.run_steps(1);
+    h.hover_at(from + 0.5 * (to - from));
+    h.run_steps(1);
+    h.hover_at(to);
+    h.run_steps(1);
+    h.drop_at(to);
+    h.run_steps(2);
+}
+
+fn click(h: &mut Driven<'_>, at: Pos2) {
+    h.hover_at(at);
+    h.run_steps(1);
+    h.drag_at(at);
+    h.drop_at(at);
+    // a second press within the time of a double click would be one
+    h.run_steps(30);
+}
+
+fn at(h: &Driven<'_>, atom: usize) -> Pos2 {
+    h.state().screen_of(AtomIx::new(atom)).unwrap()
+}
+
+fn between(h: &Driven<'_>, a: usize, b: usize) -> Pos2 {
+    at(h, a) + 0.5 * (at(h, b) - at(h, a))
+}
+
+fn press(h: &mut Driven<'_>, key: Key) {
+    h.key_press(key);
+    h.run_steps(2);
+}
+
+fn type_on_sheet(h: &mut Driven<'_>, text: &str) {
+    h.event(egui::Event::Text(text.to_owned()));
+    h.run_steps(3);
+}
+
+fn type_line(h: &mut Driven<'_>, text: &str) {
+    let line = h.get_by_label("must carry");
+    line.focus();
+    h.run_steps(1);
+    for letter in text.chars() {
+        h.get_by_label("must carry").type_text(&letter.to_string());
+        h.run_steps(2);
+    }
+    settled(h);
+}
+
+/// Waits for the search, which runs beside the window.
+fn settled(h: &mut Driven<'_>) {
+    for _ in 0..600 {
+        h.run_steps(1);
+        if !h.state().session().is_searching() {
+            return;
+        }
+        std::thread::sleep(std::time::Duration::from_millis(10));
+    }
+    panic!("the search does not end");
+}
+
+/// Alanine, drawn with the pen: atom 2 is the centre.
+fn alanine<'a>() -> Driven<'a> {
+    let mut h = empty();
+    let c = sheet(&h);
+    drag(&mut h, c, c + vec2(60.0, 34.0));
+    let from = at(&h, 1);
+    drag(&mut h, from, from + vec2(60.0, -34.0));
+    let from = at(&h, 1);
+    drag(&mut h, from, from + vec2(0.0, 70.0));
+    let from = at(&h, 2);
+    drag(&mut h, from, from + vec2(0.0, -70.0));
+    let from = at(&h, 2);
+    drag(&mut h, from, from + vec2(60.0, 34.0));
+    assert_eq!(h.state().session().drawing().molecule().n_bonds(), 5);
+    let from = at(&h, 2);
+    let to = at(&h, 4);
+    drag(&mut h, from, to);
+    for (atom, element) in [(0, "N"), (4, "O"), (5, "O")] {
+        let place = at(&h, atom);
+        click(&mut h, place);
+        type_on_sheet(&mut h, element);
+        press(&mut h, Key::Enter);
+    }
+    press(&mut h, Key::Escape);
+    h
+}
+
+fn mark(h: &Driven<'_>, bond: usize) -> Mark {
+    h.state().session().drawing().mark(BondIx::new(bond))
+}
+
+fn marks(h: &Driven<'_>) -> usize {
+    let drawing = h.state().session().drawing();
+    drawing.marks().iter().filter(|m| **m != Mark::Plain).count()
+}
+
+#[test]
+fn a_skeleton_is_drawn_and_grafted_by_hand() {
+    let h = alanine();
+    let m = h.state().session().drawing().molecule().clone();
+    let parts = m.formula();
+    assert_eq!(parts, [("C", 3), ("H", 7), ("N", 1), ("O", 2)]);
+    assert_eq!(m.bond(BondIx::new(3)).order, Order::Double);
+    h.get_by_label("C₃H₇NO₂");
+}
+
+#[test]
+fn the_pen_closes_a_ring_and_snaps() {
+    let mut h = empty();
+    let c = sheet(&h);
+    drag(&mut h, c, c + vec2(70.0, 5.0));
+    for i in 1..5_usize {
+        let from = at(&h, i);
+        let angle = std::f32::consts::FRAC_PI_3 * i as f32 + 0.05;
+        drag(&mut h, from, from + 60.0 * vec2(angle.cos(), -angle.sin()));
+    }
+    let (from, to) = (at(&h, 5), at(&h, 0));
+    drag(&mut h, from, to);
+    let m = h.state().session().drawing().molecule();
+    assert_eq!((m.n_atoms(), m.n_bonds()), (6, 6));
+}
+
+#[test]
+fn a_line_sets_the_marks_and_undo_takes_them_back() {
+    let mut h = alanine();
+    type_line(&mut h, "(2S)");
+    assert!(marks(&h) > 0);
+    h.get_by_label("carries (2S)");
+    h.get_by_label("agrees");
+    h.get_by_label("Place 2: must carry S, carries S, agrees");
+    press(&mut h, Key::Enter);
+    assert_eq!(h.state().session().undo_name(), Some("Carry (2S)"));
+    h.key_press_modifiers(Modifiers::COMMAND, Key::Z);
+    h.run_steps(2);
+    assert_eq!(marks(&h), 0);
+    assert_eq!(h.state().session().line(), "");
+    h.key_press_modifiers(Modifiers::COMMAND | Modifiers::SHIFT, Key::Z);
+    h.run_steps(2);
+    h.get_by_label("carries (2S)");
+}
+
+#[test]
+fn a_refused_line_says_why_and_changes_nothing() {
+    let mut h = alanine();
+    let before = h.state().session().drawing().clone();
+    type_line(&mut h, "(2S,3R)");
+    let session = h.state().session();
+    let why = match (session.requirement(), session.refusal()) {
+        (Err(error), _) => error.text.clone(),
+        (_, Some(refusal)) => refusal.text.clone(),
+        _ => panic!("3R was taken"),
+    };
+    h.get_by_label(&why);
+    press(&mut h, Key::Enter);
+    let after = h.state().session().drawing();
+    assert_eq!(before.marks(), after.marks());
+    assert_eq!(before.points(), after.points());
+}
+
+#[test]
+fn arrows_raise_lower_and_swap() {
+    let mut h = alanine();
+    let place = between(&h, 1, 3);
+    click(&mut h, place);
+    press(&mut h, Key::ArrowUp);
+    assert_eq!(mark(&h, 2), Mark::Solid(End::First));
+    press(&mut h, Key::ArrowLeft);
+    assert_eq!(mark(&h, 2), Mark::Solid(End::Second));
+    press(&mut h, Key::ArrowRight);
+    press(&mut h, Key::ArrowDown);
+    assert_eq!(mark(&h, 2), Mark::Hashed(End::First));
+    press(&mut h, Key::ArrowDown);
+    assert_eq!(mark(&h, 2), Mark::Plain);
+}
+
+#[test]
+fn delete_removes_and_a_place_selects() {
+    let mut h = alanine();
+    let place = h.get_by_label_contains("Place 2: nothing asked");
+    place.click();
+    h.run_steps(3);
+    let chosen = h.state().session().selection().only_atom();
+    assert_eq!(chosen, Some(AtomIx::new(1)));
+    let place = at(&h, 3);
+    click(&mut h, place);
+    press(&mut h, Key::Delete);
+    assert_eq!(h.state().session().drawing().molecule().n_atoms(), 5);
+    assert_eq!(h.state().session().undo_name(), Some("Delete"));
+}
+
+#[test]
+fn the_keyboard_alone_draws() {
+    let mut h = empty();
+    for word in ["C", "-", "-", "N"] {
+        type_on_sheet(&mut h, word);
+        press(&mut h, Key::Enter);
+    }
+    let formula = h.state().session().drawing().molecule().formula();
+    assert_eq!(formula, [("C", 2), ("H", 7), ("N", 1)]);
+}
+
+#[test]
+fn a_graft_that_cannot_be_says_why_in_place() {
+    let mut h = alanine();
+    let place = at(&h, 3);
+    click(&mut h, place);
+    type_on_sheet(&mut h, "Qq");
+    h.get_by_label("Qq is no element");
+    let before = h.state().session().revision();
+    press(&mut h, Key::Enter);
+    h.get_by_label("Qq is no element");
+    press(&mut h, Key::Escape);
+    assert_eq!(h.state().session().revision(), before);
+    assert!(h.query_by_label("Qq is no element").is_none());
+}
+
+#[test]
+fn what_is_saved_by_a_typed_path_opens_again() {
+    let folder = std::env::temp_dir().join(format!("wedgewright-window-{}", std::process::id()));
+    std::fs::create_dir_all(&folder).unwrap();
+    let path = folder.join("kept.mol");
+    let mut h = alanine();
+    type_line(&mut h, "(2R)");
+    h.key_press_modifiers(Modifiers::COMMAND, Key::S);
+    h.run_steps(3);
+    let field = h.get_by_label("file path");
+    field.focus();
+    h.run_steps(1);
+    h.key_press_modifiers(Modifiers::COMMAND, Key::A);
+    h.run_steps(1);
+    h.get_by_label("file path").type_text(&path.to_string_lossy());
+    h.run_steps(1);
+    press(&mut h, Key::Enter);
+    assert_eq!(h.state().session().path(), Some(path.as_path()));
+    let again = drive(Window::new(Session::open(&path).unwrap()));
+    again.get_by_label("carries (2R)");
+    assert!(!again.state().session().is_dirty());
+    std::fs::remove_dir_all(&folder).unwrap();
+}
+
+#[test]
+fn unsaved_work_is_asked_about() {
+    let mut h = alanine();
+    h.key_press_modifiers(Modifiers::COMMAND, Key::N);
+    h.run_steps(3);
+    h.get_by_label("Cancel").click();
+    h.run_steps(3);
+    assert!(h.state().session().is_dirty());
+    h.key_press_modifiers(Modifiers::COMMAND, Key::N);
+    h.run_steps(3);
+    h.get_by_label("Leave without saving").click();
+    h.run_steps(3);
+    assert_eq!(h.state().session().drawing().molecule().n_atoms(), 0);
+}
+
+#[test]
+fn a_file_that_cannot_be_opened_is_told() {
+    let mut h = empty();
+    h.key_press_modifiers(Modifiers::COMMAND, Key::O);
+    h.run_steps(3);
+    h.get_by_label("file path").type_text("no such file.mol");
+    h.run_steps(1);
+    press(&mut h, Key::Enter);
+    h.get_by_label_contains("no such file.mol cannot be read");
+}
+
+#[test]
+fn the_first_drawing_is_workable_at_once() {
+    let mut h = drive(Window::demo());
+    assert!(h.state().session().requirement().is_ok());
+    h.get_by_label("Make it carry").click();
+    h.run_steps(2);
+    settled(&mut h);
+    assert_eq!(h.state().session().report().descriptor_line(), h.state().session().line());
+    assert!(h.query_by_label("Make it carry").is_none());
+}
+
+/// The harness fails on any sign that the faces lack, so showing everything is the test.
+#[test]
+fn every_sign_has_a_glyph_and_every_menu_opens() {
+    let mut h = drive(Window::demo());
+    for menu in ["File", "Edit", "Stereo", "View"] {
+        h.get_by_label(menu).click();
+        h.run_steps(4);
+        press(&mut h, Key::Escape);
+        h.run_steps(3);
+    }
+    let places = h.state().session().report().places.clone();
+    for place in places {
+        let locant = place.atoms.iter().min().unwrap().index() + 1;
+        h.get_by_label_contains(&format!("Place {locant}:")).click();
+        h.run_steps(3);
+    }
+}

@@ -131,7 +131,8 @@ fn figure(record: &Record, style: &Style, form: Form, args: &Figure) -> Result<V
         creator: concat!("Wedgewright ", env!("CARGO_PKG_VERSION")).to_owned(),
         ..Facts::default()
     };
-    let sheet = Sheet::fit(&ink, style.page_margin, args.width, &facts).map_err(|e| e.to_string())?;
+    let sheet =
+        Sheet::fit(&ink, style.page_margin, args.width, &facts).map_err(|e| e.to_string())?;
     match form {
         Form::Svg => Ok(svg::write(&sheet, TextAs::Outlines).into_bytes()),
         Form::Pdf => pdf::write(&sheet).map_err(|e| e.to_string()),

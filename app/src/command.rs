@@ -298,9 +298,7 @@ impl Command {
             }
             Command::Deselect | Command::Delete => !session.selection().is_empty(),
             Command::Raise | Command::Lower => bond().is_some(),
-            Command::Swap => {
-                bond().is_some_and(|b| session.drawing().mark(b).narrow().is_some())
-            }
+            Command::Swap => bond().is_some_and(|b| session.drawing().mark(b).narrow().is_some()),
             Command::ClearMarks => session.drawing().marks().iter().any(|m| *m != Mark::Plain),
             Command::MakeItCarry => session.can_carry(),
             _ => true,
@@ -387,7 +385,9 @@ fn removal(session: &Session) -> Vec<Edit> {
         }
     }
     let bonds = selection.bonds.iter().map(|b| Edit::RemoveBond(*b));
-    bonds.chain(atoms.into_iter().map(Edit::RemoveAtom)).collect()
+    bonds
+        .chain(atoms.into_iter().map(Edit::RemoveAtom))
+        .collect()
 }
 
 /// The selected bond, if it is one single bond that can bear a wedge.

@@ -27,7 +27,11 @@ pub(super) fn menus(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
         ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
             let colors = Colors::of(ui);
             ui.add_space(2.0 * GRID);
-            ui.label(RichText::new(session.name()).size(TEXT - 1.0).color(colors.muted));
+            ui.label(
+                RichText::new(session.name())
+                    .size(TEXT - 1.0)
+                    .color(colors.muted),
+            );
         });
     });
 }
@@ -36,11 +40,15 @@ fn item(ui: &mut Ui, session: &Session, command: &Command, out: &mut Vec<Command
     let colors = Colors::of(ui);
     let mut button = Button::new(command.words(session).into_owned());
     if let Some(shortcut) = command.shortcut() {
-        let keys = RichText::new(keys(shortcut)).size(CAPTION + 1.0).color(colors.muted);
+        let keys = RichText::new(keys(shortcut))
+            .size(CAPTION + 1.0)
+            .color(colors.muted);
         button = button.shortcut_text(keys);
     }
     let enabled = command.enabled(session);
-    let response = ui.add_enabled(enabled, button).on_hover_text(command.help());
+    let response = ui
+        .add_enabled(enabled, button)
+        .on_hover_text(command.help());
     if response.clicked() {
         out.push(command.clone());
         ui.close();
@@ -49,12 +57,13 @@ fn item(ui: &mut Ui, session: &Session, command: &Command, out: &mut Vec<Command
 
 fn gap(ui: &mut Ui) {
     let colors = Colors::of(ui);
-    let (rect, _) = ui.allocate_exact_size(
-        egui::vec2(ui.available_width(), GRID),
-        egui::Sense::hover(),
+    let (rect, _) =
+        ui.allocate_exact_size(egui::vec2(ui.available_width(), GRID), egui::Sense::hover());
+    ui.painter().hline(
+        rect.x_range(),
+        rect.center().y,
+        Stroke::new(1.0, colors.hairline),
     );
-    ui.painter()
-        .hline(rect.x_range(), rect.center().y, Stroke::new(1.0, colors.hairline));
 }
 
 /// Keys in words, as they stand on the keyboard.
@@ -139,7 +148,9 @@ pub(super) fn notice(ui: &mut Ui, verdict: Verdict, text: &str) -> bool {
         let close = ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
             let close = ui.button("Dismiss").clicked();
             ui.with_layout(Layout::left_to_right(Align::Center), |ui| {
-                let text = RichText::new(text).size(TEXT).color(colors.verdict(verdict));
+                let text = RichText::new(text)
+                    .size(TEXT)
+                    .color(colors.verdict(verdict));
                 ui.add(egui::Label::new(text).wrap());
             });
             close

@@ -40,11 +40,7 @@ impl Purpose {
         match self {
             Purpose::Open => &[("Molfile or SDF", &["mol", "sdf", "sd", "mdl"])],
             Purpose::Save => &[("Molfile", &["mol"]), ("SDF", &["sdf"])],
-            Purpose::Figure => &[
-                ("SVG", &["svg"]),
-                ("PDF", &["pdf"]),
-                ("PNG", &["png"]),
-            ],
+            Purpose::Figure => &[("SVG", &["svg"]), ("PDF", &["pdf"]), ("PNG", &["png"])],
         }
     }
 }

@@ -114,8 +114,20 @@ impl Window {
             Some(path) if purpose != Purpose::Figure => path.to_owned(),
             Some(path) => path.with_extension(ending),
             None => {
-                let safe = |c: char| if c.is_alphanumeric() || "-_.".contains(c) { c } else { '-' };
-                let name: String = self.session.name().to_lowercase().chars().map(safe).collect();
+                let safe = |c: char| {
+                    if c.is_alphanumeric() || "-_.".contains(c) {
+                        c
+                    } else {
+                        '-'
+                    }
+                };
+                let name: String = self
+                    .session
+                    .name()
+                    .to_lowercase()
+                    .chars()
+                    .map(safe)
+                    .collect();
                 PathBuf::from(format!("{name}.{ending}"))
             }
         }

@@ -263,7 +263,10 @@ impl Window {
         }
         let starts = self.session.drawing().molecule().n_atoms() == 0;
         let may = !self.session.selection().is_empty() || starts;
-        if on_sheet && may && !busy && out.is_empty()
+        if on_sheet
+            && may
+            && !busy
+            && out.is_empty()
             && let Some(text) = graft::typed(ui)
         {
             self.graft = Some(Entry::open(text));

@@ -9,8 +9,8 @@ use chem::cip::Rule;
 use chem::pipeline::{Place, Verdict};
 use chem::stereo::{Kind, Ligand};
 use egui::{
-    Align2, CornerRadius, Key, Painter, Pos2, Rect, RichText, Role, ScrollArea, Sense, Stroke, StrokeKind,
-    Ui, WidgetInfo, pos2, vec2,
+    Align2, CornerRadius, Key, Painter, Pos2, Rect, RichText, Role, ScrollArea, Sense, Stroke,
+    StrokeKind, Ui, WidgetInfo, pos2, vec2,
 };
 
 /// Height of a row.
@@ -93,8 +93,11 @@ fn heading(ui: &mut Ui, text: &str) {
 fn hairline(ui: &mut Ui) {
     let colors = Colors::of(ui);
     let (rect, _) = ui.allocate_exact_size(vec2(ui.available_width(), 1.0), Sense::hover());
-    ui.painter()
-        .hline(rect.x_range(), rect.center().y, Stroke::new(1.0, colors.hairline));
+    ui.painter().hline(
+        rect.x_range(),
+        rect.center().y,
+        Stroke::new(1.0, colors.hairline),
+    );
 }
 
 fn header(ui: &mut Ui) {
@@ -118,10 +121,9 @@ fn letter(d: Option<chem::stereo::Descriptor>) -> String {
 
 /// What a screen reader says of a row.
 fn spoken(place: &Place) -> String {
-    let asked = place.must.map_or_else(
-        || "nothing asked".to_owned(),
-        |d| format!("must carry {d}"),
-    );
+    let asked = place
+        .must
+        .map_or_else(|| "nothing asked".to_owned(), |d| format!("must carry {d}"));
     let carried = place
         .carries
         .map_or_else(|| "carries nothing".to_owned(), |d| format!("carries {d}"));
@@ -175,12 +177,22 @@ fn cells(painter: &Painter, rect: Rect, place: &Place, colors: &Colors) {
     } else {
         colors.muted
     };
-    write(pos2(x1, y), letter(place.must), theme::italic(TEXT + 1.0), asked);
+    write(
+        pos2(x1, y),
+        letter(place.must),
+        theme::italic(TEXT + 1.0),
+        asked,
+    );
     let carried = match place.verdict {
         Verdict::Agrees => colors.ink,
         _ => color,
     };
-    write(pos2(x2, y), letter(place.carries), theme::italic(TEXT + 1.0), carried);
+    write(
+        pos2(x2, y),
+        letter(place.carries),
+        theme::italic(TEXT + 1.0),
+        carried,
+    );
     signs::paint(painter, pos2(x3 + 6.0, y), 6.0, place.verdict, colors);
     let words = place.verdict.name().to_owned();
     write(pos2(x3 + 22.0, y), words, theme::upright(TEXT - 0.5), color);
@@ -228,14 +240,22 @@ fn why(ui: &mut Ui, session: &Session, place: &Place) {
     for (i, ligand) in place.ranking.iter().enumerate() {
         if split && i % 2 == 0 {
             let end = place.atoms.get(i / 2).map_or(0, |a| a.index() + 1);
-            ui.label(RichText::new(format!("at {end}")).small().color(colors.muted));
+            ui.label(
+                RichText::new(format!("at {end}"))
+                    .small()
+                    .color(colors.muted),
+            );
         }
         let name = ["a", "b", "c", "d"][if split { i % 2 } else { i.min(3) }];
         ligand_row(ui, session, name, *ligand, &colors);
     }
     if let Some(rule) = place.rule {
         ui.add_space(GRID / 2.0);
-        let text = format!("The last tie broke by Rule {}: {}", rule.name(), meaning(rule));
+        let text = format!(
+            "The last tie broke by Rule {}: {}",
+            rule.name(),
+            meaning(rule)
+        );
         ui.add(egui::Label::new(RichText::new(text).size(TEXT - 1.0).color(colors.muted)).wrap());
     }
     if !place.note.is_empty() {
@@ -260,7 +280,11 @@ fn ligand_row(ui: &mut Ui, session: &Session, name: &str, ligand: Ligand, colors
         ui.label(RichText::new(text).size(TEXT));
         if !number.is_empty() {
             ui.add_space(GRID);
-            ui.label(RichText::new(number).size(CAPTION + 1.0).color(colors.muted));
+            ui.label(
+                RichText::new(number)
+                    .size(CAPTION + 1.0)
+                    .color(colors.muted),
+            );
         }
     });
 }

@@ -60,7 +60,10 @@ pub(super) fn keep(ui: &Ui, name: &str) -> Option<Keep> {
         .frame(frame(ui))
         .show(ui.ctx(), |ui| {
             ui.set_width(380.0);
-            ui.label(RichText::new(format!("{name} has changes that are not saved")).font(theme::bold(TEXT + 1.0)));
+            ui.label(
+                RichText::new(format!("{name} has changes that are not saved"))
+                    .font(theme::bold(TEXT + 1.0)),
+            );
             ui.add_space(2.0 * GRID);
             ui.horizontal(|ui| {
                 let save = filled(ui, "Save");
@@ -115,38 +118,40 @@ impl PathField {
     pub(super) fn show(&mut self, ctx: &Context, ui: &Ui) -> Typed {
         let colors = Colors::of(ui);
         let mut result = Typed::Open;
-        let modal = Modal::new(Id::unique("path")).frame(frame(ui)).show(ctx, |ui| {
-            ui.set_width(520.0);
-            ui.label(RichText::new(self.purpose.title()).font(theme::bold(TEXT + 1.0)));
-            if self.no_dialog {
-                let text = "This desktop offers no file dialog, so the path is typed here";
-                ui.label(RichText::new(text).small().color(colors.muted));
-            }
-            ui.add_space(GRID);
-            let label = ui.label(RichText::new("file path").small().color(colors.muted));
-            let field = ui
-                .add(
-                    TextEdit::singleline(&mut self.text)
-                        .desired_width(f32::INFINITY)
-                        .margin(Margin::symmetric(8, 6)),
-                )
-                .labelled_by(label.id);
-            if std::mem::take(&mut self.fresh) {
-                field.request_focus();
-            }
-            let entered = field.lost_focus() && ui.input(|i| i.key_pressed(Key::Enter));
-            ui.add_space(2.0 * GRID);
-            ui.horizontal(|ui| {
-                let go = filled(ui, self.purpose.verb()).clicked() || entered;
-                let path = self.text.trim();
-                if go && !path.is_empty() {
-                    result = Typed::Path(PathBuf::from(path));
+        let modal = Modal::new(Id::unique("path"))
+            .frame(frame(ui))
+            .show(ctx, |ui| {
+                ui.set_width(520.0);
+                ui.label(RichText::new(self.purpose.title()).font(theme::bold(TEXT + 1.0)));
+                if self.no_dialog {
+                    let text = "This desktop offers no file dialog, so the path is typed here";
+                    ui.label(RichText::new(text).small().color(colors.muted));
                 }
-                if quiet(ui, "Cancel").clicked() {
-                    result = Typed::Cancelled;
+                ui.add_space(GRID);
+                let label = ui.label(RichText::new("file path").small().color(colors.muted));
+                let field = ui
+                    .add(
+                        TextEdit::singleline(&mut self.text)
+                            .desired_width(f32::INFINITY)
+                            .margin(Margin::symmetric(8, 6)),
+                    )
+                    .labelled_by(label.id);
+                if std::mem::take(&mut self.fresh) {
+                    field.request_focus();
                 }
+                let entered = field.lost_focus() && ui.input(|i| i.key_pressed(Key::Enter));
+                ui.add_space(2.0 * GRID);
+                ui.horizontal(|ui| {
+                    let go = filled(ui, self.purpose.verb()).clicked() || entered;
+                    let path = self.text.trim();
+                    if go && !path.is_empty() {
+                        result = Typed::Path(PathBuf::from(path));
+                    }
+                    if quiet(ui, "Cancel").clicked() {
+                        result = Typed::Cancelled;
+                    }
+                });
             });
-        });
         if result == Typed::Open && modal.should_close() {
             result = Typed::Cancelled;
         }

@@ -4,8 +4,8 @@ use chem::ink::Tone;
 use chem::pipeline::Verdict;
 use egui::epaint::text::{FontInsert, FontPriority, InsertFontFamily};
 use egui::{
-    Color32, Context, CornerRadius, FontData, FontFamily, FontId, Margin, Shadow, Stroke, TextStyle,
-    Theme, Vec2, Visuals, vec2,
+    Color32, Context, CornerRadius, FontData, FontFamily, FontId, Margin, Shadow, Stroke,
+    TextStyle, Theme, Vec2, Visuals, vec2,
 };
 
 /// Colors of one appearance.

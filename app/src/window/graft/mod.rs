@@ -129,10 +129,16 @@ impl Entry {
             .show(ui);
         let says = match graft {
             Ok(graft) => RichText::new(&graft.says).color(colors.muted),
-            Err(error) => RichText::new(error).color(colors.verdict(chem::pipeline::Verdict::Opposite)),
+            Err(error) => {
+                RichText::new(error).color(colors.verdict(chem::pipeline::Verdict::Opposite))
+            }
         };
         ui.label(says.small());
-        let keys = ui.label(RichText::new("graft: Enter takes it, Esc drops it").small().color(colors.muted));
+        let keys = ui.label(
+            RichText::new("graft: Enter takes it, Esc drops it")
+                .small()
+                .color(colors.muted),
+        );
         let response = output.response.response.clone().labelled_by(keys.id);
         let was_fresh = std::mem::take(&mut self.fresh);
         if was_fresh {

@@ -13,7 +13,9 @@ use crate::session::{Selection, Session};
 use chem::drawing::Drawing;
 use chem::ink::{self, Caption, Ink, Part, STYLES, Style, Tone};
 use chem::pipeline::{Report, Verdict};
-use egui::{CornerRadius, EventFilter, Rect, Response, Role, Sense, Stroke, StrokeKind, Ui, WidgetInfo};
+use egui::{
+    CornerRadius, EventFilter, Rect, Response, Role, Sense, Stroke, StrokeKind, Ui, WidgetInfo,
+};
 use gesture::Gesture;
 
 /// The drawing composed, for one revision.
@@ -133,7 +135,11 @@ impl Sheet {
 
     fn compose(&mut self, session: &Session) {
         let revision = session.revision();
-        if self.composed.as_ref().is_some_and(|c| c.revision == revision) {
+        if self
+            .composed
+            .as_ref()
+            .is_some_and(|c| c.revision == revision)
+        {
             return;
         }
         let captions = captions(session.report());
@@ -191,7 +197,11 @@ impl Sheet {
                 Part::Bond(b) => same_bond(before, after, b),
                 Part::Caption(_) | Part::Note => true,
             };
-            Some(if same { theme::LIGHT.tone(tone) } else { accent })
+            Some(if same {
+                theme::LIGHT.tone(tone)
+            } else {
+                accent
+            })
         });
         painter.add(egui::Shape::mesh(mesh));
     }

@@ -1,7 +1,7 @@
 //! What lies over the drawing and is not printed: frame, selection, ghosts, ranking letters.
 
-use super::gesture::{self, Gesture};
 use super::Sheet;
+use super::gesture::{self, Gesture};
 use crate::session::Session;
 use crate::window::theme::{self, LIGHT};
 use chem::drawing::Drawing;

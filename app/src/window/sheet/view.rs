@@ -116,7 +116,10 @@ pub(in super::super) fn beside(sheet: Rect, around: Rect, size: Vec2) -> Pos2 {
     let y = (around.max.y + gap).min(sheet.max.y - size.y - gap);
     let x = around.center().x - size.x / 2.0;
     pos2(
-        x.clamp(sheet.min.x + gap, (sheet.max.x - size.x - gap).max(sheet.min.x + gap)),
+        x.clamp(
+            sheet.min.x + gap,
+            (sheet.max.x - size.x - gap).max(sheet.min.x + gap),
+        ),
         y.max(sheet.min.y + gap),
     )
 }

@@ -30,6 +30,14 @@ pub enum Command {
     SelectAll,
     /// Select nothing.
     Deselect,
+    /// Select the next atom by number.
+    NextAtom,
+    /// Select the one before.
+    PreviousAtom,
+    /// Select the next bond by number.
+    NextBond,
+    /// Select the one before.
+    PreviousBond,
     /// Remove what is selected.
     Delete,
     /// Raise the wide end of the selected bond.
@@ -121,6 +129,14 @@ const fn plain(key: &'static str) -> Option<Shortcut> {
     })
 }
 
+const fn shift(key: &'static str) -> Option<Shortcut> {
+    Some(Shortcut {
+        ctrl: false,
+        shift: true,
+        key,
+    })
+}
+
 const fn ctrl(key: &'static str) -> Option<Shortcut> {
     Some(Shortcut {
         ctrl: true,
@@ -160,6 +176,11 @@ pub const MENUS: [(&str, &[Option<Command>]); 4] = [
             None,
             Some(Command::SelectAll),
             Some(Command::Deselect),
+            Some(Command::NextAtom),
+            Some(Command::PreviousAtom),
+            Some(Command::NextBond),
+            Some(Command::PreviousBond),
+            None,
             Some(Command::Delete),
         ],
     ),
@@ -206,6 +227,10 @@ impl Command {
             Command::Redo => return named("Redo", session.redo_name()),
             Command::SelectAll => "Select all",
             Command::Deselect => "Select nothing",
+            Command::NextAtom => "Next atom",
+            Command::PreviousAtom => "Previous atom",
+            Command::NextBond => "Next bond",
+            Command::PreviousBond => "Previous bond",
             Command::Delete => "Delete",
             Command::Raise => "Raise the wide end",
             Command::Lower => "Lower the wide end",
@@ -239,6 +264,10 @@ impl Command {
             Command::Redo => ctrl_shift("Z"),
             Command::SelectAll => ctrl("A"),
             Command::Deselect => plain("Escape"),
+            Command::NextAtom => plain("PageDown"),
+            Command::PreviousAtom => plain("PageUp"),
+            Command::NextBond => shift("PageDown"),
+            Command::PreviousBond => shift("PageUp"),
             Command::Delete => plain("Delete"),
             Command::Raise => plain("Up"),
             Command::Lower => plain("Down"),
@@ -271,6 +300,8 @@ impl Command {
             Command::Redo => "Makes the step again",
             Command::SelectAll => "Selects every atom and bond",
             Command::Deselect => "Selects nothing",
+            Command::NextAtom | Command::PreviousAtom => "Steps through the atoms by number",
+            Command::NextBond | Command::PreviousBond => "Steps through the bonds by number",
             Command::Delete => "Removes what is selected",
             Command::Raise => "Solid wedge on the selected bond; again: plain",
             Command::Lower => "Hashed wedge on the selected bond; again: plain",
@@ -296,11 +327,11 @@ impl Command {
             Command::SelectAll | Command::Fit | Command::SaveFigure => {
                 session.drawing().molecule().n_atoms() > 0
             }
+            Command::NextAtom | Command::PreviousAtom => session.drawing().molecule().n_atoms() > 0,
+            Command::NextBond | Command::PreviousBond => session.drawing().molecule().n_bonds() > 0,
             Command::Deselect | Command::Delete => !session.selection().is_empty(),
             Command::Raise | Command::Lower => bond().is_some(),
-            Command::Swap => {
-                bond().is_some_and(|b| session.drawing().mark(b).narrow().is_some())
-            }
+            Command::Swap => bond().is_some_and(|b| session.drawing().mark(b).narrow().is_some()),
             Command::ClearMarks => session.drawing().marks().iter().any(|m| *m != Mark::Plain),
             Command::MakeItCarry => session.can_carry(),
             _ => true,
@@ -329,6 +360,10 @@ impl Command {
                 done(session.select(all))
             }
             Command::Deselect => done(session.select(Selection::default())),
+            Command::NextAtom => walk_atoms(session, true),
+            Command::PreviousAtom => walk_atoms(session, false),
+            Command::NextBond => walk_bonds(session, true),
+            Command::PreviousBond => walk_bonds(session, false),
             Command::Select(selection) => done(session.select(selection)),
             Command::Ask(text) => done(session.ask(&text)),
             Command::Settle => done(session.settle()),
@@ -356,6 +391,35 @@ fn lower_first(words: &str) -> String {
         Some(first) => first.to_lowercase().chain(letters).collect(),
         None => String::new(),
     }
+}
+
+/// The number after or before `now` among `n`, round and round.
+fn walk(now: Option<usize>, n: usize, forward: bool) -> Option<usize> {
+    let last = n.checked_sub(1)?;
+    Some(match (now, forward) {
+        (None, true) => 0,
+        (None, false) => last,
+        (Some(i), true) => {
+            if i >= last {
+                0
+            } else {
+                i + 1
+            }
+        }
+        (Some(i), false) => i.checked_sub(1).unwrap_or(last),
+    })
+}
+
+fn walk_atoms(session: &mut Session, forward: bool) -> Effect {
+    let now = session.selection().atoms.first().map(|a| a.index());
+    let next = walk(now, session.drawing().molecule().n_atoms(), forward);
+    done(next.map_or((), |i| session.select(Selection::atom(AtomIx::new(i)))))
+}
+
+fn walk_bonds(session: &mut Session, forward: bool) -> Effect {
+    let now = session.selection().bonds.first().map(|b| b.index());
+    let next = walk(now, session.drawing().molecule().n_bonds(), forward);
+    done(next.map_or((), |i| session.select(Selection::bond(BondIx::new(i)))))
 }
 
 fn step(session: &mut Session, name: &str, edits: &[Edit]) -> Effect {
@@ -387,7 +451,9 @@ fn removal(session: &Session) -> Vec<Edit> {
         }
     }
     let bonds = selection.bonds.iter().map(|b| Edit::RemoveBond(*b));
-    bonds.chain(atoms.into_iter().map(Edit::RemoveAtom)).collect()
+    bonds
+        .chain(atoms.into_iter().map(Edit::RemoveAtom))
+        .collect()
 }
 
 /// The selected bond, if it is one single bond that can bear a wedge.

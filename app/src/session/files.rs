@@ -125,9 +125,7 @@ pub fn write(path: &Path, record: &Record) -> Result<(), FileError> {
         path: path.to_owned(),
         text,
     };
-    let options = WriteOptions {
-        date: Some(now()),
-    };
+    let options = WriteOptions { date: Some(now()) };
     let text = if is_sd(path) {
         sdf::write(record, &options)
     } else {

@@ -62,20 +62,26 @@ fn steps_have_names_and_can_be_taken_back() {
 fn a_faulty_step_changes_nothing() {
     let mut s = alanine("");
     let before = s.revision();
-    assert!(s.step("Remove", &[Edit::RemoveAtom(AtomIx::new(77))]).is_err());
+    assert!(
+        s.step("Remove", &[Edit::RemoveAtom(AtomIx::new(77))])
+            .is_err()
+    );
     assert_eq!(s.revision(), before);
 }
 
 #[test]
 fn locants_follow_their_atoms() {
     let mut s = alanine("(2S)");
-    s.step("Delete", &[Edit::RemoveAtom(AtomIx::new(0))]).unwrap();
+    s.step("Delete", &[Edit::RemoveAtom(AtomIx::new(0))])
+        .unwrap();
     assert_eq!(s.line(), "(1S)");
     s.undo();
     assert_eq!(s.line(), "(2S)");
-    s.step("Delete", &[Edit::RemoveAtom(AtomIx::new(2))]).unwrap();
+    s.step("Delete", &[Edit::RemoveAtom(AtomIx::new(2))])
+        .unwrap();
     assert_eq!(s.line(), "(2S)");
-    s.step("Delete", &[Edit::RemoveAtom(AtomIx::new(1))]).unwrap();
+    s.step("Delete", &[Edit::RemoveAtom(AtomIx::new(1))])
+        .unwrap();
     assert_eq!(s.line(), "");
 }
 
@@ -92,7 +98,12 @@ fn a_typed_line_is_one_step_and_its_marks_come_with_it() {
     assert_eq!(s.report().descriptor_line(), "(2S)");
     s.undo();
     assert_eq!((s.line(), s.undo_name()), ("", None));
-    assert!(s.drawing().marks().iter().all(|m| *m == chem::drawing::Mark::Plain));
+    assert!(
+        s.drawing()
+            .marks()
+            .iter()
+            .all(|m| *m == chem::drawing::Mark::Plain)
+    );
     s.redo();
     assert_eq!(s.report().descriptor_line(), "(2S)");
 }

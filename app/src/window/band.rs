@@ -8,8 +8,8 @@ use chem::pipeline::{Place, Verdict};
 use chem::solve::require::RequirementError;
 use egui::text::{LayoutJob, TextFormat};
 use egui::{
-    Align, Button, Color32, Frame, Id, Key, Layout, Response, RichText, Stroke, TextBuffer, TextEdit,
-    Ui, vec2,
+    Align, Button, Color32, Frame, Id, Key, Layout, Response, RichText, Stroke, TextBuffer,
+    TextEdit, Ui, vec2,
 };
 
 /// The line and its caret.
@@ -21,7 +21,12 @@ pub(super) struct Band {
 }
 
 /// Descriptors italic, all else upright; `bad` is the byte range to underline.
-fn set(text: &str, size: f32, color: Color32, bad: Option<(std::ops::Range<usize>, Color32)>) -> LayoutJob {
+fn set(
+    text: &str,
+    size: f32,
+    color: Color32,
+    bad: Option<(std::ops::Range<usize>, Color32)>,
+) -> LayoutJob {
     let mut job = LayoutJob::default();
     for (at, letter) in text.char_indices() {
         let font = if is_descriptor(text, at, letter) {
@@ -83,14 +88,10 @@ impl Band {
         ui.spacing_mut().item_spacing = vec2(4.0 * GRID, 0.0);
         ui.horizontal_top(|ui| {
             let wide = (ui.available_width() * 0.36).clamp(220.0, 520.0);
-            ui.allocate_ui_with_layout(
-                vec2(wide, 76.0),
-                Layout::top_down(Align::Min),
-                |ui| {
-                    ui.set_width(wide);
-                    self.must(ui, session, out);
-                },
-            );
+            ui.allocate_ui_with_layout(vec2(wide, 76.0), Layout::top_down(Align::Min), |ui| {
+                ui.set_width(wide);
+                self.must(ui, session, out);
+            });
             ui.vertical(|ui| {
                 carries(ui, session);
             });
@@ -184,7 +185,11 @@ fn carries(ui: &mut Ui, session: &Session) {
     } else {
         carried_job(&session.report().places, &colors)
     };
-    let spoken = if line.is_empty() { "nothing".to_owned() } else { line };
+    let spoken = if line.is_empty() {
+        "nothing".to_owned()
+    } else {
+        line
+    };
     let response = ui.add(egui::Label::new(job).extend());
     response.widget_info(|| {
         egui::WidgetInfo::labeled(egui::Role::Label, true, format!("carries {spoken}"))
@@ -206,7 +211,11 @@ fn carried_job(places: &[Place], colors: &Colors) -> LayoutJob {
             other => colors.verdict(other),
         };
         let locant = super::sheet::locant(place);
-        job.append(&locant, 0.0, TextFormat::simple(theme::upright(LINE), color));
+        job.append(
+            &locant,
+            0.0,
+            TextFormat::simple(theme::upright(LINE), color),
+        );
         let letter = carried.letter().to_string();
         job.append(&letter, 0.0, TextFormat::simple(theme::italic(LINE), color));
         lead = ",";
@@ -219,7 +228,11 @@ fn carried_job(places: &[Place], colors: &Colors) -> LayoutJob {
 pub(super) fn words(tally: &Tally) -> String {
     let mut words = Vec::new();
     if tally.contradiction > 0 {
-        words.push(count(tally.contradiction, "contradiction", "contradictions"));
+        words.push(count(
+            tally.contradiction,
+            "contradiction",
+            "contradictions",
+        ));
     }
     if tally.opposite > 0 {
         words.push(format!("{} opposite", tally.opposite));
@@ -244,22 +257,33 @@ fn count(n: usize, one: &str, many: &str) -> String {
 fn verdict(ui: &mut Ui, session: &Session) {
     let colors = Colors::of(ui);
     let tally = session.tally();
-    let verdict = tally.verdict();
+    let understood = session.requirement().is_ok();
+    let verdict = if understood {
+        tally.verdict()
+    } else {
+        Verdict::NotAsked
+    };
     ui.horizontal(|ui| {
         ui.spacing_mut().item_spacing.x = GRID;
         ui.set_min_height(36.0);
         signs::show(ui, verdict);
         let text = if session.is_searching() {
             "seeking marks …".to_owned()
+        } else if !understood {
+            "not understood yet".to_owned()
         } else {
             words(&tally)
         };
-        ui.label(RichText::new(text).size(TEXT + 1.0).color(colors.verdict(verdict)));
+        ui.label(
+            RichText::new(text)
+                .size(TEXT + 1.0)
+                .color(colors.verdict(verdict)),
+        );
     });
 }
 
 fn make(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
-    if !session.can_carry() || session.is_searching() {
+    if !session.can_carry() || session.is_searching() || session.refusal().is_some() {
         return;
     }
     let colors = Colors::of(ui);
@@ -277,18 +301,23 @@ fn make(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
 /// What is wrong with the line, or why nothing can carry it, beneath.
 fn says(ui: &mut Ui, session: &Session) {
     let colors = Colors::of(ui);
-    let (verdict, text) = if let Err(error) = session.requirement() {
-        (Verdict::Opposite, error.text.clone())
-    } else if let Some(refusal) = session.refusal() {
-        (Verdict::Contradiction, refusal.text.clone())
-    } else {
-        return;
+    let said = match (session.requirement(), session.refusal()) {
+        (Err(error), _) => Some((Verdict::Opposite, error.text.clone())),
+        (Ok(_), Some(refusal)) => Some((Verdict::Contradiction, refusal.text.clone())),
+        (Ok(_), None) => None,
     };
-    ui.add_space(GRID / 2.0);
+    ui.add_space(2.0);
     ui.horizontal(|ui| {
         ui.spacing_mut().item_spacing.x = GRID;
+        // the room is kept, so that nothing moves while a line is typed
+        ui.set_min_height(24.0);
+        let Some((verdict, text)) = said else {
+            return;
+        };
         signs::show(ui, verdict);
-        let text = RichText::new(text).size(TEXT).color(colors.verdict(verdict));
+        let text = RichText::new(text)
+            .size(TEXT)
+            .color(colors.verdict(verdict));
         ui.add(egui::Label::new(text).wrap());
     });
 }

@@ -177,14 +177,14 @@ impl Window {
         let colors = Colors::of(ui);
         let desk = |margin| Frame::new().fill(colors.desk).inner_margin(margin);
         Panel::top("menus")
-            .frame(desk(Margin::symmetric(8, 2)))
+            .frame(desk(Margin::symmetric(22, 2)))
             .show(ui, |ui| bars::menus(ui, &self.session, out));
         Panel::top("band")
             .frame(desk(Margin {
                 left: 24,
                 right: 24,
                 top: 10,
-                bottom: 12,
+                bottom: 4,
             }))
             .show(ui, |ui| self.band.show(ui, &self.session, out));
         Panel::bottom("status")
@@ -210,7 +210,7 @@ impl Window {
         CentralPanel::default_margins()
             .frame(desk(Margin {
                 left: 24,
-                right: if self.show_places { 0 } else { 24 },
+                right: if self.show_places { 2 } else { 24 },
                 top: 2 * GRID as i8,
                 bottom: 2 * GRID as i8,
             }))
@@ -263,7 +263,10 @@ impl Window {
         }
         let starts = self.session.drawing().molecule().n_atoms() == 0;
         let may = !self.session.selection().is_empty() || starts;
-        if on_sheet && may && !busy && out.is_empty()
+        if on_sheet
+            && may
+            && !busy
+            && out.is_empty()
             && let Some(text) = graft::typed(ui)
         {
             self.graft = Some(Entry::open(text));

@@ -179,7 +179,11 @@ mod tests {
             })
             .sum();
         assert!((area - 24.0).abs() < 1e-3);
-        assert!(mesh.vertices.iter().all(|v| v.pos.x >= 10.0 && v.pos.y >= 10.0));
+        assert!(
+            mesh.vertices
+                .iter()
+                .all(|v| v.pos.x >= 10.0 && v.pos.y >= 10.0)
+        );
     }
 
     #[test]

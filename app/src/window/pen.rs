@@ -214,7 +214,13 @@ mod tests {
             d = d.apply(&s.edits).unwrap().0;
         }
         let last = AtomIx::new(5);
-        let s = stroke(&d, Start::Atom(last), d.point(last) + geom::unit(-1.1), None, false);
+        let s = stroke(
+            &d,
+            Start::Atom(last),
+            d.point(last) + geom::unit(-1.1),
+            None,
+            false,
+        );
         assert_eq!(s.name, "Join two atoms");
         d = d.apply(&s.edits).unwrap().0;
         assert_eq!((d.molecule().n_atoms(), d.molecule().n_bonds()), (6, 6));

@@ -2,15 +2,16 @@
 
 use super::sheet::locant;
 use super::signs;
-use super::theme::{self, CAPTION, Colors, GRID, TEXT};
+use super::theme::{self, CAPTION, Colors, GRID, TEXT, scripted};
 use crate::command::Command;
 use crate::session::{Selection, Session};
 use chem::cip::Rule;
 use chem::pipeline::{Place, Verdict};
 use chem::stereo::{Kind, Ligand};
+use egui::text::LayoutJob;
 use egui::{
-    Align2, CornerRadius, Key, Painter, Pos2, Rect, RichText, Role, ScrollArea, Sense, Stroke, StrokeKind,
-    Ui, WidgetInfo, pos2, vec2,
+    Align2, Color32, CornerRadius, Painter, Pos2, Rect, RichText, Role, ScrollArea, Sense, Stroke,
+    StrokeKind, Ui, WidgetInfo, pos2, vec2,
 };
 
 /// Height of a row.
@@ -93,8 +94,11 @@ fn heading(ui: &mut Ui, text: &str) {
 fn hairline(ui: &mut Ui) {
     let colors = Colors::of(ui);
     let (rect, _) = ui.allocate_exact_size(vec2(ui.available_width(), 1.0), Sense::hover());
-    ui.painter()
-        .hline(rect.x_range(), rect.center().y, Stroke::new(1.0, colors.hairline));
+    ui.painter().hline(
+        rect.x_range(),
+        rect.center().y,
+        Stroke::new(1.0, colors.hairline),
+    );
 }
 
 fn header(ui: &mut Ui) {
@@ -118,10 +122,9 @@ fn letter(d: Option<chem::stereo::Descriptor>) -> String {
 
 /// What a screen reader says of a row.
 fn spoken(place: &Place) -> String {
-    let asked = place.must.map_or_else(
-        || "nothing asked".to_owned(),
-        |d| format!("must carry {d}"),
-    );
+    let asked = place
+        .must
+        .map_or_else(|| "nothing asked".to_owned(), |d| format!("must carry {d}"));
     let carried = place
         .carries
         .map_or_else(|| "carries nothing".to_owned(), |d| format!("carries {d}"));
@@ -139,9 +142,6 @@ fn row(ui: &mut Ui, session: &Session, place: &Place, chosen: bool, out: &mut Ve
     response.widget_info(|| WidgetInfo::selected(Role::Button, true, chosen, spoken(place)));
     let response = response.on_hover_text(tip(place));
     if response.clicked() {
-        out.push(Command::Select(selection(session, place)));
-    }
-    if response.has_focus() && !chosen && ui.input(|i| i.key_pressed(Key::Space)) {
         out.push(Command::Select(selection(session, place)));
     }
     let painter = ui.painter();
@@ -175,12 +175,22 @@ fn cells(painter: &Painter, rect: Rect, place: &Place, colors: &Colors) {
     } else {
         colors.muted
     };
-    write(pos2(x1, y), letter(place.must), theme::italic(TEXT + 1.0), asked);
+    write(
+        pos2(x1, y),
+        letter(place.must),
+        theme::italic(TEXT + 1.0),
+        asked,
+    );
     let carried = match place.verdict {
         Verdict::Agrees => colors.ink,
         _ => color,
     };
-    write(pos2(x2, y), letter(place.carries), theme::italic(TEXT + 1.0), carried);
+    write(
+        pos2(x2, y),
+        letter(place.carries),
+        theme::italic(TEXT + 1.0),
+        carried,
+    );
     signs::paint(painter, pos2(x3 + 6.0, y), 6.0, place.verdict, colors);
     let words = place.verdict.name().to_owned();
     write(pos2(x3 + 22.0, y), words, theme::upright(TEXT - 0.5), color);
@@ -228,14 +238,22 @@ fn why(ui: &mut Ui, session: &Session, place: &Place) {
     for (i, ligand) in place.ranking.iter().enumerate() {
         if split && i % 2 == 0 {
             let end = place.atoms.get(i / 2).map_or(0, |a| a.index() + 1);
-            ui.label(RichText::new(format!("at {end}")).small().color(colors.muted));
+            ui.label(
+                RichText::new(format!("at {end}"))
+                    .small()
+                    .color(colors.muted),
+            );
         }
         let name = ["a", "b", "c", "d"][if split { i % 2 } else { i.min(3) }];
         ligand_row(ui, session, name, *ligand, &colors);
     }
     if let Some(rule) = place.rule {
         ui.add_space(GRID / 2.0);
-        let text = format!("The last tie broke by Rule {}: {}", rule.name(), meaning(rule));
+        let text = format!(
+            "The last tie broke by Rule {}: {}",
+            rule.name(),
+            meaning(rule)
+        );
         ui.add(egui::Label::new(RichText::new(text).size(TEXT - 1.0).color(colors.muted)).wrap());
     }
     if !place.note.is_empty() {
@@ -256,43 +274,43 @@ fn ligand_row(ui: &mut Ui, session: &Session, name: &str, ligand: Ligand, colors
             theme::italic(TEXT + 1.0),
             colors.accent,
         );
-        let (text, number) = describe(session, ligand);
-        ui.label(RichText::new(text).size(TEXT));
+        let (text, number) = describe(session, ligand, colors.ink);
+        ui.label(text);
         if !number.is_empty() {
             ui.add_space(GRID);
-            ui.label(RichText::new(number).size(CAPTION + 1.0).color(colors.muted));
+            ui.label(
+                RichText::new(number)
+                    .size(CAPTION + 1.0)
+                    .color(colors.muted),
+            );
         }
     });
 }
 
 /// A ligand in words, and its atom's number.
-fn describe(session: &Session, ligand: Ligand) -> (String, String) {
+fn describe(session: &Session, ligand: Ligand, color: Color32) -> (LayoutJob, String) {
     let m = session.drawing().molecule();
-    match ligand {
-        Ligand::Hydrogen => ("H".to_owned(), "not drawn".to_owned()),
-        Ligand::LonePair => ("lone pair".to_owned(), String::new()),
-        Ligand::Atom(a) if a.index() >= m.n_atoms() => (String::new(), String::new()),
+    let mut job = LayoutJob::default();
+    let number = match ligand {
+        Ligand::Hydrogen => {
+            scripted(&mut job, "H", 1, TEXT, color);
+            "not drawn".to_owned()
+        }
+        Ligand::LonePair => {
+            scripted(&mut job, "lone pair", 1, TEXT, color);
+            String::new()
+        }
+        Ligand::Atom(a) if a.index() >= m.n_atoms() => String::new(),
         Ligand::Atom(a) => {
-            let mut text = m.element(a).symbol().to_owned();
+            scripted(&mut job, m.element(a).symbol(), 1, TEXT, color);
             match m.hydrogens(a) {
                 0 => {}
-                1 => text.push('H'),
-                n => {
-                    text.push('H');
-                    text.push_str(&subscript(usize::from(n)));
-                }
+                n => scripted(&mut job, "H", usize::from(n), TEXT, color),
             }
-            (text, format!("atom {}", a.index() + 1))
+            format!("atom {}", a.index() + 1)
         }
-    }
-}
-
-/// A number in subscript figures.
-pub(super) fn subscript(n: usize) -> String {
-    n.to_string()
-        .bytes()
-        .filter_map(|b| char::from_u32(0x2080 + u32::from(b - b'0')))
-        .collect()
+    };
+    (job, number)
 }
 
 /// What a rule prefers.
@@ -307,15 +325,5 @@ fn meaning(rule: Rule) -> &'static str {
         Rule::R4c => "r goes before s",
         Rule::R5 => "R goes before S",
         Rule::R6 => "the chosen reference goes first",
-    }
-}
-
-#[cfg(test)]
-mod tests {
-    use super::*;
-
-    #[test]
-    fn figures_go_down() {
-        assert_eq!(subscript(20), "₂₀");
     }
 }

@@ -28,11 +28,7 @@ pub(crate) struct Graft {
 ///
 /// # Errors
 /// Why it cannot be done here, and what can.
-pub(crate) fn shape(
-    drawing: &Drawing,
-    selection: &Selection,
-    word: Word,
-) -> Result<Graft, String> {
+pub(crate) fn shape(drawing: &Drawing, selection: &Selection, word: Word) -> Result<Graft, String> {
     match word {
         Word::Element(element, charge) => set_element(drawing, selection, element, charge),
         Word::Charge(charge) => set_charge(drawing, selection, charge),
@@ -167,9 +163,9 @@ fn grown(drawing: &Drawing, a: AtomIx, order: Order) -> Point {
     let near = m.neighbors(a);
     let directions = directions(drawing, a);
     let straight = order == Order::Triple
-        || near
-            .iter()
-            .any(|n| n.order == Order::Triple || (n.order, order) == (Order::Double, Order::Double));
+        || near.iter().any(|n| {
+            n.order == Order::Triple || (n.order, order) == (Order::Double, Order::Double)
+        });
     let angle = match directions.as_slice() {
         [] => PI / 6.0,
         [only] if straight => geom::angle(*only) + PI,
@@ -294,7 +290,11 @@ fn fused(drawing: &Drawing, bond: BondIx, size: usize) -> Corners {
     };
     let (from, to) = (geom::angle(p - center), geom::angle(q - center));
     let turn = TAU / size as f64;
-    let step = if geom::turn(from, to) <= PI { turn } else { -turn };
+    let step = if geom::turn(from, to) <= PI {
+        turn
+    } else {
+        -turn
+    };
     let r = radius(size, side);
     let points = (0..size)
         .map(|i| match i {

@@ -13,7 +13,9 @@ use crate::session::{Selection, Session};
 use chem::drawing::Drawing;
 use chem::ink::{self, Caption, Ink, Part, STYLES, Style, Tone};
 use chem::pipeline::{Report, Verdict};
-use egui::{CornerRadius, EventFilter, Rect, Response, Role, Sense, Stroke, StrokeKind, Ui, WidgetInfo};
+use egui::{
+    CornerRadius, EventFilter, Rect, Response, Role, Sense, Stroke, StrokeKind, Ui, WidgetInfo,
+};
 use gesture::Gesture;
 
 /// The drawing composed, for one revision.
@@ -77,13 +79,6 @@ impl Sheet {
         focused.is_none() || focused == self.id
     }
 
-    /// Gives it the focus.
-    pub(super) fn focus(&self, ctx: &egui::Context) {
-        if let Some(id) = self.id {
-            ctx.memory_mut(|m| m.request_focus(id));
-        }
-    }
-
     /// Style of the figure.
     pub(super) fn style() -> &'static Style {
         &STYLES[0]
@@ -133,7 +128,11 @@ impl Sheet {
 
     fn compose(&mut self, session: &Session) {
         let revision = session.revision();
-        if self.composed.as_ref().is_some_and(|c| c.revision == revision) {
+        if self
+            .composed
+            .as_ref()
+            .is_some_and(|c| c.revision == revision)
+        {
             return;
         }
         let captions = captions(session.report());
@@ -191,7 +190,11 @@ impl Sheet {
                 Part::Bond(b) => same_bond(before, after, b),
                 Part::Caption(_) | Part::Note => true,
             };
-            Some(if same { theme::LIGHT.tone(tone) } else { accent })
+            Some(if same {
+                theme::LIGHT.tone(tone)
+            } else {
+                accent
+            })
         });
         painter.add(egui::Shape::mesh(mesh));
     }

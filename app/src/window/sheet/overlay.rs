@@ -1,8 +1,8 @@
 //! What lies over the drawing and is not printed: frame, selection, ghosts, ranking letters.
 
-use super::gesture::{self, Gesture};
 use super::Sheet;
-use crate::session::Session;
+use super::gesture::{self, Gesture};
+use crate::session::{Selection, Session};
 use crate::window::theme::{self, LIGHT};
 use chem::drawing::Drawing;
 use chem::ink::Ink;
@@ -62,12 +62,16 @@ impl Sheet {
         let line = Stroke::new(1.5, LIGHT.accent);
         let fill = LIGHT.accent.gamma_multiply(0.10);
         let radius = self.ring(drawing);
-        for bond in &session.selection().bonds {
-            let [a, b] = drawing.molecule().bond(*bond).ends;
-            let ends = [a, b].map(|a| self.view.to_screen(drawing.point(a)));
+        let Selection { atoms, bonds } = session.selection();
+        for bond in bonds {
+            let ends = drawing.molecule().bond(*bond).ends;
+            // between two rings a bond needs no outline of its own
+            let held = ends.iter().all(|a| atoms.contains(a));
+            let line = if held { Stroke::NONE } else { line };
+            let ends = ends.map(|a| self.view.to_screen(drawing.point(a)));
             capsule(painter, ends, 0.55 * radius, fill, line);
         }
-        for atom in &session.selection().atoms {
+        for atom in atoms {
             let at = self.view.to_screen(drawing.point(*atom));
             painter.circle(at, radius, fill, line);
         }

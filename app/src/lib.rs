@@ -1,5 +1,6 @@
-//! The rim: files, command line, window.
+//! The rim of Wedgewright: files, command line, window. It holds no chemistry.
 
 pub mod command;
+pub mod export;
 pub mod session;
 pub mod window;

@@ -17,7 +17,7 @@ mod unit;
 
 use crate::molecule::Molecule;
 use crate::perceive::Rings;
-use crate::stereo::{Configuration, Descriptor, Ligand, UnitIx, Units};
+use crate::stereo::{Configuration, Descriptor, Ligand, Parity, UnitIx, Units};
 use auxiliary::Foci;
 use context::Context;
 use smallvec::SmallVec;
@@ -152,6 +152,7 @@ pub struct Ranker<'a> {
     units: &'a Units,
     context: Context,
     limits: Limits,
+    outside_rings: Vec<bool>,
     by_constitution: Vec<OnceCell<Result<Option<Ranking>, Stop>>>,
 }
 
@@ -162,6 +163,10 @@ impl<'a> Ranker<'a> {
             units,
             context: Context::new(molecule, rings),
             limits,
+            outside_rings: units
+                .iter()
+                .map(|(_, u)| u.atoms().iter().all(|a| !rings.has_atom(molecule, *a)))
+                .collect(),
             by_constitution: vec![OnceCell::new(); units.len()],
         }
     }
@@ -180,68 +185,104 @@ impl<'a> Ranker<'a> {
             .map_err(|stop| *stop)
     }
 
-    /// The label of one unit in a molecule whose units have these configurations.
-    pub fn label(&self, configurations: &[Configuration], unit: UnitIx) -> UnitLabel {
-        self.label_with(configurations, unit, &OnceCell::new())
+    /// The letter of a unit that Rules 1a, 1b and 2 rank; `None` if they leave ties or were stopped.
+    pub fn letter_by_constitution(&self, unit: UnitIx, parity: Parity) -> Option<Descriptor> {
+        let ranking = self.by_constitution(unit).ok().flatten()?;
+        let kind = self.units.get(unit).kind;
+        Some(unit::letter(kind, parity.flipped_if(ranking.odd), true))
     }
 
-    /// The labels of all units.
+    /// The labels of all units in a molecule whose units have these configurations.
     pub fn label_all(&self, configurations: &[Configuration]) -> Vec<UnitLabel> {
-        let foci = OnceCell::new();
-        (0..self.units.len())
-            .map(|i| self.label_with(configurations, UnitIx::new(i), &foci))
+        let defined = self.label_defined(configurations);
+        defined
+            .into_iter()
+            .enumerate()
+            .map(|(i, label)| label.unwrap_or_else(|| self.undefined(UnitIx::new(i))))
             .collect()
     }
 
     /// The labels of the units whose configuration is defined; `None` for the others, which are not ranked.
+    ///
+    /// A unit outside rings whose ligands prove to be alike is not stereogenic: its marks then count for no
+    /// other unit either, or two branches that are the same in space could get different letters. (In a
+    /// ring such a place still holds others in their geometry.)
     pub fn label_defined(&self, configurations: &[Configuration]) -> Vec<Option<UnitLabel>> {
+        let mut counted = configurations.to_vec();
+        loop {
+            let labels = self.label_once(configurations, &counted);
+            let mut changed = false;
+            for (i, label) in labels.iter().enumerate() {
+                let alike = label
+                    .as_ref()
+                    .is_some_and(|l| l.descriptor == Err(Missing::Alike));
+                if alike && self.outside_rings[i] && counted[i] != Configuration::Open {
+                    counted[i] = Configuration::Open;
+                    changed = true;
+                }
+            }
+            // each round takes a unit out, so this ends
+            if !changed || !self.any_dependent(&counted) {
+                return labels;
+            }
+        }
+    }
+
+    /// Whether a defined unit's rank depends on other units.
+    fn any_dependent(&self, configurations: &[Configuration]) -> bool {
+        configurations.iter().enumerate().any(|(i, c)| {
+            matches!(c, Configuration::Defined(_))
+                && matches!(self.by_constitution(UnitIx::new(i)), Ok(None))
+        })
+    }
+
+    fn label_once(
+        &self,
+        configurations: &[Configuration],
+        counted: &[Configuration],
+    ) -> Vec<Option<UnitLabel>> {
         let foci = OnceCell::new();
-        (0..self.units.len())
-            .map(|i| {
-                matches!(configurations[i], Configuration::Defined(_))
-                    .then(|| self.label_with(configurations, UnitIx::new(i), &foci))
+        configurations
+            .iter()
+            .enumerate()
+            .map(|(i, configuration)| match configuration {
+                Configuration::Defined(parity) => {
+                    let foci = || foci.get_or_init(|| Foci::of(self.units, counted));
+                    Some(self.label(UnitIx::new(i), *parity, foci))
+                }
+                Configuration::Open | Configuration::Either => None,
             })
             .collect()
     }
 
-    fn label_with(
-        &self,
-        configurations: &[Configuration],
-        unit: UnitIx,
-        foci: &OnceCell<Foci>,
-    ) -> UnitLabel {
-        let ranking = match self.by_constitution(unit) {
-            Ok(ranking) => ranking.cloned(),
-            Err(stop) => {
-                return UnitLabel {
-                    descriptor: Err(Missing::Stopped(stop)),
-                    ranking: None,
-                };
-            }
+    fn undefined(&self, unit: UnitIx) -> UnitLabel {
+        let (missing, ranking) = match self.by_constitution(unit) {
+            Ok(ranking) => (Missing::Undefined, ranking.cloned()),
+            Err(stop) => (Missing::Stopped(stop), None),
         };
-        let Configuration::Defined(parity) = configurations[unit.index()] else {
-            return UnitLabel {
-                descriptor: Err(Missing::Undefined),
-                ranking,
-            };
-        };
-        if let Some(ranking) = ranking {
-            let kind = self.units.get(unit).kind;
-            return UnitLabel {
-                descriptor: Ok(unit::letter(kind, parity.flipped_if(ranking.odd), true)),
-                ranking: Some(ranking),
-            };
+        UnitLabel {
+            descriptor: Err(missing),
+            ranking,
         }
-        let foci = foci.get_or_init(|| Foci::of(self.units, configurations));
-        match unit::rank_by_all(&self.context, self.units, unit, foci, self.limits) {
-            Ok(Some((ranking, varies))) => {
-                let kind = self.units.get(unit).kind;
-                let parity = parity.flipped_if(ranking.odd);
-                UnitLabel {
-                    descriptor: Ok(unit::letter(kind, parity, varies)),
-                    ranking: Some(ranking),
-                }
-            }
+    }
+
+    fn label<'f>(
+        &self,
+        unit: UnitIx,
+        parity: Parity,
+        foci: impl FnOnce() -> &'f Foci,
+    ) -> UnitLabel {
+        let kind = self.units.get(unit).kind;
+        let found = match self.by_constitution(unit) {
+            Ok(Some(ranking)) => Ok(Some((ranking.clone(), true))),
+            Ok(None) => unit::rank_by_all(&self.context, self.units, unit, foci(), self.limits),
+            Err(stop) => Err(stop),
+        };
+        match found {
+            Ok(Some((ranking, varies))) => UnitLabel {
+                descriptor: Ok(unit::letter(kind, parity.flipped_if(ranking.odd), varies)),
+                ranking: Some(ranking),
+            },
             Ok(None) => UnitLabel {
                 descriptor: Err(Missing::Alike),
                 ranking: None,

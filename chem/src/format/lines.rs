@@ -1,5 +1,19 @@
 //! Lines of a text with any line end: LF, CR LF, CR, also mixed.
 
+/// The first byte that is one of two. Sixteen at a time, in a form that compiles to vector code: finding
+/// the ends of lines is a third of the work of reading a molfile.
+pub(super) fn position(bytes: &[u8], one: u8, other: u8) -> Option<usize> {
+    let hit = |b: &u8| *b == one || *b == other;
+    let (chunks, _) = bytes.as_chunks::<16>();
+    let whole = chunks
+        .iter()
+        .take_while(|chunk| !chunk.iter().fold(false, |any, b| any | hit(b)))
+        .count();
+    let start = 16 * whole;
+    let rest = bytes.get(start..).unwrap_or_default();
+    rest.iter().position(hit).map(|i| start + i)
+}
+
 /// Walks over the lines of a text; knows the number of each line and where it starts.
 #[derive(Clone, Debug)]
 pub(super) struct Lines<'a> {
@@ -42,10 +56,7 @@ impl<'a> Iterator for Lines<'a> {
         if bytes.is_empty() {
             return None;
         }
-        let length = bytes
-            .iter()
-            .position(|b| *b == b'\n' || *b == b'\r')
-            .unwrap_or(bytes.len());
+        let length = position(bytes, b'\n', b'\r').unwrap_or(bytes.len());
         let line = self.text.get(self.at..self.at + length)?;
         let ending = match bytes.get(length..) {
             Some([b'\r', b'\n', ..]) => 2,
@@ -61,6 +72,18 @@ impl<'a> Iterator for Lines<'a> {
 #[cfg(test)]
 mod tests {
     use super::*;
+
+    #[test]
+    fn bytes_are_found_where_they_are() {
+        for length in 0..70 {
+            let mut bytes = vec![b'x'; length];
+            assert_eq!(position(&bytes, b'$', b'$'), None);
+            for at in (0..length).rev() {
+                bytes[at] = b'$';
+                assert_eq!(position(&bytes, b'\r', b'$'), Some(at));
+            }
+        }
+    }
 
     #[test]
     fn every_line_end_counts_once() {

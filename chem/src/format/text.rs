@@ -75,6 +75,9 @@ fn holds(line: &[u8], sign: &[u8]) -> bool {
 
 /// Line ends in some bytes: LF, CR LF, CR.
 pub(super) fn count_lines(bytes: &[u8]) -> usize {
+    if !bytes.contains(&b'\r') {
+        return bytes.iter().filter(|b| **b == b'\n').count();
+    }
     let mut after_cr = false;
     let mut count = 0;
     for b in bytes {

@@ -34,9 +34,11 @@ impl Obstacles {
         out
     }
 
-    pub(super) fn add_sets(&mut self, sets: &[Set]) {
+    /// Letters, with white round them so that no caption reads as part of a label.
+    pub(super) fn add_sets(&mut self, sets: &[Set], white: f64) {
         for hull in sets.iter().flat_map(|s| &s.hulls) {
-            self.boxes.extend(plane::bounds(hull));
+            self.boxes
+                .extend(plane::bounds(hull).map(|r| r.inflate(white, white)));
         }
     }
 
@@ -67,18 +69,26 @@ impl Obstacles {
         }
     }
 
-    /// White between a box and the nearest ink, counted up to `enough`.
-    fn clearance(&self, r: Rect, enough: f64) -> f64 {
-        let boxes = self.boxes.iter().map(|b| plane::box_to_box(*b, r));
-        let segments = self.segments.iter().map(|([a, b], half)| {
-            let outer = Rect::from_points(*a, *b).inflate(*half, *half);
-            if plane::box_to_box(outer, r) >= enough {
-                enough
-            } else {
-                (plane::segment_to_box([*a, *b], r) - half).max(0.0)
+    /// White between a box and the nearest ink, counted up to `enough`; once it is found to be less
+    /// than `least`, the rest is not looked at.
+    fn clearance(&self, r: Rect, least: f64, enough: f64) -> f64 {
+        let mut clear = enough;
+        for b in &self.boxes {
+            clear = clear.min(plane::box_to_box(*b, r));
+            if clear < least {
+                return clear;
             }
-        });
-        boxes.chain(segments).fold(enough, f64::min)
+        }
+        for ([a, b], half) in &self.segments {
+            let outer = Rect::from_points(*a, *b).inflate(*half, *half);
+            if plane::box_to_box(outer, r) < clear {
+                clear = clear.min((plane::segment_to_box([*a, *b], r) - half).max(0.0));
+                if clear < least {
+                    return clear;
+                }
+            }
+        }
+        clear
     }
 }
 
@@ -105,7 +115,7 @@ pub(super) fn write(
             setter,
             Point::ORIGIN + (center - size.center()),
         );
-        obstacles.add_sets(&sets);
+        obstacles.add_sets(&sets, 0.5 * scene.style.label_margin);
         items.extend(sets.into_iter().map(|set| Item {
             part: Part::Caption(i),
             tone: match set.run.face {
@@ -203,26 +213,26 @@ fn find(scene: &Scene<'_>, place: &Place, size: Rect, obstacles: &Obstacles) -> 
     let wanted = (0.12 * CAP_HEIGHT * style.caption_size).max(1.2 * style.line_width);
     let comfort = 2.0 * wanted;
     let mut best: Option<(f64, Point)> = None;
-    let mut clearest = (-1.0, place.middle);
-    for direction in place.directions() {
+    let candidates = |direction: Vec2| {
         let support = half_width * direction.x.abs() + half_height * direction.y.abs();
-        for i in 0..STEPS {
+        (0..STEPS).map(move |i| {
             let along = 0.5 * support + step * f64::from(i);
-            let middle = place.middle + direction * along;
-            let r = Rect::from_center_size(middle, (2.0 * half_width, 2.0 * half_height));
-            let clear = near.clearance(r, comfort);
-            if clear > clearest.0 + 1e-9 {
-                clearest = (clear, middle);
-            }
+            (along - support, place.middle + direction * along)
+        })
+    };
+    let at = |middle| Rect::from_center_size(middle, (2.0 * half_width, 2.0 * half_height));
+    for direction in place.directions() {
+        for (away, middle) in candidates(direction) {
+            let clear = near.clearance(at(middle), wanted, comfort);
             if clear < wanted {
                 continue;
             }
             let own = middle.distance(place.middle);
             let stray = others
                 .iter()
-                .map(|p| own - p.distance(middle))
+                .map(|p| own - 0.65 * p.distance(middle))
                 .fold(0.0, f64::max);
-            let cost = (along - support)
+            let cost = away
                 + 1.5 * stray
                 + 0.35 * usual * (1.0 - place.room(direction) / std::f64::consts::PI)
                 + 0.6 * (comfort - clear);
@@ -234,5 +244,16 @@ fn find(scene: &Scene<'_>, place: &Place, size: Rect, obstacles: &Obstacles) -> 
             }
         }
     }
-    best.map_or(clearest.1, |(_, middle)| middle)
+    if let Some((_, middle)) = best {
+        return middle;
+    }
+    // no room anywhere: where it is least in the way
+    let mut clearest = (-1.0, place.middle);
+    for (_, middle) in place.directions().into_iter().flat_map(candidates) {
+        let clear = near.clearance(at(middle), 0.0, comfort);
+        if clear > clearest.0 + 1e-9 {
+            clearest = (clear, middle);
+        }
+    }
+    clearest.1
 }

@@ -40,7 +40,7 @@ pub(super) enum Side {
     Above,
 }
 
-/// Where its charge stands.
+/// Where its charge or mass number stands.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 enum Corner {
     After,
@@ -112,8 +112,7 @@ pub(super) fn place(
         at,
         side: free_side(spelling, bonds),
     };
-    let margin = style.label_margin;
-    let plain = layout.set(setter, None);
+    let (number, plain) = layout.number(setter, bonds);
     if spelling.charge.is_empty() {
         return plain;
     }
@@ -123,28 +122,48 @@ pub(super) fn place(
     if starts_with_symbol && spelling.isotope.is_empty() {
         corners.push(Corner::Before);
     }
-    if layout.side != Side::Above {
+    if layout.side != Side::Above && number != Some(Corner::Over) {
         corners.push(Corner::Over);
     }
-    if layout.side != Side::Below {
+    if layout.side != Side::Below && number != Some(Corner::Under) {
         corners.push(Corner::Under);
     }
-    // a charge is in the way if bonds would have to stop sooner for it
+    let labels = corners
+        .into_iter()
+        .map(|corner| layout.set(setter, number, Some(corner)))
+        .collect();
+    clearest(style, &plain, labels, at, bonds).unwrap_or(plain)
+}
+
+/// The first label for which bonds need stop hardly sooner than for `plain`, or else the one that
+/// costs them least.
+fn clearest(
+    style: &Style,
+    plain: &Label,
+    labels: Vec<Label>,
+    at: Point,
+    bonds: &[Vec2],
+) -> Option<Label> {
     let mut best: Option<(f64, Label)> = None;
-    for corner in corners {
-        let label = layout.set(setter, Some(corner));
-        let loss = bonds
-            .iter()
-            .map(|u| label.exit(at, *u, margin) - plain.exit(at, *u, margin))
-            .fold(0.0, f64::max);
+    for label in labels {
+        let loss = loss(style, plain, &label, at, bonds);
         if loss < 0.08 * style.font_size {
-            return label;
+            return Some(label);
         }
         if best.as_ref().is_none_or(|(least, _)| loss < *least - 1e-9) {
             best = Some((loss, label));
         }
     }
-    best.map_or(plain, |(_, label)| label)
+    best.map(|(_, label)| label)
+}
+
+/// How much sooner some bond must stop for `label` than for `plain`.
+fn loss(style: &Style, plain: &Label, label: &Label, at: Point, bonds: &[Vec2]) -> f64 {
+    let margin = style.label_margin;
+    bonds
+        .iter()
+        .map(|u| label.exit(at, *u, margin) - plain.exit(at, *u, margin))
+        .fold(0.0, f64::max)
 }
 
 struct Layout<'a> {
@@ -170,25 +189,65 @@ enum Meet {
 }
 
 impl Layout<'_> {
-    fn set(&self, setter: &mut Setter, corner: Option<Corner>) -> Label {
+    /// Where the mass number finds room: before the symbol, or above or below it if a bond comes from
+    /// the upper left; and the label with it.
+    fn number(&self, setter: &mut Setter, bonds: &[Vec2]) -> (Option<Corner>, Label) {
+        let plain = self.set(setter, None, None);
+        if self.spelling.isotope.is_empty() {
+            return (None, plain);
+        }
+        let mut corners = vec![Corner::Before];
+        if self.side != Side::Above {
+            corners.push(Corner::Over);
+        }
+        if self.side != Side::Below {
+            corners.push(Corner::Under);
+        }
+        let mut best: Option<(f64, Corner, Label)> = None;
+        for corner in corners {
+            let label = self.set(setter, Some(corner), None);
+            let loss = loss(self.style, &plain, &label, self.at, bonds);
+            // out of its usual place only if a bond would lose a good part
+            let loss = if loss < 0.3 * self.style.font_size {
+                0.0
+            } else {
+                loss
+            };
+            if best.as_ref().is_none_or(|(least, ..)| loss < *least - 1e-9) {
+                best = Some((loss, corner, label));
+            }
+        }
+        best.map_or((None, plain), |(_, corner, label)| (Some(corner), label))
+    }
+
+    fn set(&self, setter: &mut Setter, number: Option<Corner>, charge: Option<Corner>) -> Label {
         let size = self.style.font_size;
-        let line = self.line(corner);
+        let line = self.line(number, charge);
         let baseline = self.at.y + 0.5 * CAP_HEIGHT * size;
         let mut sets = set_line(setter, self.style, &line, self.at.x, baseline);
-        if let Some(c @ (Corner::Over | Corner::Under)) = corner {
-            let charge = Line {
-                pieces: vec![Piece::new(self.spelling.charge.clone(), Level::Super)],
+        for (text, corner) in [
+            (&self.spelling.isotope, number),
+            (&self.spelling.charge, charge),
+        ] {
+            let shift = match corner {
+                // just clear of the symbol
+                Some(Corner::Over) => -(CAP_HEIGHT + 0.08 - SUPER_RISE) * size,
+                Some(Corner::Under) => {
+                    (0.08 + SUPER_RISE + CAP_HEIGHT * self.style.script_size) * size
+                }
+                Some(Corner::After | Corner::Before) | None => continue,
+            };
+            let script = Line {
+                pieces: vec![Piece::new(text.clone(), Level::Super)],
                 anchor: 0,
                 meet: Meet::Middle,
             };
-            let step = (CAP_HEIGHT + 0.08) * size;
-            let shift = if c == Corner::Over {
-                -step + (SUPER_RISE - SUB_DROP) * size
+            let script = set_line(setter, self.style, &script, self.at.x, baseline + shift);
+            if text == &self.spelling.isotope {
+                sets.splice(0..0, script);
             } else {
-                step + SUPER_RISE * size
-            };
-            let mut charge = set_line(setter, self.style, &charge, self.at.x, baseline + shift);
-            sets.append(&mut charge);
+                sets.extend(script);
+            }
         }
         if self.spelling.hydrogens > 0 && matches!(self.side, Side::Above | Side::Below) {
             let hydrogens = Line {
@@ -229,16 +288,16 @@ impl Layout<'_> {
     }
 
     /// The line that the symbol stands in.
-    fn line(&self, corner: Option<Corner>) -> Line {
+    fn line(&self, number: Option<Corner>, charge: Option<Corner>) -> Line {
         let s = self.spelling;
         let mut pieces = Vec::new();
         if self.side == Side::Left {
             pieces = self.hydrogens();
         }
-        if corner == Some(Corner::Before) {
+        if charge == Some(Corner::Before) {
             pieces.push(Piece::new(s.charge.clone(), Level::Super));
         }
-        if !s.isotope.is_empty() {
+        if number == Some(Corner::Before) {
             pieces.push(Piece::new(s.isotope.clone(), Level::Super));
         }
         let start = pieces.len();
@@ -269,7 +328,7 @@ impl Layout<'_> {
         if self.side == Side::Right {
             pieces.extend(self.hydrogens());
         }
-        if corner == Some(Corner::After) {
+        if charge == Some(Corner::After) {
             pieces.push(Piece::new(s.charge.clone(), Level::Super));
         }
         Line {

@@ -171,7 +171,7 @@ pub fn compose(
         let Some(label) = scene.label(atom) else {
             continue;
         };
-        obstacles.add_sets(&label.sets);
+        obstacles.add_sets(&label.sets, 0.7 * style.label_margin);
         items.extend(label.sets.iter().map(|set| Item {
             part: Part::Atom(atom),
             tone: Tone::Ink,

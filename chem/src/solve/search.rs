@@ -4,7 +4,7 @@
 //! rank depends on others are tried together: first each is turned over as long as that mends its own
 //! letter, then every combination of a small group.
 
-use crate::cip::{Missing, Ranker, Stop};
+use crate::cip::{Missing, Ranker, Stop, UnitLabel};
 use crate::stereo::{Configuration, Descriptor, Parity, UnitIx};
 
 /// A unit and the letter it must carry.
@@ -67,6 +67,12 @@ pub fn search(
     try_all(ranker, configurations, &dependent)
 }
 
+fn letter(labels: &[Option<UnitLabel>], unit: UnitIx) -> Result<Descriptor, Missing> {
+    labels[unit.index()]
+        .as_ref()
+        .map_or(Err(Missing::Undefined), |label| label.descriptor)
+}
+
 fn set_alone(
     ranker: &Ranker<'_>,
     configurations: &mut [Configuration],
@@ -74,12 +80,10 @@ fn set_alone(
 ) -> Result<(), SearchError> {
     let mut carried = None;
     for parity in [Parity::Even, Parity::Odd] {
-        configurations[goal.unit.index()] = Configuration::Defined(parity);
-        match ranker.label(configurations, goal.unit).descriptor {
-            Ok(d) if d == goal.descriptor => return Ok(()),
-            Ok(d) => carried = Some(d),
-            Err(Missing::Stopped(stop)) => return Err(SearchError::Stopped(goal.unit, stop)),
-            Err(_) => {}
+        carried = ranker.letter_by_constitution(goal.unit, parity);
+        if carried == Some(goal.descriptor) {
+            configurations[goal.unit.index()] = Configuration::Defined(parity);
+            return Ok(());
         }
     }
     Err(match carried {
@@ -99,8 +103,9 @@ fn flip(configurations: &mut [Configuration], unit: UnitIx) {
 fn turn_over(ranker: &Ranker<'_>, configurations: &mut [Configuration], goals: &[Goal]) -> bool {
     for _ in 0..goals.len() + 4 {
         let mut wrong = Vec::new();
+        let labels = ranker.label_defined(configurations);
         for goal in goals {
-            match ranker.label(configurations, goal.unit).descriptor {
+            match letter(&labels, goal.unit) {
                 Ok(d) if d == goal.descriptor => {}
                 Ok(d) if d == goal.descriptor.opposite() => wrong.push(goal.unit),
                 _ => return false,
@@ -137,8 +142,9 @@ fn try_all(
             }
         }
         let mut good = true;
+        let labels = ranker.label_defined(&configurations);
         for (goal, seen) in goals.iter().zip(&mut seen) {
-            match ranker.label(&configurations, goal.unit).descriptor {
+            match letter(&labels, goal.unit) {
                 Ok(d) => {
                     good &= d == goal.descriptor;
                     if !seen.contains(&d) {

@@ -90,7 +90,7 @@ impl Tables {
             .collect();
         if let Some(line) = aromatic.first().map(|i| self.bonds[*i].line) {
             kekule::localize(&self.atoms, &mut bonds, &aromatic)
-                .map_err(|reason| ReadError::line(line, reason))?;
+                .map_err(|(atom, reason)| ReadError::line(self.atom_line + atom, reason))?;
             notices.push(Notice::new(
                 line,
                 "aromatic-bonds",

@@ -21,12 +21,13 @@ enum Need {
     Never,
 }
 
-/// Sets the orders of the aromatic bonds (indices into `bonds`, which hold them as single ones).
+/// Sets the orders of the aromatic bonds (indices into `bonds`, which hold them as single ones); where
+/// that fails, an atom at which it does, and why.
 pub(super) fn localize(
     atoms: &[Atom],
     bonds: &mut [Bond],
     aromatic: &[usize],
-) -> Result<(), Reason> {
+) -> Result<(), (usize, Reason)> {
     let mut used = vec![0u8; atoms.len()];
     for bond in bonds.iter() {
         for end in bond.ends {
@@ -54,7 +55,7 @@ pub(super) fn localize(
             // an atom that may go without gives way to one that must not
             let gives_way = |w: usize| need[w] == Need::May;
             if !pairing.cover(v, gives_way) {
-                return Err(Reason::NoPattern(v + 1));
+                return Err((v, Reason::NoPattern(v + 1)));
             }
         }
     }
@@ -71,9 +72,8 @@ pub(super) fn localize(
         if !rivals.is_empty() {
             rivals.push(v);
             rivals.sort_unstable();
-            return Err(Reason::SeveralPatterns(
-                rivals.into_iter().map(|w| w + 1).collect(),
-            ));
+            let atoms = rivals.into_iter().map(|w| w + 1).collect();
+            return Err((v, Reason::SeveralPatterns(atoms)));
         }
     }
     for i in aromatic {

@@ -46,7 +46,10 @@ pub(super) fn understand(symbol: &str) -> Result<Symbol, Option<&'static str>> {
 pub(super) fn is_placeholder(symbol: &str) -> bool {
     match symbol {
         "*" | "A" | "Q" | "X" | "L" | "LP" | "R" | "R#" | "Pol" | "Mod" => true,
-        _ => rest_number(symbol).is_some(),
+        // R12, and as people number their rests: R1A, R2'
+        _ => symbol
+            .strip_prefix('R')
+            .is_some_and(|rest| rest.starts_with(|c: char| c.is_ascii_digit() && c != '0')),
     }
 }
 
@@ -80,7 +83,7 @@ mod tests {
         assert_eq!(understand("CL"), Ok(Symbol::Capitals(Element::CL)));
         assert_eq!(understand("SI"), Ok(Symbol::Capitals(Element::SI)));
         assert_eq!(understand("D"), Ok(Symbol::Hydrogen(2)));
-        for text in ["R#", "R", "R1", "R12", "*", "A", "Q", "X", "L", "LP"] {
+        for text in ["R#", "R", "R1", "R12", "R1A", "*", "A", "Q", "X", "L", "LP"] {
             assert_eq!(understand(text), Ok(Symbol::Placeholder), "{text}");
         }
         assert_eq!(understand("cl"), Err(Some("Cl")));

@@ -1,5 +1,6 @@
 //! Records of a file of any size, one at a time.
 
+use super::super::lines::position;
 use super::super::text::count_lines;
 use std::io::{self, Read};
 
@@ -146,7 +147,7 @@ fn separator(bytes: &[u8], searched: usize, at_end: bool) -> Found {
     let mut at = searched;
     loop {
         let rest = bytes.get(at..).unwrap_or_default();
-        let Some(offset) = rest.iter().position(|b| *b == b'$') else {
+        let Some(offset) = position(rest, b'$', b'$') else {
             return Found::NotBefore(bytes.len());
         };
         let from = at + offset;
@@ -159,7 +160,7 @@ fn separator(bytes: &[u8], searched: usize, at_end: bool) -> Found {
             return Found::NotBefore(from);
         }
         if starts_line && tail.starts_with(b"$$$$") {
-            let end = tail.iter().position(|b| matches!(b, b'\n' | b'\r'));
+            let end = position(tail, b'\n', b'\r');
             let after = match end.map(|e| (e, tail.get(e..))) {
                 Some((e, Some([b'\r', b'\n', ..]))) => from + e + 2,
                 // a line feed may follow

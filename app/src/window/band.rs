@@ -135,7 +135,6 @@ impl Band {
             .show(ui)
             .response
             .response
-            .clone()
             .labelled_by(caption.id);
         self.underline(ui, &response, &colors);
         if std::mem::take(&mut self.focus_next) {

@@ -23,7 +23,7 @@ use crate::command::{Command, Effect, MENUS, Shortcut};
 use crate::session::Session;
 use chem::pipeline::Verdict;
 use dialogs::Dialog;
-use egui::{CentralPanel, Context, Frame, Key, Margin, Modifiers, Panel, Ui};
+use egui::{CentralPanel, Context, Event, Frame, Key, Margin, Modifiers, Panel, Ui};
 use graft::{Entry, Outcome};
 use prompts::{Next, PathField};
 use search::Search;
@@ -315,12 +315,18 @@ fn pressed(ui: &Ui, command: &Command, shortcut: Shortcut) -> bool {
         let Some(key) = Key::from_name(s.key) else {
             return false;
         };
-        let mut modifiers = Modifiers::NONE;
-        modifiers.command = s.ctrl;
-        modifiers.shift = s.shift;
+        // the modifiers of the event count: those of the frame may be released already
+        let meant = |m: Modifiers| {
+            let any_shift = matches!(s.key, "Plus" | "Equals");
+            m.command == s.ctrl && !m.alt && (any_shift || m.shift == s.shift)
+        };
         ui.input_mut(|i| {
-            let clean = s.shift || !i.modifiers.shift || matches!(s.key, "Plus" | "Equals");
-            clean && i.consume_key(modifiers, key)
+            let before = i.events.len();
+            i.events.retain(|e| {
+                !matches!(e, Event::Key { key: k, pressed: true, modifiers, .. }
+                    if *k == key && meant(*modifiers))
+            });
+            i.events.len() < before
         })
     })
 }

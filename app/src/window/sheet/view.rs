@@ -3,7 +3,7 @@
 use super::super::paint::ToScreen;
 use chem::drawing::Drawing;
 use chem::geom::Point;
-use chem::ink::{Ink, Style};
+use chem::ink::Ink;
 use egui::{Pos2, Rect, Vec2, pos2, vec2};
 
 /// Screen points for a bond on an empty sheet.
@@ -94,10 +94,9 @@ impl View {
         }
     }
 
-    /// The page of a figure on the screen: its ink and the margin of its style.
-    pub(super) fn page(&self, ink: &Ink, style: &Style) -> Rect {
+    /// A box of the figure on the screen; `b` in points.
+    pub(super) fn page(&self, ink: &Ink, b: kurbo::Rect) -> Rect {
         let to = self.of_ink(ink);
-        let b = ink.bounds.inflate(style.page_margin, style.page_margin);
         Rect::from_min_max(
             to.origin + to.scale * vec2(b.x0 as f32, b.y0 as f32),
             to.origin + to.scale * vec2(b.x1 as f32, b.y1 as f32),

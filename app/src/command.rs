@@ -2,9 +2,10 @@
 //!
 //! Menus and shortcuts are made from it. Panels send commands and change nothing themselves.
 
+mod effects;
+
 use crate::session::{Selection, Session};
-use chem::drawing::{Edit, End, Mark};
-use chem::molecule::{AtomIx, BondIx, Order};
+use chem::drawing::{Edit, Mark};
 use std::borrow::Cow;
 
 /// One thing to do.
@@ -30,6 +31,14 @@ pub enum Command {
     SelectAll,
     /// Select nothing.
     Deselect,
+    /// Select the next atom by number.
+    NextAtom,
+    /// Select the one before.
+    PreviousAtom,
+    /// Select the next bond by number.
+    NextBond,
+    /// Select the one before.
+    PreviousBond,
     /// Remove what is selected.
     Delete,
     /// Raise the wide end of the selected bond.
@@ -121,6 +130,14 @@ const fn plain(key: &'static str) -> Option<Shortcut> {
     })
 }
 
+const fn shift(key: &'static str) -> Option<Shortcut> {
+    Some(Shortcut {
+        ctrl: false,
+        shift: true,
+        key,
+    })
+}
+
 const fn ctrl(key: &'static str) -> Option<Shortcut> {
     Some(Shortcut {
         ctrl: true,
@@ -160,6 +177,11 @@ pub const MENUS: [(&str, &[Option<Command>]); 4] = [
             None,
             Some(Command::SelectAll),
             Some(Command::Deselect),
+            Some(Command::NextAtom),
+            Some(Command::PreviousAtom),
+            Some(Command::NextBond),
+            Some(Command::PreviousBond),
+            None,
             Some(Command::Delete),
         ],
     ),
@@ -206,6 +228,10 @@ impl Command {
             Command::Redo => return named("Redo", session.redo_name()),
             Command::SelectAll => "Select all",
             Command::Deselect => "Select nothing",
+            Command::NextAtom => "Next atom",
+            Command::PreviousAtom => "Previous atom",
+            Command::NextBond => "Next bond",
+            Command::PreviousBond => "Previous bond",
             Command::Delete => "Delete",
             Command::Raise => "Raise the wide end",
             Command::Lower => "Lower the wide end",
@@ -239,6 +265,10 @@ impl Command {
             Command::Redo => ctrl_shift("Z"),
             Command::SelectAll => ctrl("A"),
             Command::Deselect => plain("Escape"),
+            Command::NextAtom => plain("PageDown"),
+            Command::PreviousAtom => plain("PageUp"),
+            Command::NextBond => shift("PageDown"),
+            Command::PreviousBond => shift("PageUp"),
             Command::Delete => plain("Delete"),
             Command::Raise => plain("Up"),
             Command::Lower => plain("Down"),
@@ -271,6 +301,8 @@ impl Command {
             Command::Redo => "Makes the step again",
             Command::SelectAll => "Selects every atom and bond",
             Command::Deselect => "Selects nothing",
+            Command::NextAtom | Command::PreviousAtom => "Steps through the atoms by number",
+            Command::NextBond | Command::PreviousBond => "Steps through the bonds by number",
             Command::Delete => "Removes what is selected",
             Command::Raise => "Solid wedge on the selected bond; again: plain",
             Command::Lower => "Hashed wedge on the selected bond; again: plain",
@@ -289,13 +321,15 @@ impl Command {
 
     /// Whether it can do something now.
     pub fn enabled(&self, session: &Session) -> bool {
-        let bond = || wedgeable(session);
+        let bond = || effects::wedgeable(session);
         match self {
             Command::Undo => session.undo_name().is_some(),
             Command::Redo => session.redo_name().is_some(),
             Command::SelectAll | Command::Fit | Command::SaveFigure => {
                 session.drawing().molecule().n_atoms() > 0
             }
+            Command::NextAtom | Command::PreviousAtom => session.drawing().molecule().n_atoms() > 0,
+            Command::NextBond | Command::PreviousBond => session.drawing().molecule().n_bonds() > 0,
             Command::Deselect | Command::Delete => !session.selection().is_empty(),
             Command::Raise | Command::Lower => bond().is_some(),
             Command::Swap => bond().is_some_and(|b| session.drawing().mark(b).narrow().is_some()),
@@ -305,47 +339,57 @@ impl Command {
         }
     }
 
+    /// What the window must do for it, if it is not the document that changes.
+    fn errand(&self) -> Option<Errand> {
+        Some(match self {
+            Command::New => Errand::New,
+            Command::Open => Errand::Open,
+            Command::Save => Errand::Save,
+            Command::SaveAs => Errand::SaveAs,
+            Command::SaveFigure => Errand::SaveFigure,
+            Command::Close => Errand::Close,
+            Command::GoToLine => Errand::GoToLine,
+            Command::Fit => Errand::Fit,
+            Command::Nearer => Errand::Zoom(true),
+            Command::Farther => Errand::Zoom(false),
+            Command::Dim => Errand::Dim,
+            Command::Places => Errand::Places,
+            _ => return None,
+        })
+    }
+
     /// Does it, or says what the window must do.
     pub fn run(self, session: &mut Session) -> Effect {
+        if let Some(errand) = self.errand() {
+            return Effect::Errand(errand);
+        }
         match self {
-            Command::New => Effect::Errand(Errand::New),
-            Command::Open => Effect::Errand(Errand::Open),
-            Command::Save => Effect::Errand(Errand::Save),
-            Command::SaveAs => Effect::Errand(Errand::SaveAs),
-            Command::SaveFigure => Effect::Errand(Errand::SaveFigure),
-            Command::Close => Effect::Errand(Errand::Close),
-            Command::GoToLine => Effect::Errand(Errand::GoToLine),
-            Command::Fit => Effect::Errand(Errand::Fit),
-            Command::Nearer => Effect::Errand(Errand::Zoom(true)),
-            Command::Farther => Effect::Errand(Errand::Zoom(false)),
-            Command::Dim => Effect::Errand(Errand::Dim),
-            Command::Places => Effect::Errand(Errand::Places),
-            Command::Undo => done(session.undo()),
-            Command::Redo => done(session.redo()),
+            Command::Undo => session.undo(),
+            Command::Redo => session.redo(),
             Command::SelectAll => {
                 let all = Selection::all(session.drawing());
-                done(session.select(all))
+                session.select(all);
             }
-            Command::Deselect => done(session.select(Selection::default())),
-            Command::Select(selection) => done(session.select(selection)),
-            Command::Ask(text) => done(session.ask(&text)),
-            Command::Settle => done(session.settle()),
-            Command::MakeItCarry => done(session.make_it_carry()),
-            Command::Delete => {
-                let edits = removal(session);
-                step(session, "Delete", &edits)
-            }
-            Command::Raise => wedge(session, "Raise the wide end", Mark::Solid),
-            Command::Lower => wedge(session, "Lower the wide end", Mark::Hashed),
-            Command::Swap => swap(session),
-            Command::ClearMarks => clear_marks(session),
-            Command::Step(name, edits) => step(session, &name, &edits),
+            Command::Deselect => session.select(Selection::default()),
+            Command::Select(selection) => session.select(selection),
+            Command::NextAtom => effects::walk_atoms(session, true),
+            Command::PreviousAtom => effects::walk_atoms(session, false),
+            Command::NextBond => effects::walk_bonds(session, true),
+            Command::PreviousBond => effects::walk_bonds(session, false),
+            Command::Ask(text) => session.ask(&text),
+            Command::Settle => session.settle(),
+            Command::MakeItCarry => session.make_it_carry(),
+            Command::Delete => return effects::delete(session),
+            Command::Raise => return effects::wedge(session, "Raise the wide end", Mark::Solid),
+            Command::Lower => return effects::wedge(session, "Lower the wide end", Mark::Hashed),
+            Command::Swap => return effects::swap(session),
+            Command::ClearMarks => return effects::clear_marks(session),
+            Command::Step(name, edits) => return effects::step(session, &name, &edits),
+            // errands, done above
+            _ => {}
         }
+        Effect::Done
     }
-}
-
-fn done((): ()) -> Effect {
-    Effect::Done
 }
 
 fn lower_first(words: &str) -> String {
@@ -354,109 +398,4 @@ fn lower_first(words: &str) -> String {
         Some(first) => first.to_lowercase().chain(letters).collect(),
         None => String::new(),
     }
-}
-
-fn step(session: &mut Session, name: &str, edits: &[Edit]) -> Effect {
-    if edits.is_empty() {
-        return Effect::Done;
-    }
-    match session.step(name, edits) {
-        Ok(_) => Effect::Done,
-        Err(e) => Effect::Refused(format!("{name}: {e}")),
-    }
-}
-
-/// Removal of the selection. A carbon that only the removed bonds held goes with them: nobody who
-/// deletes the last bond of a chain means to leave methane.
-fn removal(session: &Session) -> Vec<Edit> {
-    let drawing = session.drawing();
-    let (m, selection) = (drawing.molecule(), session.selection());
-    let mut atoms = selection.atoms.clone();
-    for bond in &selection.bonds {
-        for end in m.bond(*bond).ends {
-            let bare = m
-                .neighbors(end)
-                .iter()
-                .all(|n| selection.bonds.contains(&n.bond));
-            let plain = *m.atom(end) == chem::molecule::Atom::new(chem::element::Element::C);
-            if bare && plain && m.degree(end) == 1 {
-                atoms.insert(end);
-            }
-        }
-    }
-    let bonds = selection.bonds.iter().map(|b| Edit::RemoveBond(*b));
-    bonds
-        .chain(atoms.into_iter().map(Edit::RemoveAtom))
-        .collect()
-}
-
-/// The selected bond, if it is one single bond that can bear a wedge.
-fn wedgeable(session: &Session) -> Option<BondIx> {
-    let bond = session.selection().only_bond()?;
-    (session.drawing().molecule().bond(bond).order == Order::Single).then_some(bond)
-}
-
-fn wedge(session: &mut Session, name: &str, mark: fn(End) -> Mark) -> Effect {
-    let Some(bond) = wedgeable(session) else {
-        return Effect::Done;
-    };
-    let now = session.drawing().mark(bond);
-    let narrow = now.narrow().unwrap_or_else(|| narrow_end(session, bond));
-    let next = if now == mark(narrow) {
-        Mark::Plain
-    } else {
-        mark(narrow)
-    };
-    step(session, name, &[Edit::Mark(bond, next)])
-}
-
-fn swap(session: &mut Session) -> Effect {
-    let Some(bond) = wedgeable(session) else {
-        return Effect::Done;
-    };
-    let now = session.drawing().mark(bond);
-    match now.narrow() {
-        Some(end) => {
-            let edit = Edit::Mark(bond, now.at(end.other()));
-            step(session, "Swap the narrow end", &[edit])
-        }
-        None => Effect::Done,
-    }
-}
-
-/// Where a new wedge starts: at the end that is a stereogenic place, else at the one with more bonds.
-fn narrow_end(session: &Session, bond: BondIx) -> End {
-    let m = session.drawing().molecule();
-    let weight = |atom: AtomIx| {
-        let place = session
-            .report()
-            .places
-            .iter()
-            .any(|p| p.atoms.as_slice() == [atom]);
-        (place, m.degree(atom))
-    };
-    let [first, second] = m.bond(bond).ends;
-    if weight(second) > weight(first) {
-        End::Second
-    } else {
-        End::First
-    }
-}
-
-fn clear_marks(session: &mut Session) -> Effect {
-    let (drawing, selection) = (session.drawing(), session.selection());
-    let within = |b: &BondIx| {
-        let ends = drawing.molecule().bond(*b).ends;
-        selection.is_empty()
-            || selection.bonds.contains(b)
-            || ends.iter().any(|a| selection.atoms.contains(a))
-    };
-    let edits: Vec<Edit> = drawing
-        .molecule()
-        .bonds()
-        .filter(|b| drawing.mark(*b) != Mark::Plain)
-        .filter(within)
-        .map(|b| Edit::Mark(b, Mark::Plain))
-        .collect();
-    step(session, "Clear marks", &edits)
 }

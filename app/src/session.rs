@@ -181,7 +181,10 @@ impl Session {
         &self.history.now().line
     }
 
-    /// The line understood, or what is wrong with it.
+    /// The line understood.
+    ///
+    /// # Errors
+    /// What is wrong with the line.
     pub fn requirement(&self) -> Result<&Requirement, &RequirementError> {
         self.requirement.as_ref()
     }

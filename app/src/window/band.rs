@@ -135,7 +135,6 @@ impl Band {
             .show(ui)
             .response
             .response
-            .clone()
             .labelled_by(caption.id);
         self.underline(ui, &response, &colors);
         if std::mem::take(&mut self.focus_next) {
@@ -257,13 +256,20 @@ fn count(n: usize, one: &str, many: &str) -> String {
 fn verdict(ui: &mut Ui, session: &Session) {
     let colors = Colors::of(ui);
     let tally = session.tally();
-    let verdict = tally.verdict();
+    let understood = session.requirement().is_ok();
+    let verdict = if understood {
+        tally.verdict()
+    } else {
+        Verdict::NotAsked
+    };
     ui.horizontal(|ui| {
         ui.spacing_mut().item_spacing.x = GRID;
         ui.set_min_height(36.0);
         signs::show(ui, verdict);
         let text = if session.is_searching() {
             "seeking marks …".to_owned()
+        } else if !understood {
+            "not understood yet".to_owned()
         } else {
             words(&tally)
         };
@@ -276,7 +282,7 @@ fn verdict(ui: &mut Ui, session: &Session) {
 }
 
 fn make(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
-    if !session.can_carry() || session.is_searching() {
+    if !session.can_carry() || session.is_searching() || session.refusal().is_some() {
         return;
     }
     let colors = Colors::of(ui);
@@ -294,16 +300,19 @@ fn make(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
 /// What is wrong with the line, or why nothing can carry it, beneath.
 fn says(ui: &mut Ui, session: &Session) {
     let colors = Colors::of(ui);
-    let (verdict, text) = if let Err(error) = session.requirement() {
-        (Verdict::Opposite, error.text.clone())
-    } else if let Some(refusal) = session.refusal() {
-        (Verdict::Contradiction, refusal.text.clone())
-    } else {
-        return;
+    let said = match (session.requirement(), session.refusal()) {
+        (Err(error), _) => Some((Verdict::Opposite, error.text.clone())),
+        (Ok(_), Some(refusal)) => Some((Verdict::Contradiction, refusal.text.clone())),
+        (Ok(_), None) => None,
     };
-    ui.add_space(GRID / 2.0);
+    ui.add_space(2.0);
     ui.horizontal(|ui| {
         ui.spacing_mut().item_spacing.x = GRID;
+        // the room is kept, so that nothing moves while a line is typed
+        ui.set_min_height(24.0);
+        let Some((verdict, text)) = said else {
+            return;
+        };
         signs::show(ui, verdict);
         let text = RichText::new(text)
             .size(TEXT)

@@ -1,9 +1,8 @@
 //! The bars: menus at the top, notice and status line at the bottom.
 
-use super::places::subscript;
 use super::sheet::Sheet;
 use super::signs;
-use super::theme::{self, CAPTION, Colors, GRID, TEXT};
+use super::theme::{self, CAPTION, Colors, GRID, TEXT, scripted};
 use crate::command::{Command, MENUS, Shortcut};
 use crate::session::Session;
 use chem::pipeline::Verdict;
@@ -13,9 +12,10 @@ use egui::{Align, Button, Key, Layout, MenuBar, RichText, Stroke, Ui};
 /// The menus, and the file's name at the right.
 pub(super) fn menus(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
     MenuBar::new().ui(ui, |ui| {
+        ui.spacing_mut().item_spacing.x = 2.0 * GRID;
         for (name, commands) in MENUS {
             ui.menu_button(name, |ui| {
-                ui.set_min_width(260.0);
+                ui.set_width(288.0);
                 for command in commands {
                     match command {
                         Some(command) => item(ui, session, command, out),
@@ -26,7 +26,6 @@ pub(super) fn menus(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
         }
         ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
             let colors = Colors::of(ui);
-            ui.add_space(2.0 * GRID);
             ui.label(
                 RichText::new(session.name())
                     .size(TEXT - 1.0)
@@ -79,6 +78,8 @@ fn keys(shortcut: Shortcut) -> String {
         "Escape" => "Esc",
         "Plus" => "+",
         "Minus" => "\u{2212}",
+        "PageDown" => "Page Down",
+        "PageUp" => "Page Up",
         other => other,
     };
     debug_assert!(Key::from_name(shortcut.key).is_some(), "{}", shortcut.key);
@@ -120,23 +121,20 @@ pub(super) fn status(ui: &mut Ui, session: &Session, sheet: &Sheet) {
 
 fn formula(session: &Session, colors: &Colors) -> LayoutJob {
     let m = session.drawing().molecule();
-    let mut text = String::new();
-    for (symbol, n) in m.formula() {
-        text.push_str(symbol);
-        if n > 1 {
-            text.push_str(&subscript(n));
-        }
-    }
-    match m.charge() {
-        0 => {}
-        1 => text.push('+'),
-        -1 => text.push('\u{2212}'),
-        n if n > 0 => text.push_str(&format!(" {n}+")),
-        n => text.push_str(&format!(" {}\u{2212}", -i64::from(n))),
-    }
     let mut job = LayoutJob::default();
-    let format = TextFormat::simple(theme::upright(TEXT - 1.0), colors.muted);
-    job.append(&text, 0.0, format);
+    for (symbol, n) in m.formula() {
+        scripted(&mut job, symbol, n, TEXT - 1.0, colors.muted);
+    }
+    let charge = match m.charge() {
+        0 => return job,
+        1 => "+".to_owned(),
+        -1 => "\u{2212}".to_owned(),
+        n if n > 0 => format!("{n}+"),
+        n => format!("{}\u{2212}", -i64::from(n)),
+    };
+    let mut format = TextFormat::simple(theme::upright(0.72 * (TEXT - 1.0)), colors.muted);
+    format.valign = Align::TOP;
+    job.append(&charge, 0.0, format);
     job
 }
 

@@ -4,11 +4,11 @@ use crate::session::Session;
 use crate::session::files::Document;
 use chem::format::{ReadError, molfile};
 
-/// The molfile, as the plant entered it: one mark where the project asks for three.
+/// The molfile, as the plant entered it: one mark, and the wrong one, where the project asks for three.
 const MOLFILE: &str = include_str!("demo/tern-3.mol");
 
 /// What the project asks for.
-const LINE: &str = "(1R,2S,4R,8E)";
+const LINE: &str = "(1R,2R,4R,8E)";
 
 /// The document.
 ///

@@ -36,6 +36,15 @@ impl Purpose {
         }
     }
 
+    /// The path with the usual ending, if it has none.
+    pub(super) fn complete(self, path: PathBuf) -> PathBuf {
+        match (self, path.extension()) {
+            (Purpose::Save, None) => path.with_extension("mol"),
+            (Purpose::Figure, None) => path.with_extension("svg"),
+            _ => path,
+        }
+    }
+
     fn endings(self) -> &'static [(&'static str, &'static [&'static str])] {
         match self {
             Purpose::Open => &[("Molfile or SDF", &["mol", "sdf", "sd", "mdl"])],
@@ -77,7 +86,8 @@ impl log::Log for Listener {
         if self.listens && failed {
             FAILURES.fetch_add(1, Ordering::SeqCst);
         }
-        if self.next.enabled(record.metadata()) {
+        // what failed is told in the window
+        if !failed && self.next.enabled(record.metadata()) {
             self.next.log(record);
         }
     }

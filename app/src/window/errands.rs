@@ -101,7 +101,11 @@ impl Window {
                 self.suggestion(purpose).to_string_lossy().into_owned()
             }
         };
-        self.path_field = Some(PathField::new(purpose, text, no_dialog));
+        let own = match purpose {
+            Purpose::Save => self.session.path().map(Path::to_owned),
+            Purpose::Open | Purpose::Figure => None,
+        };
+        self.path_field = Some(PathField::new(purpose, text, own, no_dialog));
     }
 
     /// A path to begin with: that of the document, with the ending that fits.
@@ -136,17 +140,11 @@ impl Window {
     fn chosen(&mut self, purpose: Purpose, path: PathBuf, ctx: &Context) {
         match purpose {
             Purpose::Open => self.go_on(Next::Open(path), ctx),
-            Purpose::Save => {
-                let path = with_ending(path, "mol");
-                self.save_to(&path, ctx);
-            }
-            Purpose::Figure => {
-                let path = with_ending(path, "svg");
-                match figure::write(&path, &self.session) {
-                    Ok(()) => self.notice = None,
-                    Err(e) => self.complain(e),
-                }
-            }
+            Purpose::Save => self.save_to(&purpose.complete(path), ctx),
+            Purpose::Figure => match figure::write(&purpose.complete(path), &self.session) {
+                Ok(()) => self.notice = None,
+                Err(e) => self.complain(e),
+            },
         }
     }
 
@@ -220,13 +218,5 @@ impl Window {
                 self.chosen(purpose, path, &ctx);
             }
         }
-    }
-}
-
-/// The path with an ending if it has none.
-fn with_ending(path: PathBuf, ending: &str) -> PathBuf {
-    match path.extension() {
-        Some(_) => path,
-        None => path.with_extension(ending),
     }
 }

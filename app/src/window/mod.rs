@@ -23,7 +23,7 @@ use crate::command::{Command, Effect, MENUS, Shortcut};
 use crate::session::Session;
 use chem::pipeline::Verdict;
 use dialogs::Dialog;
-use egui::{CentralPanel, Context, Frame, Key, Margin, Modifiers, Panel, Ui};
+use egui::{CentralPanel, Context, Event, Frame, Key, Margin, Modifiers, Panel, Ui};
 use graft::{Entry, Outcome};
 use prompts::{Next, PathField};
 use search::Search;
@@ -177,14 +177,14 @@ impl Window {
         let colors = Colors::of(ui);
         let desk = |margin| Frame::new().fill(colors.desk).inner_margin(margin);
         Panel::top("menus")
-            .frame(desk(Margin::symmetric(8, 2)))
+            .frame(desk(Margin::symmetric(22, 2)))
             .show(ui, |ui| bars::menus(ui, &self.session, out));
         Panel::top("band")
             .frame(desk(Margin {
                 left: 24,
                 right: 24,
                 top: 10,
-                bottom: 12,
+                bottom: 4,
             }))
             .show(ui, |ui| self.band.show(ui, &self.session, out));
         Panel::bottom("status")
@@ -210,7 +210,7 @@ impl Window {
         CentralPanel::default_margins()
             .frame(desk(Margin {
                 left: 24,
-                right: if self.show_places { 0 } else { 24 },
+                right: if self.show_places { 2 } else { 24 },
                 top: 2 * GRID as i8,
                 bottom: 2 * GRID as i8,
             }))
@@ -315,12 +315,18 @@ fn pressed(ui: &Ui, command: &Command, shortcut: Shortcut) -> bool {
         let Some(key) = Key::from_name(s.key) else {
             return false;
         };
-        let mut modifiers = Modifiers::NONE;
-        modifiers.command = s.ctrl;
-        modifiers.shift = s.shift;
+        // the modifiers of the event count: those of the frame may be released already
+        let meant = |m: Modifiers| {
+            let any_shift = matches!(s.key, "Plus" | "Equals");
+            m.command == s.ctrl && !m.alt && (any_shift || m.shift == s.shift)
+        };
         ui.input_mut(|i| {
-            let clean = s.shift || !i.modifiers.shift || matches!(s.key, "Plus" | "Equals");
-            clean && i.consume_key(modifiers, key)
+            let before = i.events.len();
+            i.events.retain(|e| {
+                !matches!(e, Event::Key { key: k, pressed: true, modifiers, .. }
+                    if *k == key && meant(*modifiers))
+            });
+            i.events.len() < before
         })
     })
 }

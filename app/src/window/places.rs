@@ -2,14 +2,15 @@
 
 use super::sheet::locant;
 use super::signs;
-use super::theme::{self, CAPTION, Colors, GRID, TEXT};
+use super::theme::{self, CAPTION, Colors, GRID, TEXT, scripted};
 use crate::command::Command;
 use crate::session::{Selection, Session};
 use chem::cip::Rule;
 use chem::pipeline::{Place, Verdict};
 use chem::stereo::{Kind, Ligand};
+use egui::text::LayoutJob;
 use egui::{
-    Align2, CornerRadius, Key, Painter, Pos2, Rect, RichText, Role, ScrollArea, Sense, Stroke,
+    Align2, Color32, CornerRadius, Painter, Pos2, Rect, RichText, Role, ScrollArea, Sense, Stroke,
     StrokeKind, Ui, WidgetInfo, pos2, vec2,
 };
 
@@ -143,9 +144,6 @@ fn row(ui: &mut Ui, session: &Session, place: &Place, chosen: bool, out: &mut Ve
     if response.clicked() {
         out.push(Command::Select(selection(session, place)));
     }
-    if response.has_focus() && !chosen && ui.input(|i| i.key_pressed(Key::Space)) {
-        out.push(Command::Select(selection(session, place)));
-    }
     let painter = ui.painter();
     let wide = rect.expand2(vec2(GRID, 0.0));
     if chosen || response.hovered() {
@@ -276,8 +274,8 @@ fn ligand_row(ui: &mut Ui, session: &Session, name: &str, ligand: Ligand, colors
             theme::italic(TEXT + 1.0),
             colors.accent,
         );
-        let (text, number) = describe(session, ligand);
-        ui.label(RichText::new(text).size(TEXT));
+        let (text, number) = describe(session, ligand, colors.ink);
+        ui.label(text);
         if !number.is_empty() {
             ui.add_space(GRID);
             ui.label(
@@ -290,33 +288,29 @@ fn ligand_row(ui: &mut Ui, session: &Session, name: &str, ligand: Ligand, colors
 }
 
 /// A ligand in words, and its atom's number.
-fn describe(session: &Session, ligand: Ligand) -> (String, String) {
+fn describe(session: &Session, ligand: Ligand, color: Color32) -> (LayoutJob, String) {
     let m = session.drawing().molecule();
-    match ligand {
-        Ligand::Hydrogen => ("H".to_owned(), "not drawn".to_owned()),
-        Ligand::LonePair => ("lone pair".to_owned(), String::new()),
-        Ligand::Atom(a) if a.index() >= m.n_atoms() => (String::new(), String::new()),
+    let mut job = LayoutJob::default();
+    let number = match ligand {
+        Ligand::Hydrogen => {
+            scripted(&mut job, "H", 1, TEXT, color);
+            "not drawn".to_owned()
+        }
+        Ligand::LonePair => {
+            scripted(&mut job, "lone pair", 1, TEXT, color);
+            String::new()
+        }
+        Ligand::Atom(a) if a.index() >= m.n_atoms() => String::new(),
         Ligand::Atom(a) => {
-            let mut text = m.element(a).symbol().to_owned();
+            scripted(&mut job, m.element(a).symbol(), 1, TEXT, color);
             match m.hydrogens(a) {
                 0 => {}
-                1 => text.push('H'),
-                n => {
-                    text.push('H');
-                    text.push_str(&subscript(usize::from(n)));
-                }
+                n => scripted(&mut job, "H", usize::from(n), TEXT, color),
             }
-            (text, format!("atom {}", a.index() + 1))
+            format!("atom {}", a.index() + 1)
         }
-    }
-}
-
-/// A number in subscript figures.
-pub(super) fn subscript(n: usize) -> String {
-    n.to_string()
-        .bytes()
-        .filter_map(|b| char::from_u32(0x2080 + u32::from(b - b'0')))
-        .collect()
+    };
+    (job, number)
 }
 
 /// What a rule prefers.
@@ -331,15 +325,5 @@ fn meaning(rule: Rule) -> &'static str {
         Rule::R4c => "r goes before s",
         Rule::R5 => "R goes before S",
         Rule::R6 => "the chosen reference goes first",
-    }
-}
-
-#[cfg(test)]
-mod tests {
-    use super::*;
-
-    #[test]
-    fn figures_go_down() {
-        assert_eq!(subscript(20), "₂₀");
     }
 }

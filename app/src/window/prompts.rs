@@ -1,7 +1,9 @@
 //! Questions that must be answered before anything else: unsaved work, and a path to type.
 
 use super::dialogs::Purpose;
+use super::signs;
 use super::theme::{self, Colors, GRID, TEXT};
+use chem::pipeline::Verdict;
 use egui::{Button, Context, Frame, Id, Key, Margin, Modal, RichText, Stroke, TextEdit, Ui, vec2};
 use std::path::PathBuf;
 
@@ -95,6 +97,10 @@ pub(super) struct PathField {
     fresh: bool,
     /// Whether the reason is to be told.
     no_dialog: bool,
+    /// The document's own path, which may be replaced without asking.
+    own: Option<PathBuf>,
+    /// A file that is there already: the next Enter replaces it.
+    replaces: Option<PathBuf>,
 }
 
 /// How the typed path ended.
@@ -106,12 +112,44 @@ pub(super) enum Typed {
 }
 
 impl PathField {
-    pub(super) fn new(purpose: Purpose, text: String, no_dialog: bool) -> PathField {
+    pub(super) fn new(
+        purpose: Purpose,
+        text: String,
+        own: Option<PathBuf>,
+        no_dialog: bool,
+    ) -> PathField {
         PathField {
             purpose,
             text,
             fresh: true,
             no_dialog,
+            own,
+            replaces: None,
+        }
+    }
+
+    /// The path to go on with; a file that would be lost must be asked for twice.
+    fn take(&mut self) -> Option<PathBuf> {
+        let typed = self.text.trim();
+        if typed.is_empty() {
+            return None;
+        }
+        let path = self.purpose.complete(PathBuf::from(typed));
+        let writes = self.purpose != Purpose::Open;
+        let asked = self.replaces.as_ref() == Some(&path);
+        if writes && !asked && self.own.as_ref() != Some(&path) && path.exists() {
+            self.replaces = Some(path);
+            self.fresh = true;
+            return None;
+        }
+        Some(path)
+    }
+
+    fn verb(&self) -> &'static str {
+        if self.replaces.is_some() {
+            "Replace"
+        } else {
+            self.purpose.verb()
         }
     }
 
@@ -140,12 +178,21 @@ impl PathField {
                     field.request_focus();
                 }
                 let entered = field.lost_focus() && ui.input(|i| i.key_pressed(Key::Enter));
+                if field.changed() {
+                    self.replaces = None;
+                }
+                if let Some(path) = &self.replaces {
+                    ui.horizontal(|ui| {
+                        signs::show(ui, Verdict::Open);
+                        let text = format!("{} is there already", path.display());
+                        ui.label(RichText::new(text).color(colors.verdict(Verdict::Open)));
+                    });
+                }
                 ui.add_space(2.0 * GRID);
                 ui.horizontal(|ui| {
-                    let go = filled(ui, self.purpose.verb()).clicked() || entered;
-                    let path = self.text.trim();
-                    if go && !path.is_empty() {
-                        result = Typed::Path(PathBuf::from(path));
+                    let go = filled(ui, self.verb()).clicked() || entered;
+                    if go && let Some(path) = self.take() {
+                        result = Typed::Path(path);
                     }
                     if quiet(ui, "Cancel").clicked() {
                         result = Typed::Cancelled;

@@ -3,6 +3,7 @@
 use chem::ink::Tone;
 use chem::pipeline::Verdict;
 use egui::epaint::text::{FontInsert, FontPriority, InsertFontFamily};
+use egui::text::{LayoutJob, TextFormat};
 use egui::{
     Color32, Context, CornerRadius, FontData, FontFamily, FontId, Margin, Shadow, Stroke,
     TextStyle, Theme, Vec2, Visuals, vec2,
@@ -107,6 +108,16 @@ pub(super) fn italic(size: f32) -> FontId {
 
 pub(super) fn bold(size: f32) -> FontId {
     FontId::new(size, FontFamily::Name("bold".into()))
+}
+
+/// Adds a symbol with its number as a true subscript, if there is more than one.
+pub(super) fn scripted(job: &mut LayoutJob, symbol: &str, n: usize, size: f32, color: Color32) {
+    job.append(symbol, 0.0, TextFormat::simple(upright(size), color));
+    if n > 1 {
+        let mut format = TextFormat::simple(upright(0.72 * size), color);
+        format.valign = egui::Align::BOTTOM;
+        job.append(&n.to_string(), 0.0, format);
+    }
 }
 
 /// Installs the faces and the look. The faces are there from the next frame on.

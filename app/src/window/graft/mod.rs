@@ -7,10 +7,11 @@ use super::sheet::{Ghost, View, beside, selection_rect};
 use super::theme::{self, Colors, GRID};
 use crate::command::Command;
 use crate::session::{Selection, Session};
+use chem::drawing::Drawing;
 use egui::text::{CCursor, CCursorRange};
 use egui::{
-    Area, CornerRadius, Event, Frame, Id, Key, Margin, Modifiers, Order, Rect, RichText, Stroke,
-    TextEdit, Ui, vec2,
+    Area, CornerRadius, Event, Frame, Id, Key, Margin, Modifiers, Order, Pos2, Rect, RichText,
+    Stroke, TextEdit, Ui, vec2,
 };
 use shape::Graft;
 
@@ -20,6 +21,8 @@ pub(super) struct Entry {
     text: String,
     /// Just opened: the caret is still to be put behind what was typed.
     fresh: bool,
+    /// Where it stands on the screen.
+    at: Option<Pos2>,
 }
 
 /// What the entry leads to in a frame.
@@ -51,9 +54,24 @@ pub(super) fn typed(ui: &Ui) -> Option<String> {
     })
 }
 
+/// Places on the screen that the entry had better not cover: atoms and the middles of bonds.
+fn busy(drawing: &Drawing, view: &View) -> Vec<Pos2> {
+    let m = drawing.molecule();
+    let middles = m.bonds().map(|b| {
+        let [p, q] = m.bond(b).ends.map(|a| drawing.point(a));
+        p.midpoint(q)
+    });
+    let places = drawing.points().iter().copied().chain(middles);
+    places.map(|p| view.to_screen(p)).collect()
+}
+
 impl Entry {
     pub(super) fn open(text: String) -> Entry {
-        Entry { text, fresh: true }
+        Entry {
+            text,
+            fresh: true,
+            at: None,
+        }
     }
 
     fn graft(&self, session: &Session) -> Result<Graft, String> {
@@ -72,7 +90,7 @@ impl Entry {
     pub(super) fn show(&mut self, ui: &Ui, session: &Session, view: &View, sheet: Rect) -> Outcome {
         let graft = self.graft(session);
         let colors = Colors::of(ui);
-        let size = vec2(232.0, 64.0);
+        let size = vec2(248.0, 96.0);
         let around = match session.selection().is_empty() {
             true => Rect::from_center_size(sheet.center(), vec2(0.0, 0.0)),
             false => selection_rect(session, view).expand(12.0),
@@ -83,9 +101,14 @@ impl Entry {
                 i.consume_key(Modifiers::NONE, Key::Escape),
             )
         });
+        let ghost = self.ghost(session);
+        let after = ghost.as_ref().map_or(&**session.drawing(), |g| &g.drawing);
+        let points = busy(after, view);
+        let at = beside(sheet, around, size, &points, self.at);
+        self.at = Some(at);
         let area = Area::new(Id::unique("graft"))
             .order(Order::Foreground)
-            .fixed_pos(beside(sheet, around, size));
+            .fixed_pos(at);
         let lost = area
             .show(ui.ctx(), |ui| {
                 let edge = match &graft {

@@ -22,6 +22,8 @@ use gesture::Gesture;
 #[derive(Debug)]
 struct Composed {
     revision: u64,
+    /// Box of the figure as it is printed, without locants and descriptors, in points.
+    page: kurbo::Rect,
     ink: Ink,
     triangles: Triangles,
 }
@@ -79,13 +81,6 @@ impl Sheet {
         focused.is_none() || focused == self.id
     }
 
-    /// Gives it the focus.
-    pub(super) fn focus(&self, ctx: &egui::Context) {
-        if let Some(id) = self.id {
-            ctx.memory_mut(|m| m.request_focus(id));
-        }
-    }
-
     /// Style of the figure.
     pub(super) fn style() -> &'static Style {
         &STYLES[0]
@@ -93,10 +88,9 @@ impl Sheet {
 
     /// Width of the figure in millimetres and its scale in percent, once it has been shown.
     pub(super) fn measures(&self) -> Option<(f64, f32)> {
-        let ink = &self.composed.as_ref()?.ink;
-        let margin = 2.0 * Self::style().page_margin;
-        let width = (ink.bounds.width() + margin) * 25.4 / 72.0;
-        Some((width, self.view.percent(ink.points_per_unit)))
+        let composed = self.composed.as_ref()?;
+        let width = composed.page.width() * 25.4 / 72.0;
+        Some((width, self.view.percent(composed.ink.points_per_unit)))
     }
 
     /// Shows the sheet and collects what is to be done.
@@ -143,9 +137,12 @@ impl Sheet {
             return;
         }
         let captions = captions(session.report());
-        let ink = ink::compose(session.drawing(), Self::style(), &captions, None);
+        let style = Self::style();
+        let ink = ink::compose(session.drawing(), style, &captions, None);
+        let bare = ink::compose(session.drawing(), style, &[], None).bounds;
         self.composed = Some(Composed {
             revision,
+            page: bare.inflate(style.page_margin, style.page_margin),
             triangles: Triangles::of(&ink),
             ink,
         });
@@ -166,7 +163,7 @@ impl Sheet {
         let Some(composed) = &self.composed else {
             return;
         };
-        self.frame(&painter, session, &composed.ink);
+        self.frame(&painter, session, composed);
         self.selection(&painter, session);
         let moved = self.gesture.preview(session, &self.view);
         let shown = moved.as_ref().or(ghost.map(|g| &g.drawing));

@@ -1,29 +1,28 @@
 //! What lies over the drawing and is not printed: frame, selection, ghosts, ranking letters.
 
-use super::Sheet;
 use super::gesture::{self, Gesture};
-use crate::session::Session;
+use super::{Composed, Sheet};
+use crate::session::{Selection, Session};
 use crate::window::theme::{self, LIGHT};
 use chem::drawing::Drawing;
-use chem::ink::Ink;
 use chem::molecule::{AtomIx, Order};
 use chem::pipeline::Place;
 use chem::stereo::{Kind, Ligand};
 use egui::{Align2, Painter, Pos2, Rect, Response, Stroke, StrokeKind, pos2, vec2};
 
 /// Space between the ink and the corner ticks, in screen points.
-const AIR: f32 = 18.0;
+const AIR: f32 = 12.0;
 /// Length of a corner tick.
 const TICK: f32 = 12.0;
 
 impl Sheet {
     /// Four corner ticks round the figure and its width in print beneath.
-    pub(super) fn frame(&self, painter: &Painter, session: &Session, ink: &Ink) {
+    pub(super) fn frame(&self, painter: &Painter, session: &Session, composed: &Composed) {
         if session.drawing().molecule().n_atoms() == 0 {
             self.empty(painter);
             return;
         }
-        let page = self.view.page(ink, Sheet::style()).expand(AIR);
+        let page = self.view.page(&composed.ink, composed.page).expand(AIR);
         let line = Stroke::new(1.0, LIGHT.muted.gamma_multiply(0.7));
         for (corner, x, y) in [
             (page.left_top(), 1.0, 1.0),
@@ -62,12 +61,16 @@ impl Sheet {
         let line = Stroke::new(1.5, LIGHT.accent);
         let fill = LIGHT.accent.gamma_multiply(0.10);
         let radius = self.ring(drawing);
-        for bond in &session.selection().bonds {
-            let [a, b] = drawing.molecule().bond(*bond).ends;
-            let ends = [a, b].map(|a| self.view.to_screen(drawing.point(a)));
+        let Selection { atoms, bonds } = session.selection();
+        for bond in bonds {
+            let ends = drawing.molecule().bond(*bond).ends;
+            // between two rings a bond needs no outline of its own
+            let held = ends.iter().all(|a| atoms.contains(a));
+            let line = if held { Stroke::NONE } else { line };
+            let ends = ends.map(|a| self.view.to_screen(drawing.point(a)));
             capsule(painter, ends, 0.55 * radius, fill, line);
         }
-        for atom in &session.selection().atoms {
+        for atom in atoms {
             let at = self.view.to_screen(drawing.point(*atom));
             painter.circle(at, radius, fill, line);
         }

@@ -3,7 +3,7 @@
 use super::super::paint::ToScreen;
 use chem::drawing::Drawing;
 use chem::geom::Point;
-use chem::ink::{Ink, Style};
+use chem::ink::Ink;
 use egui::{Pos2, Rect, Vec2, pos2, vec2};
 
 /// Screen points for a bond on an empty sheet.
@@ -49,7 +49,7 @@ impl View {
         let wide = (bounds.width() + 3.0 * bond) as f32;
         let high = (bounds.height() + 3.4 * bond) as f32;
         let fits = (self.rect.width() / wide).min(self.rect.height() / high);
-        let most = 1.3 * BOND / bond as f32;
+        let most = 1.4 * BOND / bond as f32;
         self.scale = fits.min(most).max(BONDS.0 / bond as f32);
     }
 
@@ -94,10 +94,9 @@ impl View {
         }
     }
 
-    /// The page of a figure on the screen: its ink and the margin of its style.
-    pub(super) fn page(&self, ink: &Ink, style: &Style) -> Rect {
+    /// A box of the figure on the screen; `b` in points.
+    pub(super) fn page(&self, ink: &Ink, b: kurbo::Rect) -> Rect {
         let to = self.of_ink(ink);
-        let b = ink.bounds.inflate(style.page_margin, style.page_margin);
         Rect::from_min_max(
             to.origin + to.scale * vec2(b.x0 as f32, b.y0 as f32),
             to.origin + to.scale * vec2(b.x1 as f32, b.y1 as f32),
@@ -110,16 +109,46 @@ impl View {
     }
 }
 
-/// A place beside a rectangle where another fits inside the sheet.
-pub(in super::super) fn beside(sheet: Rect, around: Rect, size: Vec2) -> Pos2 {
+/// A place near a rectangle, inside the sheet, where another of this size covers the fewest of
+/// `points`. `last` is kept as long as nothing is covered there.
+pub(in super::super) fn beside(
+    sheet: Rect,
+    around: Rect,
+    size: Vec2,
+    points: &[Pos2],
+    last: Option<Pos2>,
+) -> Pos2 {
     let gap = 20.0;
-    let y = (around.max.y + gap).min(sheet.max.y - size.y - gap);
-    let x = around.center().x - size.x / 2.0;
-    pos2(
-        x.clamp(
-            sheet.min.x + gap,
-            (sheet.max.x - size.x - gap).max(sheet.min.x + gap),
-        ),
-        y.max(sheet.min.y + gap),
-    )
+    let half = size / 2.0;
+    let room = sheet.shrink(gap).shrink2(half);
+    let inside = |c: Pos2| {
+        pos2(
+            c.x.clamp(room.min.x, room.max.x.max(room.min.x)),
+            c.y.clamp(room.min.y, room.max.y.max(room.min.y)),
+        )
+    };
+    let covered = |c: Pos2| {
+        let rect = Rect::from_center_size(c, size).expand(14.0);
+        points.iter().filter(|p| rect.contains(**p)).count()
+    };
+    if let Some(last) = last.filter(|l| covered(*l + half) == 0) {
+        return last;
+    }
+    // nearest first: beneath, above, right, left and the corners, then the same farther out
+    let steps = [
+        (0.0, 1.0),
+        (0.0, -1.0),
+        (1.0, 0.0),
+        (-1.0, 0.0),
+        (1.0, 1.0),
+        (-1.0, 1.0),
+        (1.0, -1.0),
+        (-1.0, -1.0),
+    ];
+    let centers = [gap, 80.0, 150.0].into_iter().flat_map(|far| {
+        let reach = around.size() / 2.0 + half + Vec2::splat(far);
+        steps.map(|(x, y)| inside(around.center() + vec2(x * reach.x, y * reach.y)))
+    });
+    let best = centers.min_by_key(|c| covered(*c));
+    best.unwrap_or(around.center()) - half
 }

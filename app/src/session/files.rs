@@ -3,7 +3,7 @@
 use chem::drawing::Drawing;
 use chem::format::{Record, WriteOptions, molfile, sdf, text};
 use std::fs;
-use std::io::{Read, Write};
+use std::io::{ErrorKind, Read, Write};
 use std::path::{Path, PathBuf};
 
 /// Largest file that is read, in bytes; a drawing needs a few thousand.
@@ -40,7 +40,7 @@ fn notice(record: &Record, n_records: usize) -> String {
     let mut parts = Vec::new();
     if n_records > 1 {
         parts.push(format!(
-            "This is the first of {n_records} records; it is saved to a file of its own"
+            "This is the first of {n_records} records; saving writes it to a file of its own"
         ));
     }
     parts.extend(record.notices.iter().map(ToString::to_string));
@@ -51,7 +51,7 @@ fn notice(record: &Record, n_records: usize) -> String {
 #[derive(Debug, thiserror::Error)]
 pub enum FileError {
     /// The file system said no.
-    #[error("{} cannot be {verb}: {cause}", path.display())]
+    #[error("{} cannot be {verb}: {}", path.display(), plainly(cause))]
     System {
         /// The file.
         path: PathBuf,
@@ -74,6 +74,24 @@ pub enum FileError {
         /// Where and why.
         text: String,
     },
+}
+
+/// What the system said, with what to do where that is plain.
+fn plainly(cause: &std::io::Error) -> String {
+    match cause.kind() {
+        ErrorKind::NotFound => "there is no such file or folder; check the path".to_owned(),
+        ErrorKind::PermissionDenied => {
+            "the system does not permit it; choose another place or change the rights".to_owned()
+        }
+        ErrorKind::NotADirectory => "a part of the path is no folder; check the path".to_owned(),
+        ErrorKind::IsADirectory => "it is a folder, not a file".to_owned(),
+        ErrorKind::StorageFull => "the disk is full; make room or choose another".to_owned(),
+        _ => {
+            let text = cause.to_string();
+            // the name of the passing file beside it helps nobody
+            text.split(" at path").next().unwrap_or(&text).to_owned()
+        }
+    }
 }
 
 /// Reads the first record of a molfile or SD file.

@@ -1,1 +1,0 @@
-//! A requirement line as typed: its grammar, notes and errors.

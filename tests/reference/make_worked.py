@@ -35,6 +35,7 @@ SOURCES = {
     "STER": "IUPAC-IUB 1989, Nomenclature of steroids",
     "MI": "The Merck Index",
     "CRC": "CRC Handbook of Chemistry and Physics",
+    "HAN": "Hanson et al. 2018, J. Chem. Inf. Model. 58, 1755 (Rule 1b)",
     "ALD": "name in general use in the journals for this reagent",
 }
 

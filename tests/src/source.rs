@@ -26,7 +26,8 @@ fn walk(folder: &Path, endings: &[&str], found: &mut Vec<PathBuf>) {
             if !matches!(name.as_ref(), "target" | ".git" | "__pycache__") {
                 walk(&path, endings, found);
             }
-        } else {
+        } else if name != ".git" {
+            // in a second working tree that is a file
             let ending = path.extension().unwrap_or_default().to_string_lossy();
             if endings.contains(&ending.as_ref()) {
                 found.push(path);

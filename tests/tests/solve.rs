@@ -178,14 +178,14 @@ fn turn_fault(before: &Drawing, ends: [usize; 2], after: &Drawing) -> Option<Str
 
 #[test]
 fn double_bonds_are_turned_and_nothing_else_moves() {
-    // its centre is one only as long as the two double bonds differ (Rule 3)
-    let bound = "seqcis over seqtrans";
+    // their centres are such only as long as the two double bonds differ (Rule 3)
+    let bound = ["seqcis over seqtrans", "two propenyl arms"];
     let (mut misses, mut tried) = (Vec::new(), 0);
     for w in worked() {
         for (ends, carried) in w.labels.double_bonds(&w.drawing) {
             let m = w.drawing.molecule();
             let is_open = side(m, AtomIx::new(ends[0] - 1), AtomIx::new(ends[1] - 1)).is_some();
-            if w.title == bound || !is_open {
+            if bound.contains(&w.title.as_str()) || !is_open {
                 continue;
             }
             tried += 1;

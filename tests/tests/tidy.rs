@@ -55,7 +55,9 @@ fn module_name(path: &Path) -> String {
             .into_owned()
     };
     let above = || path.parent().map(module_name).unwrap_or_default();
-    let is_test = path.parent().is_some_and(|folder| folder.ends_with("tests"));
+    let is_test = path
+        .parent()
+        .is_some_and(|folder| folder.ends_with("tests"));
     match name(path).as_str() {
         "mod" | "tests" => above(),
         _ if is_test => above(),

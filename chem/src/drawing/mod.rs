@@ -296,7 +296,7 @@ pub(crate) mod tests {
         let m = build(&["C", "C"], &[(0, 1, 1)]);
         let points = vec![Point::ORIGIN, Point::new(1.0, 0.0)];
         assert_eq!(
-            Drawing::new(m.clone(), points.clone(), vec![Mark::Crossed]).err(),
+            Drawing::new(m.clone(), points, vec![Mark::Crossed]).err(),
             Some(DrawingError::Crossed(BondIx::new(0)))
         );
         assert_eq!(

@@ -9,7 +9,7 @@ use crate::solve::Refusal;
 use crate::solve::require::Requirement;
 use crate::solve::search::{Goal, SearchError, search};
 use crate::solve::turn::{Geometry, turn};
-use crate::stereo::{Configuration, Descriptor, Focus, Kind, Unit, UnitIx, Units};
+use crate::stereo::{Configuration, Focus, Unit, UnitIx, Units};
 use crate::wedge::{self, Target};
 
 /// The drawing that carries the requirement, with the least change; places of which nothing is asked
@@ -45,7 +45,7 @@ fn goals(units: &Units, requirement: &Requirement) -> Result<Vec<Goal>, Refusal>
     for (atom, descriptor) in &requirement.wanted {
         let unit = units
             .iter()
-            .find(|(_, u)| u.atoms().contains(atom) && fits(u.kind, *descriptor))
+            .find(|(_, u)| u.atoms().contains(atom) && u.kind.can_carry(*descriptor))
             .ok_or_else(|| Refusal {
                 code: "not-stereogenic",
                 atoms: vec![*atom],
@@ -75,15 +75,6 @@ fn goals(units: &Units, requirement: &Requirement) -> Result<Vec<Goal>, Refusal>
         goals.push(goal);
     }
     Ok(goals)
-}
-
-/// Whether a kind of unit can carry such a letter at all.
-pub(crate) fn fits(kind: Kind, descriptor: Descriptor) -> bool {
-    use Descriptor as D;
-    match kind {
-        Kind::Tetrahedral => matches!(descriptor, D::R | D::S | D::LowerR | D::LowerS),
-        Kind::DoubleBond => matches!(descriptor, D::E | D::Z | D::LowerE | D::LowerZ),
-    }
 }
 
 /// A unit as a sentence names it.

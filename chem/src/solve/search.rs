@@ -170,3 +170,100 @@ fn try_all(
     }
     Err(SearchError::Conflict(all()))
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::cip::Limits;
+    use crate::molecule::Molecule;
+    use crate::molecule::tests::build;
+    use crate::perceive::Rings;
+    use crate::stereo::Units;
+
+    fn with_search(
+        molecule: &Molecule,
+        goals: &[(usize, char)],
+    ) -> Result<Vec<Option<Descriptor>>, SearchError> {
+        let rings = Rings::find(molecule);
+        let units = Units::find(molecule, &rings);
+        let ranker = Ranker::new(molecule, &rings, &units, Limits::default());
+        let goals: Vec<Goal> = goals
+            .iter()
+            .map(|(atom, letter)| Goal {
+                unit: units
+                    .center_at(crate::molecule::AtomIx::new(*atom))
+                    .unwrap(),
+                descriptor: Descriptor::from_letter(*letter).unwrap(),
+            })
+            .collect();
+        let start = vec![Configuration::Open; units.len()];
+        let found = search(&ranker, &start, &goals)?;
+        Ok(goals
+            .iter()
+            .map(|g| letter(&ranker.label_defined(&found), g.unit).ok())
+            .collect())
+    }
+
+    /// Pentane-2,3,4-triol: 2 and 4 rank by constitution, 3 by their letters.
+    fn triol() -> Molecule {
+        build(
+            &["C", "C", "C", "C", "C", "O", "O", "O"],
+            &[
+                (0, 1, 1),
+                (1, 2, 1),
+                (2, 3, 1),
+                (3, 4, 1),
+                (1, 5, 1),
+                (2, 6, 1),
+                (3, 7, 1),
+            ],
+        )
+    }
+
+    // IUPAC 2013 recommendations, P-93.1.1: a pseudoasymmetric center between an R and an S center
+    #[test]
+    fn pseudoasymmetric_centers_follow_their_neighbors() {
+        for middle in ['r', 's'] {
+            let carried = with_search(&triol(), &[(1, 'R'), (2, middle), (3, 'S')]).unwrap();
+            assert_eq!(carried[1].map(Descriptor::letter), Some(middle));
+        }
+    }
+
+    #[test]
+    fn the_middle_of_equal_centers_carries_nothing() {
+        assert!(matches!(
+            with_search(&triol(), &[(1, 'R'), (2, 'r'), (3, 'R')]),
+            Err(SearchError::Alike(_))
+        ));
+        assert!(matches!(
+            with_search(&triol(), &[(1, 'R'), (2, 'R'), (3, 'S')]),
+            Err(SearchError::OtherLetter(_, Descriptor::LowerR | Descriptor::LowerS))
+        ));
+    }
+
+    // 4-methylcyclohexan-1-ol: r,r and s,s exist, r,s does not
+    #[test]
+    fn letters_of_a_ring_go_together() {
+        let ring = build(
+            &["C", "C", "C", "C", "C", "C", "O", "C"],
+            &[
+                (0, 1, 1),
+                (1, 2, 1),
+                (2, 3, 1),
+                (3, 4, 1),
+                (4, 5, 1),
+                (5, 0, 1),
+                (0, 6, 1),
+                (3, 7, 1),
+            ],
+        );
+        for both in ['r', 's'] {
+            let carried = with_search(&ring, &[(0, both), (3, both)]).unwrap();
+            assert!(carried.iter().all(|d| d.map(Descriptor::letter) == Some(both)));
+        }
+        assert!(matches!(
+            with_search(&ring, &[(0, 'r'), (3, 's')]),
+            Err(SearchError::Conflict(units)) if units.len() == 2
+        ));
+    }
+}

@@ -36,6 +36,15 @@ impl Kind {
             Kind::DoubleBond => "double-bond",
         }
     }
+
+    /// Whether a unit of this kind can carry such a letter at all.
+    pub fn can_carry(self, descriptor: Descriptor) -> bool {
+        use Descriptor as D;
+        match self {
+            Kind::Tetrahedral => matches!(descriptor, D::R | D::S | D::LowerR | D::LowerS),
+            Kind::DoubleBond => matches!(descriptor, D::E | D::Z | D::LowerE | D::LowerZ),
+        }
+    }
 }
 
 /// What holds the ligands of a unit.

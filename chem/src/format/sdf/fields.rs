@@ -3,63 +3,124 @@
 use super::super::lines::Lines;
 use super::super::{Field, Notice};
 
-/// The data fields of a record, in order. `line` is the number of the first line of `data`.
-pub fn fields(data: &str, line: usize, notices: &mut Vec<Notice>) -> Vec<Field> {
-    let mut list: Vec<Field> = Vec::new();
+/// What a line behind the molfile is.
+enum Item<'a> {
+    /// The header of a field.
+    Header(&'a str, Option<&'a str>),
+    /// A line of its value.
+    Value(&'a str),
+    /// The blank line that ends it, or one more.
+    Blank,
+    /// Text outside of any field.
+    Stray(&'a str),
+}
+
+/// Goes through the lines of `data`, telling what each is; `line` is the number of the first.
+fn walk<'a>(
+    data: &'a str,
+    line: usize,
+    notices: &mut Vec<Notice>,
+    mut visit: impl FnMut(Item<'a>),
+) {
     let mut lines = Lines::new(data, line);
+    let mut notice = |line, code, text: String| notices.push(Notice::new(line, code, text));
     let mut open = false;
     loop {
         let number = lines.number();
         let Some(line) = lines.next() else { break };
-        let is_header = line.starts_with('>') && (!open || name(line).is_some());
-        if is_header {
+        let blank = line.trim().is_empty();
+        if line.starts_with('>') && (!open || name(line).is_some()) {
+            let name = name(line);
             if open {
-                notices.push(Notice::new(
-                    number,
-                    "field-end",
-                    "a blank line is missing before this data field".to_owned(),
-                ));
+                let text = "a blank line is missing before this data field".to_owned();
+                notice(number, "field-end", text);
             }
-            if name(line).is_none() {
-                notices.push(Notice::new(
-                    number,
-                    "field-name",
-                    "a data field without a name was kept".to_owned(),
-                ));
+            if name.is_none() {
+                let text = "a data field without a name was kept".to_owned();
+                notice(number, "field-name", text);
             }
-            list.push(Field {
-                header: line.to_owned(),
-                name: name(line).unwrap_or_default().to_owned(),
-                value: String::new(),
-            });
             open = true;
-        } else if line.is_empty() {
+            visit(Item::Header(line, name));
+        } else if line.is_empty() || !open && blank {
             open = false;
-        } else if open && line.trim().is_empty() && lines.peek().is_some_and(|l| l.starts_with('>'))
-        {
+            visit(Item::Blank);
+        } else if blank && lines.peek().is_some_and(|l| l.starts_with('>')) {
             open = false;
-            notices.push(Notice::new(
-                number,
-                "field-end",
-                "a line of blanks was taken for the blank line that ends a data field".to_owned(),
-            ));
-        } else if let (true, Some(field)) = (open, list.last_mut()) {
+            let text = "a line of blanks was taken for the blank line that ends a data field";
+            notice(number, "field-end", text.to_owned());
+            visit(Item::Blank);
+        } else if open {
+            visit(Item::Value(line));
+        } else {
+            let text = format!("a line outside of any data field: {}", line.trim_end());
+            notice(number, "stray-line", text);
+            visit(Item::Stray(line));
+        }
+    }
+}
+
+/// The data fields of a record, in order. `line` is the number of the first line of `data`.
+pub fn fields(data: &str, line: usize, notices: &mut Vec<Notice>) -> Vec<Field> {
+    let mut list: Vec<Field> = Vec::new();
+    walk(data, line, notices, |item| match (item, list.last_mut()) {
+        (Item::Header(header, name), _) => list.push(Field {
+            header: header.to_owned(),
+            name: name.unwrap_or_default().to_owned(),
+            value: String::new(),
+        }),
+        (Item::Value(line), Some(field)) => {
             if !field.value.is_empty() {
                 field.value.push('\n');
             }
             field.value.push_str(line);
-        } else if !line.trim().is_empty() {
-            notices.push(Notice::new(
-                number,
-                "stray-line",
-                format!(
-                    "a line outside of any data field was left out: {}",
-                    line.trim_end()
-                ),
-            ));
         }
-    }
+        _ => {}
+    });
     list
+}
+
+/// The text of the data fields without those of some names; all other lines stay as they are. Lines end
+/// with line feeds; a blank line ends the last field.
+pub fn without(data: &str, names: &[&str]) -> String {
+    let mut out = String::with_capacity(data.len());
+    let mut keep = true;
+    let mut push = |line: &str| {
+        out.push_str(line);
+        out.push('\n');
+    };
+    let mut ended = true;
+    walk(data, 1, &mut Vec::new(), |item| match item {
+        Item::Header(header, name) => {
+            if keep && !ended {
+                push("");
+            }
+            keep = name.is_none_or(|n| !names.contains(&n));
+            ended = !keep;
+            if keep {
+                push(header);
+            }
+        }
+        Item::Value(line) if keep => push(line),
+        Item::Blank => {
+            if keep {
+                push("");
+            }
+            (keep, ended) = (true, true);
+        }
+        Item::Stray(line) => push(line),
+        Item::Value(_) => {}
+    });
+    if keep && !ended {
+        push("");
+    }
+    out
+}
+
+/// One data field as text, with the blank line that ends it.
+pub fn field_text(name: &str, value: &str) -> String {
+    let mut out = String::new();
+    write(&Field::new(name, value), &mut out);
+    out
 }
 
 /// The name between `<` and the last `>` of a header line.

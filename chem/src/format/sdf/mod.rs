@@ -6,7 +6,7 @@ mod stream;
 use super::lines::Lines;
 use super::{ReadError, Record, WriteError, WriteOptions, molfile};
 
-pub use fields::fields;
+pub use fields::{field_text, fields, without};
 pub use stream::{Chunk, Reader};
 
 /// A record as a piece of the text, not understood yet.

@@ -136,3 +136,17 @@ fn what_is_written_is_read_back() {
     assert!(again.notices.is_empty());
     assert_eq!(write(&again, &WriteOptions::default()).unwrap(), text);
 }
+
+#[test]
+fn some_fields_can_be_left_out() {
+    let data = "> <A>\r\n1\r\n\r\n> <B>\r\n2\r\n3\r\n\r\n> <C>\r\n4\r\n";
+    assert_eq!(without(data, &["B"]), "> <A>\n1\n\n> <C>\n4\n\n");
+    assert_eq!(without(data, &["A", "C"]), "> <B>\n2\n3\n\n");
+    assert_eq!(without(data, &["A", "B", "C"]), "");
+    assert_eq!(
+        without("> <A>\n> <B>\n\nstray\n", &["A"]),
+        "> <B>\n\nstray\n"
+    );
+    assert_eq!(without("> <A>\n1\n> <B>\n2", &["B"]), "> <A>\n1\n\n");
+    assert_eq!(field_text("A", "1"), "> <A>\n1\n\n");
+}

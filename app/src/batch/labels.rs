@@ -1,0 +1,216 @@
+//! `labels`: what each drawing carries.
+
+use super::records::{self, FAULT, Piece};
+use super::{Failure, Status, say};
+use crate::args::Labels;
+use crate::files::{Source, Target};
+use chem::format::{Notice, ReadError};
+use chem::pipeline::{self, Place};
+use chem::solve::require::Requirement;
+use chem::stereo::Ligand;
+use serde::Serialize;
+use std::path::Path;
+
+/// One record's answer.
+struct Answer {
+    /// The line for standard output, without its end; none for a record that cannot be read.
+    line: Option<String>,
+    error: Option<String>,
+    notices: Vec<Notice>,
+}
+
+pub(super) fn run(args: &Labels) -> Result<Status, Failure> {
+    let mut out = Target::create(Path::new("-"))?;
+    let mut status = Status::Good;
+    let many = args.files.len() > 1;
+    for path in &args.files {
+        // a file that cannot be used does not keep the others from it
+        match one_file(path, many, args, &mut out) {
+            Ok(ended) => status = status.max(ended),
+            Err(Failure::File(crate::files::FileError::Write { name, error })) => {
+                return Err(crate::files::FileError::Write { name, error }.into());
+            }
+            Err(failure) => {
+                say(&failure.to_string());
+                status = Status::Unusable;
+            }
+        }
+    }
+    out.save()?;
+    Ok(status)
+}
+
+fn one_file(path: &Path, many: bool, args: &Labels, out: &mut Target) -> Result<Status, Failure> {
+    let mut source = Source::open(path)?;
+    let name = source.name.clone();
+    if many && !args.json {
+        out.write(format!("# {name}\n").as_bytes())?;
+    }
+    let file = many.then_some(name.as_str());
+    let (mut good, mut bad) = (0usize, 0usize);
+    records::each(
+        &mut source,
+        args.threads,
+        |piece| {
+            if args.json {
+                in_json(piece, file)
+            } else {
+                in_table(piece)
+            }
+        },
+        |piece, answer| {
+            let number = piece.number;
+            let answer = answer.unwrap_or_else(|| Answer {
+                line: args.json.then(|| fault_in_json(&piece, file)),
+                error: Some(FAULT.to_owned()),
+                notices: Vec::new(),
+            });
+            for notice in &answer.notices {
+                say(&format!("{name}: record {number}, {notice}"));
+            }
+            match &answer.error {
+                Some(error) => {
+                    bad += 1;
+                    say(&format!("{name}: record {number}, {error}"));
+                }
+                None => good += 1,
+            }
+            if let Some(line) = answer.line {
+                out.write(line.as_bytes())?;
+                out.write(b"\n")?;
+            }
+            Ok(())
+        },
+    )?;
+    Ok(match (good, bad) {
+        (_, 0) => Status::Good,
+        (0, _) => Status::Unusable,
+        _ => Status::Wrong,
+    })
+}
+
+fn in_table(piece: &Piece) -> Answer {
+    let record = match piece.text().and_then(|text| text.read(piece)) {
+        Ok(record) => record,
+        Err(error) => {
+            return Answer {
+                line: None,
+                error: Some(error.to_string()),
+                notices: Vec::new(),
+            };
+        }
+    };
+    let labels = pipeline::labels_line(&record.drawing);
+    Answer {
+        line: Some(format!("{}\t{}\t{labels}", piece.number, piece.title())),
+        error: None,
+        notices: record.notices,
+    }
+}
+
+fn in_json(piece: &Piece, file: Option<&str>) -> Answer {
+    let read = piece.text().and_then(|text| text.read(piece));
+    let (units, error, notices) = match read {
+        Ok(record) => {
+            let report = pipeline::report(&record.drawing, &Requirement::default());
+            let units = report.places.iter().map(UnitJson::new).collect();
+            (units, None, record.notices)
+        }
+        Err(error) => (Vec::new(), Some(error), Vec::new()),
+    };
+    let json = RecordJson {
+        file,
+        record: piece.number,
+        title: piece.title(),
+        units,
+        error: error.as_ref().map(ErrorJson::new),
+    };
+    Answer {
+        line: serde_json::to_string(&json).ok(),
+        error: error.map(|e| e.to_string()),
+        notices,
+    }
+}
+
+fn fault_in_json(piece: &Piece, file: Option<&str>) -> String {
+    let json = RecordJson {
+        file,
+        record: piece.number,
+        title: piece.title(),
+        units: Vec::new(),
+        error: Some(ErrorJson {
+            line: piece.line,
+            columns: None,
+            text: FAULT.to_owned(),
+        }),
+    };
+    serde_json::to_string(&json).unwrap_or_default()
+}
+
+#[derive(Serialize)]
+struct RecordJson<'a> {
+    #[serde(skip_serializing_if = "Option::is_none")]
+    file: Option<&'a str>,
+    record: usize,
+    title: String,
+    units: Vec<UnitJson>,
+    error: Option<ErrorJson>,
+}
+
+#[derive(Serialize)]
+struct ErrorJson {
+    line: usize,
+    columns: Option<(usize, usize)>,
+    text: String,
+}
+
+impl ErrorJson {
+    fn new(error: &ReadError) -> ErrorJson {
+        ErrorJson {
+            line: error.line,
+            columns: error.columns,
+            text: format!("{}. {}", error.reason, error.reason.remedy()),
+        }
+    }
+}
+
+#[derive(Serialize)]
+struct UnitJson {
+    kind: &'static str,
+    atoms: Vec<usize>,
+    carries: Option<String>,
+    sense: &'static str,
+    verdict: &'static str,
+    rule: Option<&'static str>,
+    ranking: Vec<LigandJson>,
+    #[serde(skip_serializing_if = "String::is_empty")]
+    note: String,
+}
+
+/// A drawn atom by its number from 1, or what is not drawn by a word.
+#[derive(Serialize)]
+#[serde(untagged)]
+enum LigandJson {
+    Atom(usize),
+    Word(&'static str),
+}
+
+impl UnitJson {
+    fn new(place: &Place) -> UnitJson {
+        let ligand = |ligand: &Ligand| match ligand {
+            Ligand::Atom(a) => LigandJson::Atom(a.index() + 1),
+            Ligand::Hydrogen => LigandJson::Word("H"),
+            Ligand::LonePair => LigandJson::Word("lone pair"),
+        };
+        UnitJson {
+            kind: place.kind.name(),
+            atoms: place.atoms.iter().map(|a| a.index() + 1).collect(),
+            carries: place.carries.map(|d| d.to_string()),
+            sense: place.sense.name(),
+            verdict: place.verdict.name(),
+            rule: place.rule.map(chem::cip::Rule::name),
+            ranking: place.ranking.iter().map(ligand).collect(),
+            note: place.note.clone(),
+        }
+    }
+}

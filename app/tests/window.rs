@@ -53,7 +53,7 @@ fn click(h: &mut Driven<'_>, at: Pos2) {
     h.drag_at(at);
     h.drop_at(at);
     // a second press within the time of a double click would be one
-    h.run_steps(30);
+    h.run_steps(5);
 }
 
 fn at(h: &Driven<'_>, atom: usize) -> Pos2 {

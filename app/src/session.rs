@@ -271,10 +271,7 @@ impl Session {
         self.settle();
         self.stop_work();
         let (drawing, map) = self.drawing().apply(edits)?;
-        let line = match &self.requirement {
-            Ok(requirement) => line::follow(requirement, &map),
-            Err(_) => self.line().to_owned(),
-        };
+        let line = line::follow(self.line(), &map);
         self.selection = self.selection.renumbered(&map);
         self.history.push(name, Arc::new(drawing), line);
         self.read();

@@ -93,6 +93,8 @@ impl Band {
                 self.must(ui, session, out);
             });
             ui.vertical(|ui| {
+                // the verdict and its button must stay in sight
+                ui.set_max_width((ui.available_width() - 352.0).max(120.0));
                 carries(ui, session);
             });
             ui.vertical(|ui| {
@@ -121,12 +123,14 @@ impl Band {
             let job = set(text, LINE, colors.ink, bad);
             ui.fonts_mut(|f| f.layout_job(job))
         };
-        let hint = RichText::new("(1R,2S)").font(theme::italic(LINE));
+        let hint = RichText::new("descriptors, such as (1R,2S)").font(theme::upright(TEXT + 3.0));
         let id = Id::unique("must carry");
         let response = TextEdit::singleline(&mut self.text)
             .id(id)
-            .hint_text(hint.color(colors.muted.gamma_multiply(0.6)))
+            .hint_text(hint.color(colors.muted))
             .font(theme::upright(LINE))
+            .align(egui::Align2::LEFT_CENTER)
+            .min_size(vec2(0.0, 40.0))
             .frame(Frame::NONE)
             .margin(egui::Margin::ZERO)
             .desired_width(f32::INFINITY)
@@ -177,7 +181,7 @@ fn caption(ui: &mut Ui, text: &str) -> Response {
 /// The descriptor line of the drawing, each descriptor in the color of its verdict.
 fn carries(ui: &mut Ui, session: &Session) {
     let colors = Colors::of(ui);
-    let caption = caption(ui, "carries");
+    caption(ui, "carries");
     let line = session.report().descriptor_line();
     let job = if line.is_empty() {
         LayoutJob::simple_singleline("nothing yet".to_owned(), theme::upright(LINE), colors.muted)
@@ -189,11 +193,10 @@ fn carries(ui: &mut Ui, session: &Session) {
     } else {
         line
     };
-    let response = ui.add(egui::Label::new(job).extend());
+    let response = ui.add(egui::Label::new(job).truncate());
     response.widget_info(|| {
         egui::WidgetInfo::labeled(egui::Role::Label, true, format!("carries {spoken}"))
     });
-    let _ = response.labelled_by(caption.id);
 }
 
 fn carried_job(places: &[Place], colors: &Colors) -> LayoutJob {

@@ -6,6 +6,8 @@ use crate::args::Place;
 use crate::files::{Source, Target, name_of, same_file};
 use chem::format::{Notice, Record, WriteOptions, molfile, sdf};
 use chem::pipeline;
+use chem::solve::line;
+use chem::solve::require::Requirement;
 use std::path::Path;
 
 /// Data fields that this verb writes; those of an earlier run are replaced.
@@ -45,8 +47,8 @@ struct Placed {
     /// Whether the record has the data field that holds its requirement.
     asked: bool,
     notices: Vec<Notice>,
-    /// The requirement line given for all records cannot be read.
-    fatal: Option<(usize, String)>,
+    /// Whether the record itself can be read.
+    readable: bool,
 }
 
 impl Placed {
@@ -58,14 +60,17 @@ impl Placed {
             reason: Some(reason),
             asked,
             notices: Vec::new(),
-            fatal: None,
+            readable: true,
         }
     }
 }
 
 pub(super) fn run(args: &Place) -> Result<Status, Failure> {
     let wish = match (&args.carry, &args.carry_field) {
-        (Some(line), _) => Wish::Line(line),
+        (Some(line), _) => {
+            check(line)?;
+            Wish::Line(line)
+        }
         (None, Some(field)) => Wish::Field(field),
         (None, None) => {
             return Err(Failure::Arguments(
@@ -79,6 +84,7 @@ pub(super) fn run(args: &Place) -> Result<Status, Failure> {
         name: source.name.clone(),
         to_sdf: is_named_sdf(&args.out),
         counts: [0; 3],
+        read_any: false,
         asked: false,
     };
     // in UTC: the header has no room for a time zone
@@ -90,13 +96,6 @@ pub(super) fn run(args: &Place) -> Result<Status, Failure> {
         |piece| one(piece, &wish, &options),
         |piece, placed| {
             let placed = placed.unwrap_or_else(|| Placed::cannot(FAULT.to_owned(), true));
-            if let (Some((column, text)), Wish::Line(line)) = (&placed.fatal, &wish) {
-                return Err(Failure::Carry {
-                    line: (*line).to_owned(),
-                    column: *column,
-                    text: text.clone(),
-                });
-            }
             writer.take(&piece, &placed)
         },
     )?;
@@ -110,6 +109,19 @@ pub(super) fn run(args: &Place) -> Result<Status, Failure> {
     writer.finish(&name_of(&args.out, "standard output"), replaces)
 }
 
+/// Refuses a line for all records that cannot be read at all, and tells what was noticed in it.
+fn check(line: &str) -> Result<(), Failure> {
+    let read = line::read(line).map_err(|error| Failure::Carry {
+        line: line.to_owned(),
+        column: error.column,
+        text: error.text,
+    })?;
+    for note in read.notes.iter().filter(|note| note.is_warning()) {
+        say(&format!("--carry '{line}': {}", note.text()));
+    }
+    Ok(())
+}
+
 fn is_named_sdf(path: &Path) -> bool {
     path.extension()
         .is_some_and(|e| e.eq_ignore_ascii_case("sdf") || e.eq_ignore_ascii_case("sd"))
@@ -119,7 +131,11 @@ fn is_named_sdf(path: &Path) -> bool {
 fn one(piece: &Piece, wish: &Wish<'_>, options: &WriteOptions) -> Placed {
     let record = match piece.text().and_then(|text| text.read(piece)) {
         Ok(record) => record,
-        Err(error) => return Placed::cannot(error.to_string(), true),
+        Err(error) => {
+            let mut placed = Placed::cannot(error.to_string(), true);
+            placed.readable = false;
+            return placed;
+        }
     };
     let (line, asked) = match wish {
         Wish::Line(line) => ((*line).to_owned(), true),
@@ -132,28 +148,19 @@ fn one(piece: &Piece, wish: &Wish<'_>, options: &WriteOptions) -> Placed {
     let mut placed = carry(record, &line, options);
     placed.asked = asked;
     placed.notices.splice(0..0, notices);
-    if let Wish::Field(_) = wish {
-        placed.fatal = None;
-    }
     placed
 }
 
 /// The record's drawing made to carry a line; an empty line asks nothing.
 fn carry(record: Record, line: &str, options: &WriteOptions) -> Placed {
     let requirement = if line.is_empty() {
-        chem::solve::require::Requirement::default()
+        Requirement::default()
     } else {
         match pipeline::understand(line, &record.drawing) {
             Ok(requirement) => requirement,
             Err(error) => {
                 let column = super::column_words(error.column);
-                let reason = format!("'{line}': {column}{}", error.text);
-                let mut placed = Placed::cannot(reason, true);
-                // what is wrong with the line itself is wrong for every record
-                if error.code.starts_with("E-") {
-                    placed.fatal = Some((error.column, error.text));
-                }
-                return placed;
+                return Placed::cannot(format!("'{line}': {column}{}", error.text), true);
             }
         }
     };
@@ -187,7 +194,7 @@ fn carry(record: Record, line: &str, options: &WriteOptions) -> Placed {
         reason: None,
         asked: true,
         notices,
-        fatal: None,
+        readable: true,
     }
 }
 
@@ -209,6 +216,8 @@ struct Writer {
     name: String,
     to_sdf: bool,
     counts: [usize; 3],
+    /// Whether any record could be read.
+    read_any: bool,
     asked: bool,
 }
 
@@ -223,6 +232,7 @@ impl Writer {
         }
         self.counts[placed.verdict as usize] += 1;
         self.asked |= placed.asked;
+        self.read_any |= placed.readable;
         for notice in &placed.notices {
             say(&format!("{}: record {}, {notice}", self.name, piece.number));
         }
@@ -286,7 +296,11 @@ impl Writer {
         if !self.to_sdf && agrees == 0 {
             // a molfile has no field to say that it does not carry what was asked
             say(&format!("{out_name}: not written"));
-            return Ok(Status::Wrong);
+            return Ok(if self.read_any {
+                Status::Wrong
+            } else {
+                Status::Unusable
+            });
         }
         self.out.save()?;
         if replaces {

@@ -162,7 +162,7 @@ impl Reader<'_> {
     fn greek(&mut self, start: usize, letter: char) -> Result<(), LineError> {
         let primes = self.primes(start + 1);
         let (joiner, next) = self.joiner(start + 1 + primes);
-        if matches!(self.at(next), Some('R' | 'S' | 'E' | 'Z'))
+        if matches!(self.at(next), Some('R' | 'S' | 'E' | 'Z' | 'Ξ' | '?'))
             && let Some((spelled, stop)) = self.descriptor(next)
         {
             let locant = Locant::single(Place::Greek { letter, primes });
@@ -230,7 +230,7 @@ impl Reader<'_> {
         Some(Err(self.error("E-NO-DESC", start, text)))
     }
 
-    /// An element as locant; only before R, S, r, s, E and Z, so that a lone P stays a descriptor.
+    /// An element as locant; only before R, S, r, s, E, Z and Ξ, so that a lone P stays a descriptor.
     fn element(&self, start: usize) -> Option<(Place, Option<char>, Spelled, usize)> {
         words::HETEROATOMS.into_iter().find_map(|symbol| {
             let mut end = start;
@@ -245,7 +245,10 @@ impl Reader<'_> {
             end = number.map_or(end, |(_, stop)| stop);
             let primes = self.primes(end);
             let (joiner, next) = self.joiner(end + primes);
-            if !matches!(self.at(next), Some('R' | 'S' | 'r' | 's' | 'E' | 'Z')) {
+            if !matches!(
+                self.at(next),
+                Some('R' | 'S' | 'r' | 's' | 'E' | 'Z' | 'Ξ' | '?')
+            ) {
                 return None;
             }
             let (spelled, stop) = self.descriptor(next)?;

@@ -115,9 +115,15 @@ impl Reader<'_> {
             error.code,
             "E-UNKNOWN" | "E-NO-DESC" | "E-LOCANT" | "E-EMPTY"
         );
-        let (word, _) = self.word(self.past_blanks(0));
-        let is_name =
-            words::is_name_like(self.slice(0, self.end)) && words::nearest(&word).is_none();
+        let line = self.slice(0, self.end);
+        // a line that starts with a slip of the keys is no name
+        let word: String = line
+            .split(|c| !c.is_alphabetic())
+            .find(|w| w.len() > 2)
+            .unwrap_or(&[])
+            .iter()
+            .collect();
+        let is_name = words::is_name_like(line) && words::nearest(&word).is_none();
         if unread && is_name && self.found.items.is_empty() {
             return LineError::whole(
                 "E-NO-STEREO",

@@ -1,1 +1,3 @@
+mod more;
+mod properties;
 mod tables;

@@ -3,7 +3,7 @@
 use crate::solve::line::{Item, Note, read};
 
 /// Line, status, items, sign of rotation, notes.
-type Accepted = (
+pub(super) type Accepted = (
     &'static str,
     &'static str,
     &'static [&'static str],
@@ -104,7 +104,7 @@ const ACCEPTED: &[Accepted] = &[
 ];
 
 /// Line, code, column.
-type Refused = (&'static str, &'static str, usize);
+pub(super) type Refused = (&'static str, &'static str, usize);
 
 /// Own rules, but for the order of locant and descriptor: IUPAC 1993 guide.
 #[rustfmt::skip]
@@ -155,7 +155,7 @@ const REFUSED: &[Refused] = &[
     ("(1R,2S)(1S)", "E-CONFLICT", 0),
 ];
 
-fn check_accepted(table: &[Accepted]) {
+pub(super) fn check_accepted(table: &[Accepted]) {
     let mut wrong = Vec::new();
     for (text, status, items, rotation, notes) in table {
         let got = match read(text) {
@@ -181,7 +181,7 @@ fn check_accepted(table: &[Accepted]) {
     );
 }
 
-fn check_refused(table: &[Refused]) {
+pub(super) fn check_refused(table: &[Refused]) {
     let mut wrong = Vec::new();
     for (text, code, column) in table {
         match read(text) {

@@ -1,3 +1,5 @@
+//! A session as the window drives it.
+
 use super::*;
 use chem::format::{Record, molfile};
 use chem::geom::Point;

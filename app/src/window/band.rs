@@ -328,7 +328,7 @@ fn says(ui: &mut Ui, session: &Session) {
     ui.horizontal(|ui| {
         ui.spacing_mut().item_spacing.x = GRID;
         // the room is kept, so that nothing moves while a line is typed
-        ui.set_min_height(24.0);
+        ui.set_min_height(28.0);
         let Some((verdict, text)) = said else {
             return;
         };

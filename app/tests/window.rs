@@ -442,3 +442,98 @@ fn every_sign_has_a_glyph_and_every_menu_opens() {
         h.run_steps(3);
     }
 }
+
+/// A small generator with a fixed start, so that a failure comes again.
+struct Chance(u64);
+
+impl Chance {
+    fn below(&mut self, n: usize) -> usize {
+        self.0 = self
+            .0
+            .wrapping_mul(6_364_136_223_846_793_005)
+            .wrapping_add(1_442_695_040_888_963_407);
+        (self.0 >> 33) as usize % n
+    }
+
+    fn place(&mut self) -> Pos2 {
+        Pos2::new(
+            30.0 + self.below(900) as f32,
+            150.0 + self.below(580) as f32,
+        )
+    }
+}
+
+/// Whatever is done in whatever order, the window stays up and its history leads back.
+#[test]
+fn wild_use_does_no_harm() {
+    const WORDS: [&str; 12] = [
+        "N", "O-", "=", "#", "-", "6", "6=", "3", "5=", "2+", "Qq", "é",
+    ];
+    const LINES: [&str; 8] = ["(1R", ",2S", "E", ")", "rac-", "8Z", "(((", "é*"];
+    const KEYS: [Key; 10] = [
+        Key::Enter,
+        Key::Escape,
+        Key::Delete,
+        Key::ArrowUp,
+        Key::ArrowDown,
+        Key::ArrowLeft,
+        Key::PageDown,
+        Key::PageUp,
+        Key::Tab,
+        Key::Backspace,
+    ];
+    const COMMANDS: [Key; 8] = [
+        Key::Z,
+        Key::Y,
+        Key::A,
+        Key::L,
+        Key::Enter,
+        Key::Num0,
+        Key::Plus,
+        Key::D,
+    ];
+    let mut h = drive(Window::demo());
+    let mut chance = Chance(2026);
+    for _ in 0..250 {
+        match chance.below(7) {
+            0 | 1 => {
+                let n = h.state().session().drawing().molecule().n_atoms();
+                let from = match n {
+                    0 => chance.place(),
+                    n => at(&h, chance.below(n)),
+                };
+                let to = from + 0.2 * (chance.place() - from);
+                drag(&mut h, from, to);
+            }
+            2 => {
+                let place = chance.place();
+                drag(&mut h, place, place + vec2(40.0, 25.0));
+            }
+            3 => type_on_sheet(&mut h, WORDS[chance.below(WORDS.len())]),
+            4 => press(&mut h, KEYS[chance.below(KEYS.len())]),
+            5 => {
+                h.key_press_modifiers(Modifiers::COMMAND, COMMANDS[chance.below(COMMANDS.len())]);
+                h.run_steps(2);
+            }
+            _ => {
+                h.get_by_label("must carry").focus();
+                h.run_steps(1);
+                type_on_sheet(&mut h, LINES[chance.below(LINES.len())]);
+            }
+        }
+    }
+    settled(&mut h);
+    let window = h.state();
+    let drawing = window.session().drawing();
+    assert_eq!(drawing.points().len(), drawing.molecule().n_atoms());
+    let mut steps = 0;
+    while h.state().session().undo_name().is_some() {
+        h.key_press_modifiers(Modifiers::COMMAND, Key::Z);
+        h.run_steps(1);
+        press(&mut h, Key::Escape);
+        steps += 1;
+        assert!(steps < 1000, "undo does not end");
+    }
+    assert_eq!(h.state().session().line(), "(1R,2R,4R,8E)");
+    assert_eq!(h.state().session().drawing().molecule().n_atoms(), 13);
+}

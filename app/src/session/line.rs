@@ -1,8 +1,28 @@
 //! The typed line after a step: its locants follow the atoms they mean.
 
-use chem::drawing::Renumbering;
+use chem::drawing::{Drawing, Renumbering};
 use chem::molecule::AtomIx;
+use chem::pipeline;
 use chem::solve::line::{self, Locant, Numbered, Place};
+use chem::solve::require::{Requirement, RequirementError};
+
+/// A line understood for a drawing. While it is typed, a bracket that is still open counts as closed, so
+/// that marks follow from the first descriptor on.
+///
+/// # Errors
+/// What is wrong with the line; of an open bracket, what is wrong inside it.
+pub(super) fn understand(
+    text: &str,
+    drawing: &Drawing,
+    typing: bool,
+) -> Result<Requirement, RequirementError> {
+    let plain = pipeline::understand(text, drawing);
+    let n = |c: char| text.matches(c).count();
+    if plain.is_ok() || !typing || n('(') != n(')') + 1 {
+        return plain;
+    }
+    pipeline::understand(&format!("{text})"), drawing)
+}
 
 /// The line for the atoms' new numbers; what was asked of an atom that is gone is asked no more. A
 /// line whose atoms kept their numbers stays as it was typed, and so does one that cannot be read.
@@ -69,7 +89,7 @@ fn number(before: u32, map: &Renumbering) -> Option<u32> {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use chem::drawing::{Drawing, Edit};
+    use chem::drawing::Edit;
     use chem::element::Element;
     use chem::geom::Point;
     use chem::molecule::Atom;

@@ -77,6 +77,12 @@ fn bad_token(text: &str, error: &RequirementError) -> std::ops::Range<usize> {
     start..end.max(start + first)
 }
 
+/// Whether what is wrong is only the last token of a line that is still being typed.
+fn is_unfinished(session: &Session, error: &RequirementError) -> bool {
+    let line = session.line();
+    session.is_typing() && bad_token(line, error).end >= line.trim_end().len()
+}
+
 impl Band {
     /// Puts the caret in the line.
     pub(super) fn focus(&mut self) {
@@ -116,7 +122,10 @@ impl Band {
             self.text = session.line().to_owned();
         }
         let error = session.requirement().err().cloned();
-        let wrong = colors.verdict(Verdict::Opposite);
+        let wrong = match &error {
+            Some(error) if is_unfinished(session, error) => colors.muted,
+            _ => colors.verdict(Verdict::Opposite),
+        };
         let mut layouter = |ui: &Ui, buffer: &dyn TextBuffer, _wrap: f32| {
             let text = buffer.as_str();
             let bad = error.as_ref().map(|e| (bad_token(text, e), wrong));
@@ -272,7 +281,11 @@ fn verdict(ui: &mut Ui, session: &Session) {
         let text = if session.is_searching() {
             "seeking marks …".to_owned()
         } else if !understood {
-            "not understood yet".to_owned()
+            if session.is_typing() {
+                "not finished yet".to_owned()
+            } else {
+                "not understood".to_owned()
+            }
         } else {
             words(&tally)
         };
@@ -304,6 +317,9 @@ fn make(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
 fn says(ui: &mut Ui, session: &Session) {
     let colors = Colors::of(ui);
     let said = match (session.requirement(), session.refusal()) {
+        (Err(error), _) if is_unfinished(session, error) => {
+            Some((Verdict::NotAsked, error.text.clone()))
+        }
         (Err(error), _) => Some((Verdict::Opposite, error.text.clone())),
         (Ok(_), Some(refusal)) => Some((Verdict::Contradiction, refusal.text.clone())),
         (Ok(_), None) => None,
@@ -312,7 +328,7 @@ fn says(ui: &mut Ui, session: &Session) {
     ui.horizontal(|ui| {
         ui.spacing_mut().item_spacing.x = GRID;
         // the room is kept, so that nothing moves while a line is typed
-        ui.set_min_height(24.0);
+        ui.set_min_height(28.0);
         let Some((verdict, text)) = said else {
             return;
         };

@@ -113,6 +113,8 @@ pub struct Session {
     path: Option<PathBuf>,
     saved: u64,
     requirement: Result<Requirement, RequirementError>,
+    /// What the report compares with: the requirement, or the last one understood while typing.
+    asked: Requirement,
     refusal: Option<Refusal>,
     report: Report,
     selection: Selection,
@@ -143,6 +145,7 @@ impl Session {
             path,
             saved: 0,
             requirement: Ok(Requirement::default()),
+            asked: Requirement::default(),
             refusal: None,
             report: Report { places: Vec::new() },
             selection: Selection::default(),
@@ -187,6 +190,11 @@ impl Session {
     /// What is wrong with the line.
     pub fn requirement(&self) -> Result<&Requirement, &RequirementError> {
         self.requirement.as_ref()
+    }
+
+    /// Whether the line is being typed.
+    pub fn is_typing(&self) -> bool {
+        self.typing.is_some()
     }
 
     /// Why the last search made no drawing; gone with the next change.
@@ -271,10 +279,7 @@ impl Session {
         self.settle();
         self.stop_work();
         let (drawing, map) = self.drawing().apply(edits)?;
-        let line = match &self.requirement {
-            Ok(requirement) => line::follow(requirement, &map),
-            Err(_) => self.line().to_owned(),
-        };
+        let line = line::follow(self.line(), &map);
         self.selection = self.selection.renumbered(&map);
         self.history.push(name, Arc::new(drawing), line);
         self.read();
@@ -308,7 +313,7 @@ impl Session {
         let name = if text.trim().is_empty() {
             "Clear the line".to_owned()
         } else {
-            format!("Carry {}", text.trim())
+            carry_name(text)
         };
         self.history.amend(&name, drawing, text.to_owned());
         self.read();
@@ -326,12 +331,20 @@ impl Session {
         let Some(typing) = self.typing.take() else {
             return;
         };
-        let line = self.line().to_owned();
         if self.requirement.is_err() {
-            let name = self.history.now().name.clone();
-            self.history.amend(&name, typing.base.clone(), line.clone());
+            let State { name, line, .. } = self.history.now().clone();
+            self.history.amend(&name, typing.base.clone(), line);
             self.read();
+        } else if let Ok(requirement) = &self.requirement
+            && requirement.text != self.line()
+            && !requirement.text.is_empty()
+        {
+            // the bracket was still open
+            let line = requirement.text.clone();
+            let drawing = self.drawing().clone();
+            self.history.amend(&carry_name(&line), drawing, line);
         }
+        let line = self.line().to_owned();
         let idle = self.pending.is_none() && line == typing.base_text;
         if idle && Arc::ptr_eq(self.drawing(), &typing.base) {
             self.history.drop_last();
@@ -347,7 +360,7 @@ impl Session {
             && !requirement.wanted.is_empty()
         {
             let requirement = requirement.clone();
-            let name = format!("Carry {}", self.line().trim());
+            let name = carry_name(self.line());
             let drawing = self.drawing().clone();
             self.give_work(drawing, requirement, Then::Step(name));
         }
@@ -464,16 +477,25 @@ impl Session {
     fn read(&mut self) {
         self.refusal = None;
         let drawing = self.drawing().clone();
+        let typing = self.typing.is_some();
         self.requirement = if self.line().trim().is_empty() {
             Ok(Requirement::default())
         } else {
-            pipeline::understand(self.line(), &drawing)
+            line::understand(self.line(), &drawing, typing)
         };
-        let nothing = Requirement::default();
-        let asked = self.requirement.as_ref().unwrap_or(&nothing);
-        self.report = pipeline::report(&drawing, asked);
+        match &self.requirement {
+            Ok(requirement) => self.asked = requirement.clone(),
+            // what was asked a key ago stays in view while a line is typed
+            Err(_) if typing => {}
+            Err(_) => self.asked = Requirement::default(),
+        }
+        self.report = pipeline::report(&drawing, &self.asked);
         self.selection.keep_within(&drawing);
     }
+}
+
+fn carry_name(line: &str) -> String {
+    format!("Carry {}", line.trim())
 }
 
 /// The drawing of a solution that changes something.

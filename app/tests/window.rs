@@ -53,7 +53,7 @@ fn click(h: &mut Driven<'_>, at: Pos2) {
     h.drag_at(at);
     h.drop_at(at);
     // a second press within the time of a double click would be one
-    h.run_steps(30);
+    h.run_steps(5);
 }
 
 fn at(h: &Driven<'_>, atom: usize) -> Pos2 {
@@ -95,6 +95,21 @@ fn settled(h: &mut Driven<'_>) {
         std::thread::sleep(std::time::Duration::from_millis(10));
     }
     panic!("the search does not end");
+}
+
+/// Presses the keys of a command that asks for a path, and types one.
+fn type_path(h: &mut Driven<'_>, modifiers: Modifiers, key: Key, path: &std::path::Path) {
+    h.key_press_modifiers(modifiers, key);
+    h.run_steps(3);
+    h.get_by_label("file path").focus();
+    h.run_steps(1);
+    h.key_press_modifiers(Modifiers::COMMAND, Key::A);
+    h.run_steps(1);
+    let text = path.to_string_lossy().into_owned();
+    h.get_by_label("file path").type_text(&text);
+    h.run_steps(1);
+    press(h, Key::Enter);
+    h.run_steps(2);
 }
 
 /// Alanine, drawn with the pen: atom 2 is the centre.
@@ -242,6 +257,94 @@ fn delete_removes_and_a_place_selects() {
 }
 
 #[test]
+fn a_drag_on_the_selection_moves_it_in_one_step() {
+    let mut h = alanine();
+    let (from, other) = (at(&h, 3), at(&h, 0));
+    click(&mut h, from);
+    let steps = h.state().session().undo_name().map(str::to_owned);
+    assert_ne!(steps.as_deref(), Some("Move"));
+    drag(&mut h, from, from + vec2(-50.0, 40.0));
+    assert!(at(&h, 3).distance(from + vec2(-50.0, 40.0)) < 1.0);
+    assert!(at(&h, 0).distance(other) < 0.01);
+    assert_eq!(h.state().session().undo_name(), Some("Move"));
+    h.key_press_modifiers(Modifiers::COMMAND, Key::Z);
+    h.run_steps(2);
+    assert!(at(&h, 3).distance(from) < 0.01);
+    assert_ne!(h.state().session().undo_name(), Some("Move"));
+}
+
+#[test]
+fn an_area_selects_and_a_lone_methyl_goes_with_its_bond() {
+    let mut h = alanine();
+    let (from, to) = (
+        at(&h, 2) + vec2(-25.0, -100.0),
+        at(&h, 5) + vec2(25.0, 30.0),
+    );
+    h.event(egui::Event::ModifiersChanged(Modifiers::SHIFT));
+    drag(&mut h, from, to);
+    h.event(egui::Event::ModifiersChanged(Modifiers::NONE));
+    let selected: Vec<usize> = h
+        .state()
+        .session()
+        .selection()
+        .atoms
+        .iter()
+        .map(|a| a.index())
+        .collect();
+    assert_eq!(selected, [2, 4, 5]);
+    let place = between(&h, 1, 3);
+    click(&mut h, place);
+    press(&mut h, Key::Delete);
+    assert_eq!(h.state().session().drawing().molecule().n_atoms(), 5);
+}
+
+#[test]
+fn page_keys_walk_through_atoms_and_bonds() {
+    let mut h = alanine();
+    press(&mut h, Key::PageUp);
+    let atom = h.state().session().selection().only_atom();
+    assert_eq!(atom, Some(AtomIx::new(5)));
+    h.key_press_modifiers(Modifiers::SHIFT, Key::PageDown);
+    h.run_steps(2);
+    let bond = h.state().session().selection().only_bond();
+    assert_eq!(bond, Some(BondIx::new(0)));
+}
+
+#[test]
+fn a_figure_is_written_by_its_ending() {
+    let folder = std::env::temp_dir().join(format!("wedgewright-figure-{}", std::process::id()));
+    std::fs::create_dir_all(&folder).unwrap();
+    let mut h = drive(Window::demo());
+    for (name, start) in [("a.svg", "<"), ("a.pdf", "%PDF"), ("a.png", "\u{fffd}PNG")] {
+        let path = folder.join(name);
+        type_path(&mut h, Modifiers::COMMAND | Modifiers::SHIFT, Key::F, &path);
+        let bytes = std::fs::read(&path).unwrap();
+        assert!(String::from_utf8_lossy(&bytes).starts_with(start), "{name}");
+    }
+    let path = folder.join("a.gif");
+    type_path(&mut h, Modifiers::COMMAND | Modifiers::SHIFT, Key::F, &path);
+    h.get_by_label_contains(".svg, .pdf or .png");
+    assert!(!path.exists());
+    std::fs::remove_dir_all(&folder).unwrap();
+}
+
+#[test]
+fn a_file_that_is_there_is_replaced_only_when_asked_twice() {
+    let folder = std::env::temp_dir().join(format!("wedgewright-twice-{}", std::process::id()));
+    std::fs::create_dir_all(&folder).unwrap();
+    let path = folder.join("there.mol");
+    std::fs::write(&path, "mine").unwrap();
+    let mut h = alanine();
+    type_path(&mut h, Modifiers::COMMAND, Key::S, &path);
+    h.get_by_label_contains("is there already");
+    assert_eq!(std::fs::read_to_string(&path).unwrap(), "mine");
+    h.get_by_label("Replace").click();
+    h.run_steps(3);
+    assert_ne!(std::fs::read_to_string(&path).unwrap(), "mine");
+    std::fs::remove_dir_all(&folder).unwrap();
+}
+
+#[test]
 fn the_keyboard_alone_draws() {
     let mut h = empty();
     for word in ["C", "-", "-", "N"] {
@@ -274,17 +377,7 @@ fn what_is_saved_by_a_typed_path_opens_again() {
     let path = folder.join("kept.mol");
     let mut h = alanine();
     type_line(&mut h, "(2R)");
-    h.key_press_modifiers(Modifiers::COMMAND, Key::S);
-    h.run_steps(3);
-    let field = h.get_by_label("file path");
-    field.focus();
-    h.run_steps(1);
-    h.key_press_modifiers(Modifiers::COMMAND, Key::A);
-    h.run_steps(1);
-    h.get_by_label("file path")
-        .type_text(&path.to_string_lossy());
-    h.run_steps(1);
-    press(&mut h, Key::Enter);
+    type_path(&mut h, Modifiers::COMMAND, Key::S, &path);
     assert_eq!(h.state().session().path(), Some(path.as_path()));
     let again = drive(Window::new(Session::open(&path).unwrap()));
     again.get_by_label("carries (2R)");
@@ -348,4 +441,99 @@ fn every_sign_has_a_glyph_and_every_menu_opens() {
         h.get_by_label_contains(&format!("Place {locant}:")).click();
         h.run_steps(3);
     }
+}
+
+/// A small generator with a fixed start, so that a failure comes again.
+struct Chance(u64);
+
+impl Chance {
+    fn below(&mut self, n: usize) -> usize {
+        self.0 = self
+            .0
+            .wrapping_mul(6_364_136_223_846_793_005)
+            .wrapping_add(1_442_695_040_888_963_407);
+        (self.0 >> 33) as usize % n
+    }
+
+    fn place(&mut self) -> Pos2 {
+        Pos2::new(
+            30.0 + self.below(900) as f32,
+            150.0 + self.below(580) as f32,
+        )
+    }
+}
+
+/// Whatever is done in whatever order, the window stays up and its history leads back.
+#[test]
+fn wild_use_does_no_harm() {
+    const WORDS: [&str; 12] = [
+        "N", "O-", "=", "#", "-", "6", "6=", "3", "5=", "2+", "Qq", "é",
+    ];
+    const LINES: [&str; 8] = ["(1R", ",2S", "E", ")", "rac-", "8Z", "(((", "é*"];
+    const KEYS: [Key; 10] = [
+        Key::Enter,
+        Key::Escape,
+        Key::Delete,
+        Key::ArrowUp,
+        Key::ArrowDown,
+        Key::ArrowLeft,
+        Key::PageDown,
+        Key::PageUp,
+        Key::Tab,
+        Key::Backspace,
+    ];
+    const COMMANDS: [Key; 8] = [
+        Key::Z,
+        Key::Y,
+        Key::A,
+        Key::L,
+        Key::Enter,
+        Key::Num0,
+        Key::Plus,
+        Key::D,
+    ];
+    let mut h = drive(Window::demo());
+    let mut chance = Chance(2026);
+    for _ in 0..250 {
+        match chance.below(7) {
+            0 | 1 => {
+                let n = h.state().session().drawing().molecule().n_atoms();
+                let from = match n {
+                    0 => chance.place(),
+                    n => at(&h, chance.below(n)),
+                };
+                let to = from + 0.2 * (chance.place() - from);
+                drag(&mut h, from, to);
+            }
+            2 => {
+                let place = chance.place();
+                drag(&mut h, place, place + vec2(40.0, 25.0));
+            }
+            3 => type_on_sheet(&mut h, WORDS[chance.below(WORDS.len())]),
+            4 => press(&mut h, KEYS[chance.below(KEYS.len())]),
+            5 => {
+                h.key_press_modifiers(Modifiers::COMMAND, COMMANDS[chance.below(COMMANDS.len())]);
+                h.run_steps(2);
+            }
+            _ => {
+                h.get_by_label("must carry").focus();
+                h.run_steps(1);
+                type_on_sheet(&mut h, LINES[chance.below(LINES.len())]);
+            }
+        }
+    }
+    settled(&mut h);
+    let window = h.state();
+    let drawing = window.session().drawing();
+    assert_eq!(drawing.points().len(), drawing.molecule().n_atoms());
+    let mut steps = 0;
+    while h.state().session().undo_name().is_some() {
+        h.key_press_modifiers(Modifiers::COMMAND, Key::Z);
+        h.run_steps(1);
+        press(&mut h, Key::Escape);
+        steps += 1;
+        assert!(steps < 1000, "undo does not end");
+    }
+    assert_eq!(h.state().session().line(), "(1R,2R,4R,8E)");
+    assert_eq!(h.state().session().drawing().molecule().n_atoms(), 13);
 }

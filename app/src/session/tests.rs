@@ -1,3 +1,5 @@
+//! A session as the window drives it.
+
 use super::*;
 use chem::format::{Record, molfile};
 use chem::geom::Point;
@@ -94,6 +96,7 @@ fn a_typed_line_is_one_step_and_its_marks_come_with_it() {
     }
     s.settle();
     assert_eq!(s.undo_name(), Some("Carry (2S)"));
+    assert_eq!(s.requirement().map(|r| r.wanted.len()), Ok(1));
     assert_eq!(s.tally().verdict(), Verdict::Agrees);
     assert_eq!(s.report().descriptor_line(), "(2S)");
     s.undo();
@@ -141,6 +144,23 @@ fn a_line_that_is_not_understood_keeps_the_marks_while_it_is_typed_and_loses_the
 }
 
 #[test]
+fn an_open_bracket_counts_while_it_is_typed_and_is_closed_after() {
+    let mut s = alanine("");
+    s.ask("(2R");
+    work(&mut s);
+    assert_eq!(s.report().descriptor_line(), "(2R)");
+    assert_eq!(s.line(), "(2R");
+    s.ask("(2R,");
+    assert!(s.requirement().is_err());
+    assert_eq!(s.tally().agrees, 1);
+    s.ask("(2R");
+    work(&mut s);
+    s.settle();
+    assert_eq!((s.line(), s.undo_name()), ("(2R)", Some("Carry (2R)")));
+    assert_eq!(s.report().descriptor_line(), "(2R)");
+}
+
+#[test]
 fn typing_that_ends_where_it_began_is_no_step() {
     let mut s = alanine("");
     s.ask("?");
@@ -184,7 +204,7 @@ fn what_is_saved_is_read_again() {
     assert!(error.contains("written"), "{error}");
     assert_eq!(s.path(), Some(path.as_path()));
     let error = Session::open(folder.path()).unwrap_err().to_string();
-    assert!(error.contains("read"), "{error}");
+    assert!(error.contains("a folder"), "{error}");
 }
 
 #[test]

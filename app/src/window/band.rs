@@ -77,6 +77,12 @@ fn bad_token(text: &str, error: &RequirementError) -> std::ops::Range<usize> {
     start..end.max(start + first)
 }
 
+/// Whether what is wrong is only the last token of a line that is still being typed.
+fn is_unfinished(session: &Session, error: &RequirementError) -> bool {
+    let line = session.line();
+    session.is_typing() && bad_token(line, error).end >= line.trim_end().len()
+}
+
 impl Band {
     /// Puts the caret in the line.
     pub(super) fn focus(&mut self) {
@@ -93,6 +99,8 @@ impl Band {
                 self.must(ui, session, out);
             });
             ui.vertical(|ui| {
+                // the verdict and its button must stay in sight
+                ui.set_max_width((ui.available_width() - 352.0).max(120.0));
                 carries(ui, session);
             });
             ui.vertical(|ui| {
@@ -114,19 +122,24 @@ impl Band {
             self.text = session.line().to_owned();
         }
         let error = session.requirement().err().cloned();
-        let wrong = colors.verdict(Verdict::Opposite);
+        let wrong = match &error {
+            Some(error) if is_unfinished(session, error) => colors.muted,
+            _ => colors.verdict(Verdict::Opposite),
+        };
         let mut layouter = |ui: &Ui, buffer: &dyn TextBuffer, _wrap: f32| {
             let text = buffer.as_str();
             let bad = error.as_ref().map(|e| (bad_token(text, e), wrong));
             let job = set(text, LINE, colors.ink, bad);
             ui.fonts_mut(|f| f.layout_job(job))
         };
-        let hint = RichText::new("(1R,2S)").font(theme::italic(LINE));
+        let hint = RichText::new("descriptors, such as (1R,2S)").font(theme::upright(TEXT + 3.0));
         let id = Id::unique("must carry");
         let response = TextEdit::singleline(&mut self.text)
             .id(id)
-            .hint_text(hint.color(colors.muted.gamma_multiply(0.6)))
+            .hint_text(hint.color(colors.muted))
             .font(theme::upright(LINE))
+            .align(egui::Align2::LEFT_CENTER)
+            .min_size(vec2(0.0, 40.0))
             .frame(Frame::NONE)
             .margin(egui::Margin::ZERO)
             .desired_width(f32::INFINITY)
@@ -177,7 +190,7 @@ fn caption(ui: &mut Ui, text: &str) -> Response {
 /// The descriptor line of the drawing, each descriptor in the color of its verdict.
 fn carries(ui: &mut Ui, session: &Session) {
     let colors = Colors::of(ui);
-    let caption = caption(ui, "carries");
+    caption(ui, "carries");
     let line = session.report().descriptor_line();
     let job = if line.is_empty() {
         LayoutJob::simple_singleline("nothing yet".to_owned(), theme::upright(LINE), colors.muted)
@@ -189,11 +202,10 @@ fn carries(ui: &mut Ui, session: &Session) {
     } else {
         line
     };
-    let response = ui.add(egui::Label::new(job).extend());
+    let response = ui.add(egui::Label::new(job).truncate());
     response.widget_info(|| {
         egui::WidgetInfo::labeled(egui::Role::Label, true, format!("carries {spoken}"))
     });
-    let _ = response.labelled_by(caption.id);
 }
 
 fn carried_job(places: &[Place], colors: &Colors) -> LayoutJob {
@@ -269,7 +281,11 @@ fn verdict(ui: &mut Ui, session: &Session) {
         let text = if session.is_searching() {
             "seeking marks …".to_owned()
         } else if !understood {
-            "not understood yet".to_owned()
+            if session.is_typing() {
+                "not finished yet".to_owned()
+            } else {
+                "not understood".to_owned()
+            }
         } else {
             words(&tally)
         };
@@ -301,6 +317,9 @@ fn make(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
 fn says(ui: &mut Ui, session: &Session) {
     let colors = Colors::of(ui);
     let said = match (session.requirement(), session.refusal()) {
+        (Err(error), _) if is_unfinished(session, error) => {
+            Some((Verdict::NotAsked, error.text.clone()))
+        }
         (Err(error), _) => Some((Verdict::Opposite, error.text.clone())),
         (Ok(_), Some(refusal)) => Some((Verdict::Contradiction, refusal.text.clone())),
         (Ok(_), None) => None,
@@ -309,7 +328,7 @@ fn says(ui: &mut Ui, session: &Session) {
     ui.horizontal(|ui| {
         ui.spacing_mut().item_spacing.x = GRID;
         // the room is kept, so that nothing moves while a line is typed
-        ui.set_min_height(24.0);
+        ui.set_min_height(28.0);
         let Some((verdict, text)) = said else {
             return;
         };

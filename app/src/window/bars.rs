@@ -143,17 +143,15 @@ pub(super) fn notice(ui: &mut Ui, verdict: Verdict, text: &str) -> bool {
     let colors = Colors::of(ui);
     ui.horizontal(|ui| {
         signs::show(ui, verdict);
-        let close = ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
-            let close = ui.button("Dismiss").clicked();
-            ui.with_layout(Layout::left_to_right(Align::Center), |ui| {
-                let text = RichText::new(text)
-                    .size(TEXT)
-                    .color(colors.verdict(verdict));
-                ui.add(egui::Label::new(text).wrap());
-            });
-            close
+        let wide = (ui.available_width() - 96.0).max(120.0);
+        let text = RichText::new(text)
+            .size(TEXT)
+            .color(colors.verdict(verdict));
+        ui.vertical(|ui| {
+            ui.set_width(wide);
+            ui.add(egui::Label::new(text).wrap());
         });
-        close.inner
+        ui.button("Dismiss").clicked()
     })
     .inner
 }

@@ -4,7 +4,7 @@
 //! them their color. The window samples four times for a pixel, which smooths their edges.
 
 use chem::ink::{Ink, Item, Part, Shape, Tone};
-use egui::{Color32, Mesh, Pos2, epaint};
+use egui::{Color32, Mesh, Pos2, Rect, epaint};
 use kurbo::{BezPath, PathEl};
 use lyon::math::point;
 use lyon::path::{LineCap, LineJoin, Path};
@@ -38,6 +38,28 @@ pub(super) struct ToScreen {
     pub(super) origin: Pos2,
     /// Screen points for a point of the figure.
     pub(super) scale: f32,
+}
+
+impl ToScreen {
+    /// A box of the figure on the screen.
+    pub(super) fn rect(self, b: kurbo::Rect) -> Rect {
+        Rect::from_min_max(
+            self.origin + self.scale * egui::vec2(b.x0 as f32, b.y0 as f32),
+            self.origin + self.scale * egui::vec2(b.x1 as f32, b.y1 as f32),
+        )
+    }
+}
+
+/// Boxes of all labels and captions of a figure, in its points.
+pub(super) fn word_boxes(ink: &Ink) -> Vec<kurbo::Rect> {
+    let words = ink.items.iter().filter_map(|item| match &item.shape {
+        // the outline of a space is empty and would stand at the origin
+        Shape::Text(run) if !run.outline.elements().is_empty() => {
+            Some(kurbo::Shape::bounding_box(&run.outline))
+        }
+        Shape::Text(_) | Shape::Fill(_) | Shape::Stroke(..) => None,
+    });
+    words.collect()
 }
 
 impl Triangles {

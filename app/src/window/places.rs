@@ -17,7 +17,7 @@ use egui::{
 /// Height of a row.
 const ROW: f32 = 32.0;
 /// Left edges of the columns, from the left edge of the panel's content.
-const COLUMNS: [f32; 4] = [0.0, 72.0, 128.0, 192.0];
+const COLUMNS: [f32; 4] = [0.0, 60.0, 104.0, 160.0];
 
 /// The place that is selected on the sheet, if it is one.
 pub(super) fn chosen(session: &Session) -> Option<&Place> {
@@ -237,6 +237,7 @@ fn why(ui: &mut Ui, session: &Session, place: &Place) {
     let split = place.kind == Kind::DoubleBond;
     for (i, ligand) in place.ranking.iter().enumerate() {
         if split && i % 2 == 0 {
+            ui.add_space(GRID / 2.0);
             let end = place.atoms.get(i / 2).map_or(0, |a| a.index() + 1);
             ui.label(
                 RichText::new(format!("at {end}"))

@@ -324,9 +324,10 @@ impl Sheet<'_> {
             }
             found.extend(places.into_iter().map(|ix| (ix, *descriptor)));
         }
-        if let Some((item, d)) = asked.iter().find(|(_, d)| {
-            !Kind::Tetrahedral.can_carry(*d) && !Kind::DoubleBond.can_carry(*d)
-        }) {
+        if let Some((item, d)) = asked
+            .iter()
+            .find(|(_, d)| !Kind::Tetrahedral.can_carry(*d) && !Kind::DoubleBond.can_carry(*d))
+        {
             let text = format!("{d} belongs to an axis or helix, which are not handled yet");
             return Err(error("S-KIND", item.columns.start, text));
         }

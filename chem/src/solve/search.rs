@@ -237,7 +237,10 @@ mod tests {
         ));
         assert!(matches!(
             with_search(&triol(), &[(1, 'R'), (2, 'R'), (3, 'S')]),
-            Err(SearchError::OtherLetter(_, Descriptor::LowerR | Descriptor::LowerS))
+            Err(SearchError::OtherLetter(
+                _,
+                Descriptor::LowerR | Descriptor::LowerS
+            ))
         ));
     }
 
@@ -259,7 +262,11 @@ mod tests {
         );
         for both in ['r', 's'] {
             let carried = with_search(&ring, &[(0, both), (3, both)]).unwrap();
-            assert!(carried.iter().all(|d| d.map(Descriptor::letter) == Some(both)));
+            assert!(
+                carried
+                    .iter()
+                    .all(|d| d.map(Descriptor::letter) == Some(both))
+            );
         }
         assert!(matches!(
             with_search(&ring, &[(0, 'r'), (3, 's')]),

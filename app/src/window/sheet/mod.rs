@@ -6,7 +6,7 @@ mod view;
 
 pub(super) use view::{View, beside};
 
-use super::paint::Triangles;
+use super::paint::{Triangles, word_boxes};
 use super::theme::{self, Colors};
 use crate::command::Command;
 use crate::session::{Selection, Session};
@@ -24,6 +24,8 @@ struct Composed {
     revision: u64,
     /// Box of the figure as it is printed, without locants and descriptors, in points.
     page: kurbo::Rect,
+    /// Boxes of labels and captions, in points.
+    words: Vec<kurbo::Rect>,
     ink: Ink,
     triangles: Triangles,
 }
@@ -104,8 +106,9 @@ impl Sheet {
         let rect = ui.available_rect_before_wrap();
         let response = ui.allocate_rect(rect, Sense::click_and_drag());
         self.id = Some(response.id);
+        let resized = self.view.rect().size() != rect.size();
         self.view.place(rect);
-        if std::mem::take(&mut self.fit_next) {
+        if std::mem::take(&mut self.fit_next) || (resized && self.view.is_fitted()) {
             self.view.fit(session.drawing());
         }
         response.widget_info(|| {
@@ -143,6 +146,7 @@ impl Sheet {
         self.composed = Some(Composed {
             revision,
             page: bare.inflate(style.page_margin, style.page_margin),
+            words: word_boxes(&ink),
             triangles: Triangles::of(&ink),
             ink,
         });
@@ -178,7 +182,7 @@ impl Sheet {
                 painter.add(egui::Shape::mesh(mesh));
             }
         }
-        self.ranking(&painter, session);
+        self.ranking(&painter, session, composed);
         self.pen_ghost(&painter, session, response);
     }
 

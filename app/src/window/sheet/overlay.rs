@@ -22,7 +22,11 @@ impl Sheet {
             self.empty(painter);
             return;
         }
-        let page = self.view.page(&composed.ink, composed.page).expand(AIR);
+        let page = self
+            .view
+            .of_ink(&composed.ink)
+            .rect(composed.page)
+            .expand(AIR);
         let line = Stroke::new(1.0, LIGHT.muted.gamma_multiply(0.7));
         for (corner, x, y) in [
             (page.left_top(), 1.0, 1.0),
@@ -81,25 +85,56 @@ impl Sheet {
     }
 
     /// The letters a, b, c, d beside the ligands of the selected place.
-    pub(super) fn ranking(&self, painter: &Painter, session: &Session) {
+    pub(super) fn ranking(&self, painter: &Painter, session: &Session, composed: &Composed) {
         let Some(place) = super::super::places::chosen(session) else {
             return;
         };
-        for (from, to, letter) in letters(place) {
-            let drawing = session.drawing();
-            let n = drawing.molecule().n_atoms();
-            if from.index() >= n || to.index() >= n {
+        let drawing = session.drawing();
+        let n = drawing.molecule().n_atoms();
+        let to = self.view.of_ink(&composed.ink);
+        let mut taken = composed
+            .words
+            .iter()
+            .map(|r| to.rect(*r))
+            .collect::<Vec<_>>();
+        for (from, ligand, letter) in letters(place) {
+            if from.index() >= n || ligand.index() >= n {
                 continue;
             }
-            let [p, q] = [from, to].map(|a| self.view.to_screen(drawing.point(a)));
+            let [p, q] = [from, ligand].map(|a| self.view.to_screen(drawing.point(a)));
+            let at = self.letter_place(drawing, [p, q], &taken);
+            taken.push(Rect::from_center_size(at, vec2(12.0, 14.0)));
             painter.text(
-                beside_bond(p, q),
+                at,
                 Align2::CENTER_CENTER,
                 letter,
-                theme::italic(theme::TEXT),
+                theme::italic(theme::TEXT + 1.0),
                 LIGHT.accent,
             );
         }
+    }
+
+    /// The place beside a bond that is farthest from labels, captions and other bonds.
+    fn letter_place(&self, drawing: &Drawing, [p, q]: [Pos2; 2], taken: &[Rect]) -> Pos2 {
+        let m = drawing.molecule();
+        let (along, across) = (q - p, (q - p).normalized().rot90());
+        let free = |at: Pos2| {
+            let words = taken.iter().map(|r| r.distance_to_pos(at));
+            let bonds = m.bonds().map(|b| {
+                let [a, c] = m
+                    .bond(b)
+                    .ends
+                    .map(|e| self.view.to_screen(drawing.point(e)));
+                segment_distance(at, a, c)
+            });
+            words.chain(bonds).fold(f32::INFINITY, f32::min)
+        };
+        let places = [0.5_f32, 0.65, 0.35]
+            .into_iter()
+            .flat_map(|t| [14.0_f32, -14.0, 18.0, -18.0].map(|d| p + t * along + d * across));
+        places
+            .max_by(|a, b| free(*a).min(14.0).total_cmp(&free(*b).min(14.0)))
+            .unwrap_or(p)
     }
 
     /// What the pen would draw, what the pointer is on, or the area drawn out.
@@ -177,9 +212,10 @@ fn bond(painter: &Painter, ends: [Pos2; 2], order: Order, line: Stroke) {
     }
 }
 
-fn beside_bond(p: Pos2, q: Pos2) -> Pos2 {
-    let v = q - p;
-    p + 0.62 * v + v.normalized().rot90() * 13.0
+fn segment_distance(at: Pos2, a: Pos2, b: Pos2) -> f32 {
+    let v = b - a;
+    let t = ((at - a).dot(v) / v.length_sq().max(1e-6)).clamp(0.0, 1.0);
+    at.distance(a + t * v)
 }
 
 /// The atoms of each ranked ligand that is drawn: the one that holds it, the ligand, its letter.

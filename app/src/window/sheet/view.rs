@@ -21,6 +21,8 @@ pub(in super::super) struct View {
     scale: f32,
     /// The sheet on the screen.
     rect: Rect,
+    /// Whether it still shows the whole drawing as [`View::fit`] left it.
+    fitted: bool,
 }
 
 impl View {
@@ -29,6 +31,7 @@ impl View {
             center: Point::ORIGIN,
             scale: BOND,
             rect: Rect::NOTHING,
+            fitted: false,
         }
     }
 
@@ -46,11 +49,19 @@ impl View {
         let bounds = drawing.bounds();
         let bond = drawing.bond_length();
         self.center = bounds.center();
-        let wide = (bounds.width() + 3.0 * bond) as f32;
-        let high = (bounds.height() + 3.4 * bond) as f32;
-        let fits = (self.rect.width() / wide).min(self.rect.height() / high);
+        // labels stand out by about a bond; corner ticks and the width beneath need a margin as well
+        let wide = (bounds.width() + 1.6 * bond) as f32;
+        let high = (bounds.height() + 1.6 * bond) as f32;
+        let room = self.rect.size() - vec2(64.0, 96.0);
+        let fits = (room.x / wide).min(room.y / high);
         let most = 1.4 * BOND / bond as f32;
         self.scale = fits.min(most).max(BONDS.0 / bond as f32);
+        self.fitted = true;
+    }
+
+    /// Whether nobody has moved or enlarged the view since it was fitted.
+    pub(super) fn is_fitted(&self) -> bool {
+        self.fitted
     }
 
     pub(in super::super) fn to_screen(self, p: Point) -> Pos2 {
@@ -72,6 +83,7 @@ impl View {
     }
 
     pub(super) fn pan(&mut self, by: Vec2) {
+        self.fitted = false;
         let v = by / self.scale;
         self.center.x -= f64::from(v.x);
         self.center.y += f64::from(v.y);
@@ -79,6 +91,7 @@ impl View {
 
     /// Enlarges by `factor`; what is at `fixed` stays there.
     pub(super) fn zoom(&mut self, factor: f32, fixed: Pos2, bond: f64) {
+        self.fitted = false;
         let bond = bond as f32;
         let before = self.to_drawing(fixed);
         self.scale = (self.scale * factor).clamp(BONDS.0 / bond, BONDS.1 / bond);
@@ -92,15 +105,6 @@ impl View {
             origin: self.to_screen(Point::ORIGIN),
             scale: self.scale / ink.points_per_unit as f32,
         }
-    }
-
-    /// A box of the figure on the screen; `b` in points.
-    pub(super) fn page(&self, ink: &Ink, b: kurbo::Rect) -> Rect {
-        let to = self.of_ink(ink);
-        Rect::from_min_max(
-            to.origin + to.scale * vec2(b.x0 as f32, b.y0 as f32),
-            to.origin + to.scale * vec2(b.x1 as f32, b.y1 as f32),
-        )
     }
 
     /// Size on screen in percent of the printed size.

@@ -1,3 +1,5 @@
+//! SD files: records cut from texts and streams, data fields kept.
+
 use super::*;
 use crate::format::Reason;
 

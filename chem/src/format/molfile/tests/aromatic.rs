@@ -1,3 +1,5 @@
+//! Aromatic bonds turned into alternating ones, or refused.
+
 use super::*;
 
 #[test]

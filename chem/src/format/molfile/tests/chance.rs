@@ -1,3 +1,5 @@
+//! Texts damaged by chance: nothing panics, and writing is stable.
+
 use super::*;
 use proptest::prelude::*;
 

@@ -1,3 +1,5 @@
+//! The table of damage that real files show: repaired with a notice, or refused with its place.
+
 use super::*;
 
 /// Rows of damage that are repaired: what is changed, and the notice it leaves.

@@ -1,3 +1,5 @@
+//! Molfiles read: hand-made records and what is made of them.
+
 use super::super::{ReadError, Record, WriteOptions, sdf};
 use super::*;
 use crate::drawing::{End, Mark};

@@ -1,3 +1,5 @@
+//! Molfiles written.
+
 use super::*;
 use crate::drawing::{Drawing, Edit};
 use crate::format::WriteError;

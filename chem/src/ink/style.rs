@@ -113,7 +113,7 @@ pub const STYLES: &[Style] = &[
         label_margin: 3.2,
         font_size: 17.0,
         script_size: 0.7,
-        caption_size: 11.0,
+        caption_size: 8.5,
         note_size: 12.0,
         page_margin: 4.0,
         width_limit: None,

@@ -4,7 +4,7 @@ use super::Pose;
 use crate::geom;
 
 /// Nearer than this (in bond lengths) two atoms that are not joined collide.
-const NEAR: f64 = 0.5;
+const NEAR: f64 = 0.7;
 
 pub(super) struct Clash;
 

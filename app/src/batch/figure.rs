@@ -1,12 +1,11 @@
 //! `figure`: a drawing for print.
 
-use super::records::{self, Piece};
 use super::{Failure, Status, say};
 use crate::args::Figure;
 use crate::export::png::Depth;
 use crate::export::svg::TextAs;
 use crate::export::{Facts, POINTS_PER_MM, Sheet, pdf, png, svg};
-use crate::files::{Source, Target, is_standard, name_of, same_file};
+use crate::files::{self, Piece, Source, is_standard, name_of, same_file};
 use chem::format::Record;
 use chem::ink::{Caption, STYLES, Style, Tone, compose};
 use chem::pipeline::{self, Report};
@@ -36,7 +35,7 @@ pub(super) fn run(args: &Figure) -> Result<Status, Failure> {
     }
     let piece = choose(&mut source, args.record)?;
     let name = format!("{}: record {}", source.name, piece.number);
-    let record = match piece.text().and_then(|text| text.read(&piece)) {
+    let record = match piece.read() {
         Ok(record) => record,
         Err(error) => return Err(Failure::Arguments(format!("{name}, {error}"))),
     };
@@ -45,9 +44,7 @@ pub(super) fn run(args: &Figure) -> Result<Status, Failure> {
     }
     match figure(&record, style, form, args) {
         Ok(bytes) => {
-            let mut out = Target::create(&args.out)?;
-            out.write(&bytes)?;
-            out.save()?;
+            files::write(&args.out, &bytes)?;
             Ok(Status::Good)
         }
         Err(text) => {
@@ -79,7 +76,7 @@ fn form(out: &Path) -> Result<Form, Failure> {
 fn choose(source: &mut Source, wanted: Option<NonZeroUsize>) -> Result<Piece, Failure> {
     let mut found = None;
     let mut count = 0;
-    while let Some(piece) = records::next(source)? {
+    while let Some(piece) = source.next_piece()? {
         count = piece.number;
         match wanted {
             Some(n) if n.get() != piece.number => {}

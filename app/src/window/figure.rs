@@ -2,7 +2,8 @@
 
 use super::sheet::Sheet as OnScreen;
 use crate::export::{Facts, Sheet, pdf, png, svg};
-use crate::session::{Session, files};
+use crate::files;
+use crate::session::Session;
 use chem::ink;
 use std::path::Path;
 
@@ -32,7 +33,7 @@ pub(super) fn write(path: &Path, session: &Session) -> Result<(), String> {
             ));
         }
     };
-    files::write_bytes(path, &bytes).map_err(|e| e.to_string())
+    files::write(path, &bytes).map_err(|e| e.to_string())
 }
 
 fn facts(session: &Session) -> Facts {

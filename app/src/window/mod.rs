@@ -41,7 +41,7 @@ pub enum WindowError {
     NoDisplay(String),
     /// The file named at the start cannot be opened.
     #[error(transparent)]
-    File(#[from] crate::session::files::FileError),
+    File(#[from] crate::files::FileError),
 }
 
 /// Something to tell the person, in a strip over the status line.

@@ -8,7 +8,6 @@ mod bars;
 mod demo;
 mod dialogs;
 mod errands;
-mod figure;
 mod graft;
 mod paint;
 mod pen;

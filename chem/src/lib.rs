@@ -32,6 +32,8 @@ pub mod cip;
 
 pub mod solve;
 
+pub mod layout;
+
 pub mod ink;
 
 pub mod pipeline;

@@ -5,6 +5,7 @@ use super::signs;
 use super::theme::{self, CAPTION, Colors, GRID, TEXT, scripted};
 use crate::command::{Command, MENUS, Shortcut};
 use crate::session::Session;
+use chem::molecule::charge_text;
 use chem::pipeline::Verdict;
 use egui::text::{LayoutJob, TextFormat};
 use egui::{Align, Button, Key, Layout, MenuBar, RichText, Stroke, Ui};
@@ -125,16 +126,9 @@ fn formula(session: &Session, colors: &Colors) -> LayoutJob {
     for (symbol, n) in m.formula() {
         scripted(&mut job, symbol, n, TEXT - 1.0, colors.muted);
     }
-    let charge = match m.charge() {
-        0 => return job,
-        1 => "+".to_owned(),
-        -1 => "\u{2212}".to_owned(),
-        n if n > 0 => format!("{n}+"),
-        n => format!("{}\u{2212}", -i64::from(n)),
-    };
     let mut format = TextFormat::simple(theme::upright(0.72 * (TEXT - 1.0)), colors.muted);
     format.valign = Align::TOP;
-    job.append(&charge, 0.0, format);
+    job.append(&charge_text(m.charge()), 0.0, format);
     job
 }
 

@@ -6,6 +6,7 @@
 use chem::drawing::{Drawing, Edit};
 use chem::element::Element;
 use chem::geom::{self, Point};
+use chem::layout::atom_at;
 use chem::molecule::{Atom, AtomIx, Order};
 
 /// Angles snap to this, in degrees.
@@ -152,18 +153,6 @@ fn snapped(
         .map_or(0.0, |d| geom::angle(d) % step);
     let angle = ((geom::angle(v) - offset) / step).round() * step + offset;
     base + drawing.bond_length() * geom::unit(angle)
-}
-
-/// The atom within a fifth of a bond of a point.
-pub(super) fn atom_at(drawing: &Drawing, at: Point) -> Option<AtomIx> {
-    let near = 0.2 * drawing.bond_length();
-    drawing
-        .molecule()
-        .atoms()
-        .map(|a| (a, drawing.point(a).distance(at)))
-        .filter(|(_, d)| *d <= near)
-        .min_by(|x, y| x.1.total_cmp(&y.1))
-        .map(|(a, _)| a)
 }
 
 #[cfg(test)]

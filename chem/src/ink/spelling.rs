@@ -1,7 +1,7 @@
 //! How an atom is spelt: which letters stand on the line, below and above it.
 
 use crate::element::Element;
-use crate::molecule::{AtomIx, Molecule, Order, Radical};
+use crate::molecule::{AtomIx, Molecule, Order, Radical, charge_text};
 
 /// Where letters stand.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -120,12 +120,7 @@ fn charge(charge: i8, radical: Radical) -> String {
         Radical::Doublet => "•",
         Radical::Triplet => "••",
     };
-    let sign = if charge > 0 { "+" } else { "−" };
-    match charge.unsigned_abs() {
-        0 => dots.to_owned(),
-        1 => format!("{dots}{sign}"),
-        n => format!("{dots}{n}{sign}"),
-    }
+    format!("{dots}{}", charge_text(i32::from(charge)))
 }
 
 fn read_alias(alias: &str) -> Core {

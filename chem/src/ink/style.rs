@@ -89,7 +89,7 @@ pub static STYLES: [Style; 4] = [
     // A page to be kept and read at arm's length: our own numbers, in the ratios of GR-1.1 to GR-1.6.
     Style {
         name: "record",
-        source: "common practice, no source: A4 or Letter, ratios of IUPAC 2008, GR-1",
+        source: "sizes of our own for A4 or Letter, in the ratios of IUPAC 2008, GR-1",
         bond_length: 8.0 * MM,
         line_width: 0.35 * MM,
         wedge_width: 1.2 * MM,
@@ -106,7 +106,7 @@ pub static STYLES: [Style; 4] = [
     // For the window at its own size: our own numbers, in the same ratios.
     Style {
         name: "screen",
-        source: "common practice, no source: the window, ratios of IUPAC 2008, GR-1",
+        source: "sizes of our own for the window, in the ratios of IUPAC 2008, GR-1",
         bond_length: 32.0,
         line_width: 1.4,
         wedge_width: 4.6,

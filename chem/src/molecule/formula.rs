@@ -4,6 +4,16 @@ use super::Molecule;
 use crate::element::Element;
 use std::collections::BTreeMap;
 
+/// A charge as labels have it: `+`, `2+`, `−`, `3−`; empty for none.
+pub fn charge_text(charge: i32) -> String {
+    let sign = if charge > 0 { '+' } else { '\u{2212}' };
+    match charge.unsigned_abs() {
+        0 => String::new(),
+        1 => sign.to_string(),
+        n => format!("{n}{sign}"),
+    }
+}
+
 impl Molecule {
     /// Elements and their counts in Hill order (carbon, hydrogen, then by symbol; without carbon all by
     /// symbol); placeholders come last as `*`.

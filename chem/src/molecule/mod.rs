@@ -8,6 +8,8 @@
 mod formula;
 mod hydrogens;
 
+pub use formula::charge_text;
+
 use crate::element::Element;
 use petgraph::graph::UnGraph;
 use std::fmt;

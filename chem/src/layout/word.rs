@@ -1,11 +1,12 @@
-//! What may be typed into the graft entry.
+//! What may be typed for a graft.
 
-use chem::element::Element;
-use chem::molecule::Order;
+use super::GraftError;
+use crate::element::Element;
+use crate::molecule::Order;
 
 /// A graft, understood.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub(crate) enum Word {
+pub enum Word {
     /// An element, with a charge if one is typed behind it (`N`, `Cl`, `O-`).
     Element(Element, Option<i8>),
     /// A charge (`+`, `2+`, `1-`, `0`).
@@ -22,18 +23,16 @@ pub(crate) enum Word {
 }
 
 /// Smallest and largest ring that can be typed.
-const RINGS: std::ops::RangeInclusive<usize> = 3..=8;
+pub(super) const RINGS: std::ops::RangeInclusive<usize> = 3..=8;
 
-/// Reads what was typed.
+/// Reads what was typed; blanks round it are left out.
 ///
 /// # Errors
 /// What is wrong and what can be typed instead.
-pub(crate) fn read(text: &str) -> Result<Word, String> {
+pub fn read(text: &str) -> Result<Word, GraftError> {
     let text = text.trim();
     match text {
-        "" => {
-            return Err("an element, a bond (- = #), a charge or a ring size".to_owned());
-        }
+        "" => return Err(GraftError::Nothing),
         "-" => return Ok(Word::Bond(Order::Single)),
         "=" => return Ok(Word::Bond(Order::Double)),
         "#" => return Ok(Word::Bond(Order::Triple)),
@@ -53,9 +52,7 @@ pub(crate) fn read(text: &str) -> Result<Word, String> {
     }
     let charge = match rest {
         "" => None,
-        rest => Some(charge(rest).ok_or_else(|| {
-            format!("{rest} is no charge; write +, -, 2+ or 2- behind the symbol")
-        })?),
+        rest => Some(charge(rest).ok_or_else(|| GraftError::NoCharge(rest.to_owned()))?),
     };
     match Element::from_symbol(symbol) {
         Some(element) => Ok(Word::Element(element, charge)),
@@ -63,7 +60,7 @@ pub(crate) fn read(text: &str) -> Result<Word, String> {
     }
 }
 
-fn number(text: &str) -> Result<Word, String> {
+fn number(text: &str) -> Result<Word, GraftError> {
     if let Some(charge) = charge(text) {
         return Ok(Word::Charge(charge));
     }
@@ -73,10 +70,8 @@ fn number(text: &str) -> Result<Word, String> {
     };
     match size.parse::<usize>() {
         Ok(size) if RINGS.contains(&size) => Ok(Word::Ring { size, alternating }),
-        Ok(size) => Err(format!("no ring of {size}; rings have 3 to 8 atoms here")),
-        Err(_) => Err(format!(
-            "{text} is neither a ring size (5, 6=) nor a charge (2+)"
-        )),
+        Ok(size) => Err(GraftError::RingSize(size)),
+        Err(_) => Err(GraftError::NoNumber(text.to_owned())),
     }
 }
 
@@ -94,7 +89,7 @@ fn charge(text: &str) -> Option<i8> {
     Some(sign * size)
 }
 
-fn no_element(symbol: &str) -> String {
+fn no_element(symbol: &str) -> GraftError {
     let mut letters = symbol.chars();
     let proper: String = letters
         .next()
@@ -102,10 +97,9 @@ fn no_element(symbol: &str) -> String {
         .flat_map(char::to_uppercase)
         .chain(letters.flat_map(char::to_lowercase))
         .collect();
-    if Element::from_symbol(&proper).is_some() {
-        format!("{symbol} is no element; {proper} is one")
-    } else {
-        format!("{symbol} is no element")
+    GraftError::NoElement {
+        written: symbol.to_owned(),
+        perhaps: Element::from_symbol(&proper).map(Element::symbol),
     }
 }
 
@@ -150,7 +144,7 @@ mod tests {
             ("", "a ring size"),
             ("99999999999999999999999", "ring size"),
         ] {
-            let error = read(text).unwrap_err();
+            let error = read(text).unwrap_err().to_string();
             assert!(error.contains(part), "{text}: {error}");
         }
     }

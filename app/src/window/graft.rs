@@ -1,19 +1,16 @@
 //! The graft: with something selected, typing opens a small entry there, with a live ghost.
 
-mod shape;
-mod words;
-
 use super::sheet::{Ghost, View, beside, selection_rect};
 use super::theme::{self, Colors, GRID};
 use crate::command::Command;
 use crate::session::{Selection, Session};
 use chem::drawing::Drawing;
+use chem::layout::{self, Graft, GraftError};
 use egui::text::{CCursor, CCursorRange};
 use egui::{
     Area, CornerRadius, Event, Frame, Id, Key, Margin, Modifiers, Order, Pos2, Rect, RichText,
     Stroke, TextEdit, Ui, vec2,
 };
-use shape::Graft;
 
 /// The open entry.
 #[derive(Debug, Default)]
@@ -74,9 +71,12 @@ impl Entry {
         }
     }
 
-    fn graft(&self, session: &Session) -> Result<Graft, String> {
-        let word = words::read(&self.text)?;
-        shape::shape(session.drawing(), session.selection(), word)
+    fn graft(&self, session: &Session) -> Result<Graft, GraftError> {
+        let word = layout::read(&self.text)?;
+        let Selection { atoms, bonds } = session.selection();
+        let atoms: Vec<_> = atoms.iter().copied().collect();
+        let bonds: Vec<_> = bonds.iter().copied().collect();
+        layout::graft(session.drawing(), &atoms, &bonds, word)
     }
 
     /// The drawing as it would be.
@@ -143,7 +143,7 @@ impl Entry {
     }
 
     /// The field and what is said beneath it; whether the field has lost the focus.
-    fn field(&mut self, ui: &mut Ui, graft: &Result<Graft, String>, colors: &Colors) -> bool {
+    fn field(&mut self, ui: &mut Ui, graft: &Result<Graft, GraftError>, colors: &Colors) -> bool {
         let output = TextEdit::singleline(&mut self.text)
             .id(Id::unique("graft entry"))
             .font(theme::upright(theme::TEXT + 2.0))
@@ -152,9 +152,8 @@ impl Entry {
             .show(ui);
         let says = match graft {
             Ok(graft) => RichText::new(&graft.says).color(colors.muted),
-            Err(error) => {
-                RichText::new(error).color(colors.verdict(chem::pipeline::Verdict::Opposite))
-            }
+            Err(error) => RichText::new(error.to_string())
+                .color(colors.verdict(chem::pipeline::Verdict::Opposite)),
         };
         ui.label(says.small());
         let keys = ui.label(

@@ -33,7 +33,7 @@ impl fmt::Display for PdfError {
                 f,
                 "the page is larger than a PDF can have (5080 mm): write SVG, or take a smaller style"
             ),
-            PdfError::Font => write!(f, "the font could not be embedded"),
+            PdfError::Font => write!(f, "the font could not be embedded: write SVG"),
             PdfError::Writer(why) => write!(f, "the PDF could not be written: {why}"),
         }
     }
@@ -42,18 +42,13 @@ impl fmt::Display for PdfError {
 impl std::error::Error for PdfError {}
 
 /// The faces, ready for a document.
-#[derive(Clone, Debug)]
-pub struct Fonts {
+struct Fonts {
     upright: Font,
     italic: Font,
 }
 
 impl Fonts {
-    /// The faces that ink uses.
-    ///
-    /// # Errors
-    /// If a font cannot be read.
-    pub fn load() -> Result<Fonts, PdfError> {
+    fn load() -> Result<Fonts, PdfError> {
         let font = |face: Face| Font::new(face.bytes().into(), 0).ok_or(PdfError::Font);
         Ok(Fonts {
             upright: font(Face::Upright)?,
@@ -61,8 +56,7 @@ impl Fonts {
         })
     }
 
-    /// The font of a face.
-    pub fn of(&self, face: Face) -> Font {
+    fn of(&self, face: Face) -> Font {
         match face {
             Face::Upright => self.upright.clone(),
             Face::Italic => self.italic.clone(),
@@ -107,7 +101,7 @@ pub fn write(sheet: &Sheet<'_>) -> Result<Vec<u8>, PdfError> {
 
 /// Metadata from plain facts; the document's number follows from them alone, so that the same figure
 /// gives the same bytes.
-pub fn metadata(facts: &Facts) -> Metadata {
+fn metadata(facts: &Facts) -> Metadata {
     let meta = Metadata::new()
         .title(facts.title.clone())
         .description(facts.description.clone())
@@ -132,7 +126,7 @@ fn date_time(date: Date) -> DateTime {
 
 /// Paints ink on a surface, `offset` points from the page's upper left corner; returns what was tagged,
 /// in reading order, for the caller's tag tree.
-pub fn paint(surface: &mut Surface<'_>, ink: &Ink, offset: Vec2, fonts: &Fonts) -> Vec<Identifier> {
+fn paint(surface: &mut Surface<'_>, ink: &Ink, offset: Vec2, fonts: &Fonts) -> Vec<Identifier> {
     let mut ids = Vec::new();
     let all = pieces(&ink.items);
     let mut marks = all.iter().filter_map(|p| match p {

@@ -146,7 +146,9 @@ fn encode(
     ] {
         // plain chunks hold Latin-1 only
         if text.is_empty() {
-        } else if text.chars().all(|c| u32::from(c) < 256 && c != '\0') {
+            continue;
+        }
+        if text.chars().all(|c| u32::from(c) < 256 && c != '\0') {
             encoder.add_text_chunk(keyword.to_owned(), text.clone())?;
         } else {
             encoder.add_itxt_chunk(keyword.to_owned(), text.replace('\0', ""))?;

@@ -9,8 +9,8 @@ use chem::pipeline::{Place, Verdict};
 use chem::solve::require::RequirementError;
 use egui::text::{LayoutJob, TextFormat};
 use egui::{
-    Align, Button, Color32, Frame, Id, Key, Layout, Response, RichText, Stroke, TextBuffer,
-    TextEdit, Ui, vec2,
+    Align, Color32, Frame, Id, Key, Layout, Response, RichText, Stroke, TextBuffer, TextEdit, Ui,
+    vec2,
 };
 
 /// The line and its caret.
@@ -302,15 +302,10 @@ fn make(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
     if !session.can_carry() || session.is_searching() || session.refusal().is_some() {
         return;
     }
-    let colors = Colors::of(ui);
-    let words = Command::MakeItCarry.words(session).into_owned();
-    let button = Button::new(RichText::new(words).color(colors.on_accent))
-        .fill(colors.accent)
-        .stroke(Stroke::NONE)
-        .min_size(vec2(136.0, 32.0));
-    let help = Command::MakeItCarry.help();
-    if ui.add(button).on_hover_text(help).clicked() {
-        out.push(Command::MakeItCarry);
+    let command = Command::MakeItCarry;
+    let button = theme::filled(ui, &command.words(session), 136.0);
+    if button.on_hover_text(command.help()).clicked() {
+        out.push(command);
     }
 }
 

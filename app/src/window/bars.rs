@@ -8,7 +8,7 @@ use crate::session::Session;
 use chem::molecule::charge_text;
 use chem::pipeline::Verdict;
 use egui::text::{LayoutJob, TextFormat};
-use egui::{Align, Button, Key, Layout, MenuBar, RichText, Stroke, Ui};
+use egui::{Align, Button, Layout, MenuBar, RichText, Ui};
 
 /// The menus, and the file's name at the right.
 pub(super) fn menus(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
@@ -20,7 +20,7 @@ pub(super) fn menus(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
                 for command in commands {
                     match command {
                         Some(command) => item(ui, session, command, out),
-                        None => gap(ui),
+                        None => theme::hairline(ui, GRID),
                     }
                 }
             });
@@ -55,17 +55,6 @@ fn item(ui: &mut Ui, session: &Session, command: &Command, out: &mut Vec<Command
     }
 }
 
-fn gap(ui: &mut Ui) {
-    let colors = Colors::of(ui);
-    let (rect, _) =
-        ui.allocate_exact_size(egui::vec2(ui.available_width(), GRID), egui::Sense::hover());
-    ui.painter().hline(
-        rect.x_range(),
-        rect.center().y,
-        Stroke::new(1.0, colors.hairline),
-    );
-}
-
 /// Keys in words, as they stand on the keyboard.
 fn keys(shortcut: Shortcut) -> String {
     let mut words = String::new();
@@ -83,7 +72,6 @@ fn keys(shortcut: Shortcut) -> String {
         "PageUp" => "Page Up",
         other => other,
     };
-    debug_assert!(Key::from_name(shortcut.key).is_some(), "{}", shortcut.key);
     words + name
 }
 
@@ -148,4 +136,21 @@ pub(super) fn notice(ui: &mut Ui, verdict: Verdict, text: &str) -> bool {
         ui.button("Dismiss").clicked()
     })
     .inner
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use egui::Key;
+
+    #[test]
+    fn every_shortcut_is_on_the_keyboard() {
+        let commands = MENUS.iter().flat_map(|(_, menu)| menu.iter().flatten());
+        let shortcuts: Vec<Shortcut> = commands.filter_map(Command::shortcut).collect();
+        assert!(shortcuts.len() > 20);
+        for shortcut in shortcuts {
+            assert!(Key::from_name(shortcut.key).is_some(), "{shortcut:?}");
+            assert!(keys(shortcut).is_ascii() || shortcut.key == "Minus");
+        }
+    }
 }

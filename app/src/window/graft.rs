@@ -1,6 +1,6 @@
 //! The graft: with something selected, typing opens a small entry there, with a live ghost.
 
-use super::sheet::{Ghost, View, beside, selection_rect};
+use super::sheet::{View, beside, selection_rect};
 use super::theme::{self, Colors, GRID};
 use crate::command::Command;
 use crate::session::{Selection, Session};
@@ -9,7 +9,7 @@ use chem::layout::{self, Graft, GraftError};
 use egui::text::{CCursor, CCursorRange};
 use egui::{
     Area, CornerRadius, Event, Frame, Id, Key, Margin, Modifiers, Order, Pos2, Rect, RichText,
-    Stroke, TextEdit, Ui, vec2,
+    Stroke, TextEdit, Ui, Vec2, vec2,
 };
 
 /// The open entry.
@@ -80,20 +80,29 @@ impl Entry {
     }
 
     /// The drawing as it would be.
-    pub(super) fn ghost(&self, session: &Session) -> Option<Ghost> {
+    pub(super) fn ghost(&self, session: &Session) -> Option<Drawing> {
         let graft = self.graft(session).ok()?;
-        let (drawing, _) = session.drawing().apply(&graft.edits).ok()?;
-        Some(Ghost { drawing })
+        Some(session.drawing().apply(&graft.edits).ok()?.0)
     }
 
     /// Shows the entry; Enter takes it, Escape drops it.
-    pub(super) fn show(&mut self, ui: &Ui, session: &Session, view: &View, sheet: Rect) -> Outcome {
+    ///
+    /// `after` is the drawing that is shown, with the ghost if there is one; `sheet` the paper's place.
+    pub(super) fn show(
+        &mut self,
+        ui: &Ui,
+        session: &Session,
+        after: &Drawing,
+        view: &View,
+        sheet: Rect,
+    ) -> Outcome {
         let graft = self.graft(session);
         let colors = Colors::of(ui);
         let size = vec2(248.0, 96.0);
-        let around = match session.selection().is_empty() {
-            true => Rect::from_center_size(sheet.center(), vec2(0.0, 0.0)),
-            false => selection_rect(session, view).expand(12.0),
+        let around = if session.selection().is_empty() {
+            Rect::from_center_size(sheet.center(), Vec2::ZERO)
+        } else {
+            selection_rect(session, view).expand(12.0)
         };
         let (enter, escape) = ui.input_mut(|i| {
             (
@@ -101,8 +110,6 @@ impl Entry {
                 i.consume_key(Modifiers::NONE, Key::Escape),
             )
         });
-        let ghost = self.ghost(session);
-        let after = ghost.as_ref().map_or(&**session.drawing(), |g| &g.drawing);
         let points = busy(after, view);
         let at = beside(sheet, around, size, &points, self.at);
         self.at = Some(at);

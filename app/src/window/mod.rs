@@ -27,7 +27,7 @@ use graft::{Entry, Outcome};
 use prompts::{Next, PathField};
 use search::Search;
 use sheet::Sheet;
-use std::path::{Path, PathBuf};
+use std::path::PathBuf;
 use theme::{Colors, GRID};
 
 /// Why there is no window.
@@ -120,11 +120,6 @@ impl Window {
     pub fn screen_of(&self, atom: chem::molecule::AtomIx) -> Option<egui::Pos2> {
         let point = self.session.drawing().points().get(atom.index())?;
         Some(self.sheet.view.to_screen(*point))
-    }
-
-    /// Whether the window asks to be closed.
-    pub fn is_closing(&self) -> bool {
-        self.closing
     }
 
     fn tell_notice(&mut self) {
@@ -226,7 +221,8 @@ impl Window {
         let Some(entry) = &mut self.graft else {
             return;
         };
-        match entry.show(ui, &self.session, &self.sheet.view, response.rect) {
+        let after = ghost.as_ref().unwrap_or(self.session.drawing());
+        match entry.show(ui, &self.session, after, &self.sheet.view, response.rect) {
             Outcome::Open => {}
             Outcome::Dropped => {
                 self.graft = None;
@@ -342,7 +338,7 @@ impl eframe::App for Window {
 /// If the file cannot be opened or the platform gives no window.
 pub fn run(path: Option<PathBuf>) -> Result<(), WindowError> {
     let window = match path {
-        Some(path) => Window::new(Session::open(Path::new(&path))?),
+        Some(path) => Window::new(Session::open(&path)?),
         None => Window::demo(),
     };
     if !dialogs::listen() {

@@ -33,6 +33,16 @@ pub(super) fn chosen(session: &Session) -> Option<&Place> {
     session.report().places.iter().find(whole)
 }
 
+/// The end of the place that holds its `i`th ligand in the ranking, and the letter of that rank.
+pub(super) fn rank(kind: Kind, i: usize) -> Option<(usize, &'static str)> {
+    let letters = ["a", "b", "c", "d"];
+    let (end, rank) = match kind {
+        Kind::Tetrahedral => (0, i),
+        Kind::DoubleBond => (i / 2, i % 2),
+    };
+    Some((end, letters.get(rank)?))
+}
+
 /// The selection of a place: its centre, or its bond.
 fn selection(session: &Session, place: &Place) -> Selection {
     match place.atoms.as_slice() {
@@ -75,7 +85,7 @@ pub(super) fn show(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
         }
         if let Some(place) = chosen {
             ui.add_space(2.0 * GRID);
-            hairline(ui);
+            theme::hairline(ui, 1.0);
             ui.add_space(2.0 * GRID);
             why(ui, session, place);
         }
@@ -91,16 +101,6 @@ fn heading(ui: &mut Ui, text: &str) {
     );
 }
 
-fn hairline(ui: &mut Ui) {
-    let colors = Colors::of(ui);
-    let (rect, _) = ui.allocate_exact_size(vec2(ui.available_width(), 1.0), Sense::hover());
-    ui.painter().hline(
-        rect.x_range(),
-        rect.center().y,
-        Stroke::new(1.0, colors.hairline),
-    );
-}
-
 fn header(ui: &mut Ui) {
     let colors = Colors::of(ui);
     let (rect, _) = ui.allocate_exact_size(vec2(ui.available_width(), 20.0), Sense::hover());
@@ -113,7 +113,7 @@ fn header(ui: &mut Ui) {
             colors.muted,
         );
     }
-    hairline(ui);
+    theme::hairline(ui, 1.0);
 }
 
 fn letter(d: Option<chem::stereo::Descriptor>) -> String {
@@ -234,19 +234,17 @@ fn why(ui: &mut Ui, session: &Session, place: &Place) {
         }
     });
     ui.add_space(GRID);
-    let split = place.kind == Kind::DoubleBond;
     for (i, ligand) in place.ranking.iter().enumerate() {
-        if split && i % 2 == 0 {
+        let Some((end, letter)) = rank(place.kind, i) else {
+            break;
+        };
+        if place.kind == Kind::DoubleBond && letter == "a" {
             ui.add_space(GRID / 2.0);
-            let end = place.atoms.get(i / 2).map_or(0, |a| a.index() + 1);
-            ui.label(
-                RichText::new(format!("at {end}"))
-                    .small()
-                    .color(colors.muted),
-            );
+            let number = place.atoms.get(end).map_or(0, |a| a.index() + 1);
+            let text = format!("at {number}");
+            ui.label(RichText::new(text).small().color(colors.muted));
         }
-        let name = ["a", "b", "c", "d"][if split { i % 2 } else { i.min(3) }];
-        ligand_row(ui, session, name, *ligand, &colors);
+        ligand_row(ui, session, letter, *ligand, &colors);
     }
     if let Some(rule) = place.rule {
         ui.add_space(GRID / 2.0);

@@ -40,17 +40,6 @@ fn frame(ui: &Ui) -> Frame {
         .inner_margin(Margin::same(24))
 }
 
-/// A button that does what Enter does.
-fn filled(ui: &mut Ui, words: &str) -> egui::Response {
-    let colors = Colors::of(ui);
-    let text = RichText::new(words).color(colors.on_accent);
-    let button = Button::new(text)
-        .fill(colors.accent)
-        .stroke(Stroke::NONE)
-        .min_size(vec2(88.0, 32.0));
-    ui.add(button)
-}
-
 fn quiet(ui: &mut Ui, words: &str) -> egui::Response {
     ui.add(Button::new(words).min_size(vec2(88.0, 32.0)))
 }
@@ -68,7 +57,7 @@ pub(super) fn keep(ui: &Ui, name: &str) -> Option<Keep> {
             );
             ui.add_space(2.0 * GRID);
             ui.horizontal(|ui| {
-                let save = filled(ui, "Save");
+                let save = theme::filled(ui, "Save", 88.0);
                 if ui.memory(|m| m.focused().is_none()) {
                     save.request_focus();
                 }
@@ -190,7 +179,7 @@ impl PathField {
                 }
                 ui.add_space(2.0 * GRID);
                 ui.horizontal(|ui| {
-                    let go = filled(ui, self.verb()).clicked() || entered;
+                    let go = theme::filled(ui, self.verb(), 88.0).clicked() || entered;
                     if go && let Some(path) = self.take() {
                         result = Typed::Path(path);
                     }

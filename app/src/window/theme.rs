@@ -5,8 +5,8 @@ use chem::pipeline::Verdict;
 use egui::epaint::text::{FontInsert, FontPriority, InsertFontFamily};
 use egui::text::{LayoutJob, TextFormat};
 use egui::{
-    Color32, Context, CornerRadius, FontData, FontFamily, FontId, Margin, Shadow, Stroke,
-    TextStyle, Theme, Vec2, Visuals, vec2,
+    Button, Color32, Context, CornerRadius, FontData, FontFamily, FontId, Margin, Response,
+    RichText, Sense, Shadow, Stroke, TextStyle, Theme, Ui, Vec2, Visuals, vec2,
 };
 
 /// Colors of one appearance.
@@ -65,7 +65,7 @@ pub(super) const DARK: Colors = Colors {
 
 impl Colors {
     /// Those in use on the desk.
-    pub(super) fn of(ui: &egui::Ui) -> Colors {
+    pub(super) fn of(ui: &Ui) -> Colors {
         if ui.visuals().dark_mode { DARK } else { LIGHT }
     }
 
@@ -118,6 +118,24 @@ pub(super) fn scripted(job: &mut LayoutJob, symbol: &str, n: usize, size: f32, c
         format.valign = egui::Align::BOTTOM;
         job.append(&n.to_string(), 0.0, format);
     }
+}
+
+/// A thin line across, in the middle of a strip of this height.
+pub(super) fn hairline(ui: &mut Ui, height: f32) {
+    let size = vec2(ui.available_width(), height);
+    let (rect, _) = ui.allocate_exact_size(size, Sense::hover());
+    let line = Stroke::new(1.0, Colors::of(ui).hairline);
+    ui.painter().hline(rect.x_range(), rect.center().y, line);
+}
+
+/// A button for what is most likely wanted, in the accent.
+pub(super) fn filled(ui: &mut Ui, words: &str, width: f32) -> Response {
+    let colors = Colors::of(ui);
+    let button = Button::new(RichText::new(words).color(colors.on_accent))
+        .fill(colors.accent)
+        .stroke(Stroke::NONE)
+        .min_size(vec2(width, 32.0));
+    ui.add(button)
 }
 
 /// Installs the faces and the look. The faces are there from the next frame on.

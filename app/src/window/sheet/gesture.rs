@@ -55,7 +55,7 @@ pub(super) fn hit(drawing: &Drawing, view: &View, at: Pos2) -> Selection {
 
 impl Gesture {
     /// The drawing as it would be if the move ended now.
-    pub(super) fn preview(&self, session: &Session, _view: &View) -> Option<Drawing> {
+    pub(super) fn preview(&self, session: &Session) -> Option<Drawing> {
         let Gesture::Move(from, to) = self else {
             return None;
         };

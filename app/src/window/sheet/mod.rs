@@ -41,12 +41,6 @@ pub(super) struct Sheet {
     id: Option<egui::Id>,
 }
 
-/// A drawing that may come, shown instead of the one that is there: new parts in the accent.
-#[derive(Debug)]
-pub(super) struct Ghost {
-    pub(super) drawing: Drawing,
-}
-
 impl Sheet {
     pub(super) fn new() -> Sheet {
         Sheet {
@@ -96,12 +90,13 @@ impl Sheet {
         Some((width, self.view.percent(composed.ink.points_per_unit)))
     }
 
-    /// Shows the sheet and collects what is to be done.
+    /// Shows the sheet and collects what is to be done. A `ghost` is a drawing that may come, shown
+    /// instead of the one that is there with its new parts in the accent.
     pub(super) fn show(
         &mut self,
         ui: &mut Ui,
         session: &Session,
-        ghost: Option<&Ghost>,
+        ghost: Option<&Drawing>,
         out: &mut Vec<Command>,
     ) -> Response {
         let rect = ui.available_rect_before_wrap();
@@ -153,7 +148,7 @@ impl Sheet {
         });
     }
 
-    fn paint(&mut self, ui: &Ui, response: &Response, session: &Session, ghost: Option<&Ghost>) {
+    fn paint(&mut self, ui: &Ui, response: &Response, session: &Session, ghost: Option<&Drawing>) {
         let rect = self.view.rect();
         let desk = Colors::of(ui);
         let painter = ui.painter_at(rect.expand(3.0));
@@ -170,8 +165,8 @@ impl Sheet {
         };
         self.frame(&painter, session, composed);
         self.selection(&painter, session);
-        let moved = self.gesture.preview(session, &self.view);
-        let shown = moved.as_ref().or(ghost.map(|g| &g.drawing));
+        let moved = self.gesture.preview(session);
+        let shown = moved.as_ref().or(ghost);
         match shown {
             Some(after) => self.paint_ghost(&painter, session, after),
             None => {

@@ -3,11 +3,13 @@
 use super::gesture::{self, Gesture};
 use super::{Composed, Sheet};
 use crate::session::{Selection, Session};
+use crate::window::places::{self, rank};
 use crate::window::theme::{self, LIGHT};
 use chem::drawing::Drawing;
+use chem::geom::{self, Point};
 use chem::molecule::{AtomIx, Order};
 use chem::pipeline::Place;
-use chem::stereo::{Kind, Ligand};
+use chem::stereo::Ligand;
 use egui::{Align2, Painter, Pos2, Rect, Response, Stroke, StrokeKind, pos2, vec2};
 
 /// Space between the ink and the corner ticks, in screen points.
@@ -86,7 +88,7 @@ impl Sheet {
 
     /// The letters a, b, c, d beside the ligands of the selected place.
     pub(super) fn ranking(&self, painter: &Painter, session: &Session, composed: &Composed) {
-        let Some(place) = super::super::places::chosen(session) else {
+        let Some(place) = places::chosen(session) else {
             return;
         };
         let drawing = session.drawing();
@@ -212,15 +214,14 @@ fn bond(painter: &Painter, ends: [Pos2; 2], order: Order, line: Stroke) {
     }
 }
 
+/// Distance on the screen.
 fn segment_distance(at: Pos2, a: Pos2, b: Pos2) -> f32 {
-    let v = b - a;
-    let t = ((at - a).dot(v) / v.length_sq().max(1e-6)).clamp(0.0, 1.0);
-    at.distance(a + t * v)
+    let [at, a, b] = [at, a, b].map(|p| Point::new(f64::from(p.x), f64::from(p.y)));
+    geom::distance_to_segment(at, a, b) as f32
 }
 
 /// The atoms of each ranked ligand that is drawn: the one that holds it, the ligand, its letter.
 fn letters(place: &Place) -> Vec<(AtomIx, AtomIx, &'static str)> {
-    const NAMES: [&str; 4] = ["a", "b", "c", "d"];
     let ends = place.atoms.as_slice();
     let ranked = place.ranking.iter().enumerate();
     ranked
@@ -228,27 +229,8 @@ fn letters(place: &Place) -> Vec<(AtomIx, AtomIx, &'static str)> {
             let Ligand::Atom(to) = *ligand else {
                 return None;
             };
-            let (from, name) = match place.kind {
-                Kind::Tetrahedral => (ends.first()?, NAMES.get(i)?),
-                Kind::DoubleBond => (ends.get(i / 2)?, NAMES.get(i % 2)?),
-            };
-            Some((*from, to, *name))
+            let (end, letter) = rank(place.kind, i)?;
+            Some((*ends.get(end)?, to, letter))
         })
         .collect()
-}
-
-#[cfg(test)]
-mod tests {
-    use super::super::View;
-    use super::*;
-
-    #[test]
-    fn view_goes_there_and_back() {
-        let mut view = View::new();
-        view.place(Rect::from_min_max(pos2(100.0, 50.0), pos2(900.0, 650.0)));
-        view.zoom(1.7, pos2(300.0, 200.0), 1.0);
-        view.pan(vec2(13.0, -40.0));
-        let p = pos2(321.0, 123.0);
-        assert!(view.to_screen(view.to_drawing(p)).distance(p) < 1e-3);
-    }
 }

@@ -156,3 +156,18 @@ pub(in super::super) fn beside(
     let best = centers.min_by_key(|c| covered(*c));
     best.unwrap_or(around.center()) - half
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn view_goes_there_and_back() {
+        let mut view = View::new();
+        view.place(Rect::from_min_max(pos2(100.0, 50.0), pos2(900.0, 650.0)));
+        view.zoom(1.7, pos2(300.0, 200.0), 1.0);
+        view.pan(vec2(13.0, -40.0));
+        let p = pos2(321.0, 123.0);
+        assert!(view.to_screen(view.to_drawing(p)).distance(p) < 1e-3);
+    }
+}

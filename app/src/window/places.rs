@@ -203,13 +203,20 @@ fn place_number(place: &Place) -> String {
         .iter()
         .map(|a| (a.index() + 1).to_string())
         .collect();
-    numbers.join("=")
+    let dash = match place.kind {
+        Kind::HinderedAxis | Kind::Helix => "-",
+        Kind::Tetrahedral | Kind::DoubleBond | Kind::CumulatedAxis => "=",
+    };
+    numbers.join(dash)
 }
 
 fn tip(place: &Place) -> String {
     let what = match place.kind {
         Kind::Tetrahedral => "stereogenic centre",
         Kind::DoubleBond => "stereogenic double bond",
+        Kind::CumulatedAxis => "axis of cumulated double bonds",
+        Kind::HinderedAxis => "hindered axis",
+        Kind::Helix => "helix",
     };
     let sense = place.sense.name();
     format!("{what}, drawn: {sense}")
@@ -234,7 +241,7 @@ fn why(ui: &mut Ui, session: &Session, place: &Place) {
         }
     });
     ui.add_space(GRID);
-    let split = place.kind == Kind::DoubleBond;
+    let split = place.kind != Kind::Tetrahedral;
     for (i, ligand) in place.ranking.iter().enumerate() {
         if split && i % 2 == 0 {
             ui.add_space(GRID / 2.0);

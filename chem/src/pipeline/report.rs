@@ -6,7 +6,7 @@ use crate::drawing::{Drawing, Mark};
 use crate::molecule::AtomIx;
 use crate::perceive::Rings;
 use crate::solve::require::Requirement;
-use crate::stereo::{Configuration, Descriptor, Focus, Ligand, Unit, UnitIx, Units};
+use crate::stereo::{Configuration, Descriptor, Focus, Kind, Ligand, Unit, UnitIx, Units};
 use crate::wedge::{self, Reading};
 
 /// What a drawing carries, and how that stands to a requirement (an empty one asks nothing).
@@ -90,7 +90,9 @@ fn is_shown(
                 && matches!(unit.focus, Focus::Center(_));
             let silent =
                 reading.doubt(ix).is_none() && reading.configuration(ix) == Configuration::Open;
-            label.ranking.is_some() && !(held_by_cage && silent)
+            // only a mark says that rotation about a bond is hindered or that rings form a helix
+            let needs_mark = matches!(unit.kind, Kind::HinderedAxis | Kind::Helix);
+            label.ranking.is_some() && !((held_by_cage || needs_mark) && silent)
         }
         Err(Missing::Stopped(_)) => has_mark(drawing, unit),
         _ => false,

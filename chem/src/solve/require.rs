@@ -231,6 +231,7 @@ impl Sheet<'_> {
                 let carried = match unit.kind {
                     Kind::Tetrahedral => "R or S",
                     Kind::DoubleBond => "E or Z",
+                    Kind::CumulatedAxis | Kind::HinderedAxis | Kind::Helix => "M or P",
                 };
                 error(
                     "S-KIND",
@@ -299,14 +300,21 @@ impl Sheet<'_> {
             .map(|item| Ok((item, plain(item)?)))
             .collect::<Result<Vec<_>, RequirementError>>()?;
         let mut found = Vec::new();
-        for kind in [Kind::Tetrahedral, Kind::DoubleBond] {
-            let of_kind: Vec<_> = asked.iter().filter(|(_, d)| kind.can_carry(*d)).collect();
+        for kinds in [
+            [Kind::Tetrahedral].as_slice(),
+            &[Kind::DoubleBond],
+            &[Kind::CumulatedAxis, Kind::HinderedAxis, Kind::Helix],
+        ] {
+            let of_kind: Vec<_> = asked
+                .iter()
+                .filter(|(_, d)| kinds.iter().any(|k| k.can_carry(*d)))
+                .collect();
             let Some((first, descriptor)) = of_kind.first() else {
                 continue;
             };
             let places: Vec<UnitIx> = self
                 .could_carry()
-                .filter(|(_, u)| u.kind == kind)
+                .filter(|(_, u)| kinds.contains(&u.kind))
                 .map(|(ix, _)| ix)
                 .collect();
             let column = first.columns.start;
@@ -323,13 +331,6 @@ impl Sheet<'_> {
                 return Err(error("S-COUNT", column, text));
             }
             found.extend(places.into_iter().map(|ix| (ix, *descriptor)));
-        }
-        if let Some((item, d)) = asked
-            .iter()
-            .find(|(_, d)| !Kind::Tetrahedral.can_carry(*d) && !Kind::DoubleBond.can_carry(*d))
-        {
-            let text = format!("{d} belongs to an axis or helix, which are not handled yet");
-            return Err(error("S-KIND", item.columns.start, text));
         }
         Ok(found)
     }

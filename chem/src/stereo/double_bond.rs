@@ -1,43 +1,38 @@
 //! Stereogenic double bonds: two different places at each end, not in a ring too small for both geometries.
 //!
-//! Bonds of cumulated chains belong to other kinds of unit.
+//! A chain of three, five ... cumulated double bonds lies flat like a single one and is read alike.
 
-use super::{Focus, Kind, Ligand, Unit};
+use super::cumulated::Chain;
+use super::{Kind, Ligand, Unit};
 use crate::element::Element;
-use crate::molecule::{AtomIx, BondIx, Molecule, Order};
+use crate::molecule::{AtomIx, Molecule, Order};
 use crate::perceive::Rings;
 
 /// The largest ring whose double bonds have one geometry only (InChI technical manual, appendix 5).
 pub const LARGEST_CIS_RING: usize = 7;
 
-pub(super) fn find(molecule: &Molecule, rings: &Rings, list: &mut Vec<Unit>) {
-    let first = list.len();
-    for bond in molecule.bonds() {
-        if let Some(unit) = unit(molecule, rings, bond) {
-            list.push(unit);
+pub(super) fn find(molecule: &Molecule, rings: &Rings, chains: &[Chain], list: &mut Vec<Unit>) {
+    for chain in chains.iter().filter(|c| c.atoms.len() % 2 == 0) {
+        let small = chain.bonds.iter().any(|b| {
+            rings
+                .smallest_through(*b)
+                .is_some_and(|n| n <= LARGEST_CIS_RING)
+        });
+        if small {
+            continue;
+        }
+        if let Some(ligands) = chain_ligands(molecule, chain) {
+            list.push(chain.unit(Kind::DoubleBond, ligands));
         }
     }
-    list[first..].sort_by_key(Unit::atoms);
 }
 
-fn unit(molecule: &Molecule, rings: &Rings, bond: BondIx) -> Option<Unit> {
-    let b = molecule.bond(bond);
-    if b.order != Order::Double
-        || rings
-            .smallest_through(bond)
-            .is_some_and(|n| n <= LARGEST_CIS_RING)
-    {
-        return None;
-    }
-    let mut ends = b.ends;
-    ends.sort_unstable();
-    let [a, c] = end_ligands(molecule, ends[0], ends[1])?;
-    let [d, e] = end_ligands(molecule, ends[1], ends[0])?;
-    Some(Unit {
-        kind: Kind::DoubleBond,
-        focus: Focus::Pair(ends),
-        ligands: [a, c, d, e],
-    })
+/// The two ligands of each end of a chain.
+pub(super) fn chain_ligands(molecule: &Molecule, chain: &Chain) -> Option<[Ligand; 4]> {
+    let n = chain.atoms.len();
+    let [a, b] = end_ligands(molecule, chain.atoms[0], chain.atoms[1])?;
+    let [c, d] = end_ligands(molecule, chain.atoms[n - 1], chain.atoms[n - 2])?;
+    Some([a, b, c, d])
 }
 
 /// The two ligands of one end in reference order; at least the first is a drawn atom.

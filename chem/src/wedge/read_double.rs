@@ -6,7 +6,8 @@
 use super::read::Doubt;
 use crate::drawing::{Drawing, Mark};
 use crate::molecule::{AtomIx, Order};
-use crate::stereo::{Configuration, Ligand, Parity};
+use crate::stereo::{Configuration, Ligand, Parity, Unit};
+use smallvec::SmallVec;
 
 /// Sine of 5 degrees.
 const ON_AXIS: f64 = 0.087_155_742_747_658_17;
@@ -14,12 +15,18 @@ const ON_AXIS: f64 = 0.087_155_742_747_658_17;
 pub(super) fn read(
     drawing: &Drawing,
     ends: [AtomIx; 2],
-    ligands: &[Ligand; 4],
+    unit: &Unit,
 ) -> Result<Configuration, Doubt> {
-    let molecule = drawing.molecule();
-    let crossed = molecule
-        .bond_between(ends[0], ends[1])
-        .is_some_and(|b| drawing.mark(b) == Mark::Crossed);
+    let ligands = &unit.ligands;
+    let mut chain: SmallVec<[AtomIx; 4]> = SmallVec::from_slice(&ends[..1]);
+    chain.extend_from_slice(&unit.inner);
+    chain.push(ends[1]);
+    let crossed = chain.windows(2).any(|pair| {
+        drawing
+            .molecule()
+            .bond_between(pair[0], pair[1])
+            .is_some_and(|b| drawing.mark(b) == Mark::Crossed)
+    });
     if crossed || has_wavy(drawing, ends[0]) || has_wavy(drawing, ends[1]) {
         return Ok(Configuration::Either);
     }
@@ -123,7 +130,7 @@ mod tests {
         let d = draw(atoms, bonds);
         let units = Units::find(d.molecule(), &Rings::find(d.molecule()));
         let (_, unit) = units.iter().next().unwrap();
-        read(&d, unit.atoms().to_vec().try_into().unwrap(), &unit.ligands)
+        read(&d, unit.atoms().to_vec().try_into().unwrap(), unit)
     }
 
     const BONDS: [(usize, usize, u8, char); 3] = [(0, 1, 1, ' '), (1, 2, 2, ' '), (2, 3, 1, ' ')];

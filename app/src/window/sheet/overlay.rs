@@ -230,7 +230,9 @@ fn letters(place: &Place) -> Vec<(AtomIx, AtomIx, &'static str)> {
             };
             let (from, name) = match place.kind {
                 Kind::Tetrahedral => (ends.first()?, NAMES.get(i)?),
-                Kind::DoubleBond => (ends.get(i / 2)?, NAMES.get(i % 2)?),
+                Kind::DoubleBond | Kind::CumulatedAxis | Kind::HinderedAxis | Kind::Helix => {
+                    (ends.get(i / 2)?, NAMES.get(i % 2)?)
+                }
             };
             Some((*from, to, *name))
         })

@@ -48,6 +48,9 @@ impl std::error::Error for TurnError {}
 pub struct Geometry {
     /// Its two ends.
     pub ends: [AtomIx; 2],
+    /// The neighbors of the ends on the way to each other: the ends themselves, or the inner atoms of a
+    /// chain of cumulated double bonds.
+    pub toward: [AtomIx; 2],
     /// Of each end the ligand that counts (the unit's first ligand there).
     pub first: [AtomIx; 2],
     /// `Even`: these two on the same side.
@@ -64,10 +67,12 @@ pub fn turn(drawing: &Drawing, rings: &Rings, wanted: Geometry) -> Result<Vec<Ed
     }
     let mut pose = Pose::new(drawing);
     let mut edits = clear_either(drawing, wanted.ends);
-    let axis = drawing
-        .molecule()
-        .bond_between(wanted.ends[0], wanted.ends[1]);
-    let Some(axis) = axis else {
+    let way = |k: usize| {
+        drawing
+            .molecule()
+            .bond_between(wanted.ends[k], wanted.toward[k])
+    };
+    let (Some(first), Some(last)) = (way(0), way(1)) else {
         return Ok(edits);
     };
     for k in 0..2 {
@@ -77,10 +82,10 @@ pub fn turn(drawing: &Drawing, rings: &Rings, wanted: Geometry) -> Result<Vec<Ed
     }
     let same = pose.side(wanted, 0) == pose.side(wanted, 1);
     if same != (wanted.parity == Parity::Even) {
-        if rings.has_bond(axis) {
+        if rings.has_bond(first) {
             return Err(TurnError::InRing);
         }
-        pose = mirrored(&pose, wanted, axis, rings)?;
+        pose = mirrored(&pose, wanted, [first, last], rings)?;
     }
     edits.extend(pose.edits());
     Ok(edits)
@@ -93,7 +98,7 @@ fn clear_either(drawing: &Drawing, ends: [AtomIx; 2]) -> Vec<Edit> {
     for end in ends {
         for n in molecule.neighbors(end) {
             let either = match drawing.mark(n.bond) {
-                Mark::Crossed => end == ends[0] && n.atom == ends[1],
+                Mark::Crossed => !edits.contains(&Edit::Mark(n.bond, Mark::Plain)),
                 Mark::Wavy(_) => {
                     n.order == Order::Single && drawing.mark_from(end, n.bond) != Mark::Plain
                 }
@@ -152,7 +157,7 @@ impl<'a> Pose<'a> {
             .neighbors(wanted.ends[k])
             .iter()
             .map(|n| n.atom)
-            .find(|a| *a != wanted.ends[1 - k] && *a != wanted.first[k])
+            .find(|a| *a != wanted.toward[k] && *a != wanted.first[k])
     }
 
     fn edits(&self) -> Vec<Edit> {
@@ -260,13 +265,14 @@ enum Relief {
 fn mirrored<'a>(
     pose: &Pose<'a>,
     wanted: Geometry,
-    axis: BondIx,
+    axis: [BondIx; 2],
     rings: &Rings,
 ) -> Result<Pose<'a>, TurnError> {
     let mut sides: Vec<Vec<AtomIx>> = wanted
         .ends
         .iter()
-        .map(|end| beyond(pose.drawing, axis, *end).ok_or(TurnError::InRing))
+        .zip(axis)
+        .map(|(end, bond)| beyond(pose.drawing, bond, *end).ok_or(TurnError::InRing))
         .collect::<Result<_, _>>()?;
     // the lesser side first; at equal size the one of the later end
     sides.sort_by_key(Vec::len);
@@ -404,6 +410,7 @@ mod tests {
     fn wanted(parity: Parity) -> Geometry {
         Geometry {
             ends: [ix(1), ix(2)],
+            toward: [ix(2), ix(1)],
             first: [ix(0), ix(3)],
             parity,
         }

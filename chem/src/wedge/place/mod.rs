@@ -12,14 +12,17 @@
 //! ST-0.5; none in rings; hydrogen in the widest gap, ST-1.1.4); their weights are our own.
 
 mod assign;
+mod axis;
 mod cost;
 mod hydrogen;
 mod option;
 
+pub use axis::place_axis;
+
 use crate::drawing::{Drawing, Edit, Mark};
 use crate::molecule::{Atom, AtomIx, BondIx, Order};
 use crate::perceive::Rings;
-use crate::stereo::{Focus, Parity, UnitIx, Units};
+use crate::stereo::{Focus, Kind, Parity, UnitIx, Units};
 use option::{Choice, Site};
 use std::fmt;
 
@@ -105,6 +108,7 @@ struct Scene<'a> {
     /// Whether an atom is the focus of a centre, or an end of a double bond unit.
     is_center: Vec<bool>,
     is_double_end: Vec<bool>,
+    is_axis_end: Vec<bool>,
     is_target: Vec<bool>,
 }
 
@@ -122,14 +126,24 @@ impl<'a> Scene<'a> {
             rings,
             is_center: vec![false; n],
             is_double_end: vec![false; n],
+            is_axis_end: vec![false; n],
             is_target: vec![false; n],
         };
         for (_, unit) in units.iter() {
             match unit.focus {
                 Focus::Center(a) => scene.is_center[a.index()] = true,
+                Focus::Pair(_) if unit.kind == Kind::Helix => {
+                    for a in unit.toward_each_other() {
+                        scene.is_axis_end[a.index()] = true;
+                    }
+                }
                 Focus::Pair(ends) => {
                     for a in ends {
-                        scene.is_double_end[a.index()] = true;
+                        if unit.kind == Kind::DoubleBond {
+                            scene.is_double_end[a.index()] = true;
+                        } else {
+                            scene.is_axis_end[a.index()] = true;
+                        }
                     }
                 }
             }
@@ -158,6 +172,7 @@ impl<'a> Scene<'a> {
         }
         // a mark that another unit needs stays; one that says nothing may be replaced
         let needed = self.is_center[narrow.index()]
+            || self.is_axis_end[narrow.index()]
             || (matches!(mark, Mark::Wavy(_)) && self.is_double_end[narrow.index()]);
         !needed
     }

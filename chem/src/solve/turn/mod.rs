@@ -12,7 +12,7 @@ use crate::geom::{self, Point};
 use crate::molecule::{AtomIx, BondIx, Order};
 use crate::perceive::Rings;
 use crate::stereo::Parity;
-use clash::Clash;
+use clash::{Clash, ROOMY, TIGHT};
 use std::f64::consts::PI;
 use std::fmt;
 
@@ -85,7 +85,8 @@ pub fn turn(drawing: &Drawing, rings: &Rings, wanted: Geometry) -> Result<Vec<Ed
         if rings.has_bond(first) {
             return Err(TurnError::InRing);
         }
-        pose = mirrored(&pose, wanted, [first, last], rings)?;
+        let with = |clash| mirrored(&pose, wanted, [first, last], rings, clash);
+        pose = with(ROOMY).or_else(|_| with(TIGHT))?;
     }
     edits.extend(pose.edits());
     Ok(edits)
@@ -243,7 +244,7 @@ fn bend(pose: &mut Pose<'_>, rings: &Rings, wanted: Geometry, k: usize) -> Resul
             let about = trial.at(end);
             trial.swing(&side, about, axis + sign * turn - now);
         }
-        let clash = Clash::everywhere(&trial);
+        let clash = ROOMY.everywhere(&trial);
         if best.as_ref().is_none_or(|(least, _)| clash < *least) {
             best = Some((clash, trial));
         }
@@ -267,6 +268,7 @@ fn mirrored<'a>(
     wanted: Geometry,
     axis: [BondIx; 2],
     rings: &Rings,
+    room: Clash,
 ) -> Result<Pose<'a>, TurnError> {
     let mut sides: Vec<Vec<AtomIx>> = wanted
         .ends
@@ -276,20 +278,20 @@ fn mirrored<'a>(
         .collect::<Result<_, _>>()?;
     // the lesser side first; at equal size the one of the later end
     sides.sort_by_key(Vec::len);
-    let tolerated = Clash::everywhere(pose);
+    let tolerated = room.everywhere(pose);
     let mut poses = Vec::new();
     for side in &sides {
         let mut trial = pose.clone();
         let [a, b] = wanted.ends.map(|e| pose.at(e));
         trial.mirror(side, a, b);
-        if Clash::everywhere(&trial) <= tolerated {
+        if room.everywhere(&trial) <= tolerated {
             return Ok(trial);
         }
         poses.push((trial, side));
     }
     for (trial, side) in &poses {
         let reliefs = reliefs(trial, side, rings);
-        if let Some(found) = relieve(trial, &reliefs, tolerated) {
+        if let Some(found) = relieve(trial, &reliefs, tolerated, room) {
             return Ok(found);
         }
     }
@@ -333,11 +335,16 @@ fn reliefs(pose: &Pose<'_>, moved: &[AtomIx], rings: &Rings) -> Vec<Relief> {
     list
 }
 
-fn relieve<'a>(pose: &Pose<'a>, reliefs: &[Relief], tolerated: f64) -> Option<Pose<'a>> {
+fn relieve<'a>(
+    pose: &Pose<'a>,
+    reliefs: &[Relief],
+    tolerated: f64,
+    room: Clash,
+) -> Option<Pose<'a>> {
     let mut best: Option<(f64, Pose<'a>)> = None;
     for relief in reliefs {
         let trial = relieved(pose, *relief)?;
-        let clash = Clash::everywhere(&trial);
+        let clash = room.everywhere(&trial);
         if clash <= tolerated {
             return Some(trial);
         }
@@ -350,7 +357,7 @@ fn relieve<'a>(pose: &Pose<'a>, reliefs: &[Relief], tolerated: f64) -> Option<Po
         let (least, from) = best.take()?;
         for relief in reliefs {
             let trial = relieved(&from, *relief)?;
-            let clash = Clash::everywhere(&trial);
+            let clash = room.everywhere(&trial);
             if clash <= tolerated {
                 return Some(trial);
             }

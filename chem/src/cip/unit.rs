@@ -9,8 +9,9 @@ use super::context::Context;
 use super::digraph::{Digraph, NodeIx, NodeKind, Nodes, ROOT};
 use super::engine::{Engine, Ranked};
 use super::rules::Step;
+use super::why::{self, Tie};
 use super::{Limits, Ranking, Rule, Stop};
-use crate::molecule::AtomIx;
+use crate::molecule::{AtomIx, Molecule};
 use crate::stereo::{
     Descriptor, Focus, Kind, Ligand, Parity, Unit, UnitIx, Units, odd_permutation,
 };
@@ -101,6 +102,48 @@ pub(super) fn auxiliary_descriptor(
     };
     let found = sites.rank_both_ways(unit)?;
     Ok(found.map(|(ranking, varies)| letter(unit.kind, parity.flipped_if(ranking.odd), varies)))
+}
+
+/// For each two neighbors in the order of a unit's ligands, how they were told apart; `None` where one is
+/// a lone pair, stands alone at its end of a pair, or only Rule 6 parts them.
+pub(super) fn ties(
+    context: &Context,
+    molecule: &Molecule,
+    units: &Units,
+    ix: UnitIx,
+    ranking: &Ranking,
+    foci: Option<&Foci>,
+    limits: Limits,
+) -> Result<Vec<Option<Tie>>, Stop> {
+    let unit = units.get(ix);
+    let mut sites = Sites::rooted(context, unit, limits);
+    if let Some(foci) = foci {
+        for engine in sites.engines() {
+            auxiliary::fill(engine, units, ix, foci)?;
+        }
+    }
+    let toward = unit.toward_each_other();
+    let is_pair = matches!(unit.focus, Focus::Pair(_));
+    let mut ties = Vec::new();
+    for (k, engine) in sites.engines().into_iter().enumerate() {
+        let partner = is_pair.then_some(toward[k]);
+        let nodes = ligand_nodes(engine, ROOT, partner)?;
+        let here = if is_pair {
+            ranking.order.get(2 * k..2 * k + 2)
+        } else {
+            ranking.order.get(..)
+        };
+        for two in here.unwrap_or_default().windows(2) {
+            let node =
+                |wanted: Ligand| nodes.iter().copied().find(|n| ligand(engine, *n) == wanted);
+            let (higher, lower) = (node(two[0]), node(two[1]));
+            ties.push(match (higher, lower) {
+                (Some(a), Some(b)) => why::tie(engine, molecule, ROOT, a, b)?,
+                _ => None,
+            });
+        }
+    }
+    Ok(ties)
 }
 
 enum Where<'e, 'a> {

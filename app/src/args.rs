@@ -1,6 +1,10 @@
 //! What was typed on the command line.
 
-use clap::{Args as Group, Parser, Subcommand, ValueEnum};
+use crate::export::POINTS_PER_MM;
+use crate::figure::DPI;
+use chem::ink::{STYLES, Style};
+use clap::builder::{PossibleValue, PossibleValuesParser, TypedValueParser};
+use clap::{Args as Group, Parser, Subcommand};
 use std::num::NonZeroUsize;
 use std::path::PathBuf;
 
@@ -79,42 +83,17 @@ pub struct Figure {
     #[arg(long, value_name = "N")]
     pub record: Option<NonZeroUsize>,
     /// Measures for the place of print
-    #[arg(long, value_enum, default_value_t = StyleName::Journal)]
-    pub style: StyleName,
+    #[arg(long, value_name = "STYLE", value_parser = styles(), default_value = STYLES[0].name)]
+    pub style: &'static Style,
     /// Width of the figure, such as 84mm, 3.25in, 240pt
     #[arg(long, value_name = "WIDTH", value_parser = length)]
     pub width: Option<f64>,
     /// Dots per inch of a PNG
-    #[arg(long, value_name = "DPI", default_value_t = 600.0)]
+    #[arg(long, value_name = "DPI", default_value_t = DPI)]
     pub dpi: f64,
     /// Write locants and descriptors beside their places
     #[arg(long)]
     pub descriptors: bool,
-}
-
-/// Names of the styles of figures.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, ValueEnum)]
-pub enum StyleName {
-    /// A column of a journal
-    Journal,
-    /// A drawing sheet of a patent application
-    Patent,
-    /// A page to be kept
-    Record,
-    /// A screen
-    Screen,
-}
-
-impl StyleName {
-    /// The name as it is typed.
-    pub fn name(self) -> &'static str {
-        match self {
-            StyleName::Journal => "journal",
-            StyleName::Patent => "patent",
-            StyleName::Record => "record",
-            StyleName::Screen => "screen",
-        }
-    }
 }
 
 /// Arguments of `line`.
@@ -128,11 +107,20 @@ pub struct Line {
     pub json: bool,
 }
 
+/// The styles by their names, each with the source of its measures.
+fn styles() -> impl TypedValueParser<Value = &'static Style> {
+    let names = STYLES
+        .each_ref()
+        .map(|s| PossibleValue::new(s.name).help(s.source));
+    PossibleValuesParser::new(names)
+        .try_map(|name| Style::named(&name).ok_or("there is no such style"))
+}
+
 /// A length with its unit, in points.
 fn length(text: &str) -> Result<f64, String> {
     let units = [
-        ("mm", 72.0 / 25.4),
-        ("cm", 720.0 / 25.4),
+        ("mm", POINTS_PER_MM),
+        ("cm", 10.0 * POINTS_PER_MM),
         ("in", 72.0),
         ("pt", 1.0),
     ];

@@ -1,7 +1,11 @@
 //! All file access: inputs told by their content, outputs that appear whole or not at all.
 
+mod piece;
+
+pub use piece::{Piece, PieceText};
+
 use chem::format::sdf::{Chunk, Reader};
-use chem::format::{ReadError, text};
+use chem::format::{ReadError, WriteError, WriteOptions, text};
 use std::fs::{self, File};
 use std::io::{self, BufWriter, Read, Write};
 use std::path::{Path, PathBuf};
@@ -10,17 +14,17 @@ use tempfile::NamedTempFile;
 /// How much of a file is looked at to tell whether it is a molfile or SD file at all.
 const BEGINNING: u64 = 256 * 1024;
 
-/// Why a file cannot be read or written. Every text names the file.
+/// Why a file cannot be read or written, with what to do. Every text names the file.
 #[derive(Debug, thiserror::Error)]
 pub enum FileError {
     /// It is not there.
-    #[error("{name}: there is no such file")]
+    #[error("{name}: there is no such file; check the path")]
     NotFound {
         /// Its name as given.
         name: String,
     },
     /// It is a directory.
-    #[error("{name}: this is a directory, not a file")]
+    #[error("{name}: this is a directory; name a file, not a folder")]
     Directory {
         /// Its name as given.
         name: String,
@@ -33,8 +37,16 @@ pub enum FileError {
         /// What is wrong with it.
         error: ReadError,
     },
+    /// The drawing does not fit the format.
+    #[error("{name}: {error}")]
+    Format {
+        /// Its name as given.
+        name: String,
+        /// What does not fit.
+        error: WriteError,
+    },
     /// The system does not let it be read.
-    #[error("{name}: cannot be read: {error}")]
+    #[error("{name}: cannot be read: {}", plainly(error))]
     Read {
         /// Its name as given.
         name: String,
@@ -42,13 +54,31 @@ pub enum FileError {
         error: io::Error,
     },
     /// The system does not let it be written; what was there is as it was.
-    #[error("{name}: cannot be written: {error}")]
+    #[error("{name}: cannot be written: {}", plainly(error))]
     Write {
         /// Its name as given.
         name: String,
         /// What the system says.
         error: io::Error,
     },
+}
+
+/// What the system said, with what to do where that is plain.
+fn plainly(error: &io::Error) -> String {
+    let words = match error.kind() {
+        io::ErrorKind::NotFound => "there is no such file or folder; check the path",
+        io::ErrorKind::PermissionDenied => {
+            "the system does not permit it; choose another place or change the rights"
+        }
+        io::ErrorKind::NotADirectory => "a part of the path is no folder; check the path",
+        io::ErrorKind::StorageFull => "the disk is full; make room or choose another",
+        _ => {
+            let text = error.to_string();
+            // the name of the passing file beside it helps nobody
+            return text.split(" at path").next().unwrap_or(&text).to_owned();
+        }
+    };
+    words.to_owned()
 }
 
 /// How a path is named in messages: `-` by its meaning.
@@ -65,11 +95,20 @@ pub fn is_standard(path: &Path) -> bool {
     path.as_os_str() == "-"
 }
 
+/// Whether a name says that it is an SD file.
+pub fn is_sd(path: &Path) -> bool {
+    path.extension()
+        .is_some_and(|e| e.eq_ignore_ascii_case("sdf") || e.eq_ignore_ascii_case("sd"))
+}
+
+/// Molfiles with date and time, in UTC: their header has no room for a time zone.
+pub fn dated() -> WriteOptions {
+    let date = jiff::Timestamp::now().strftime("%m%d%y%H%M").to_string();
+    WriteOptions { date: Some(date) }
+}
+
 /// Refuses a path at which no file is.
-///
-/// # Errors
-/// If nothing is there, or a directory.
-pub fn must_be_file(path: &Path) -> Result<(), FileError> {
+fn must_be_file(path: &Path) -> Result<(), FileError> {
     let name = path.display().to_string();
     match fs::metadata(path) {
         Ok(meta) if meta.is_dir() => Err(FileError::Directory { name }),
@@ -138,6 +177,24 @@ impl Source {
             error,
         })
     }
+
+    /// The next record with bytes of its own.
+    ///
+    /// # Errors
+    /// If the file cannot be read on.
+    pub fn next_piece(&mut self) -> Result<Option<Piece>, FileError> {
+        Ok(self.next_chunk()?.map(Piece::from))
+    }
+}
+
+/// Writes a whole file, or standard output for `-`.
+///
+/// # Errors
+/// If it cannot be written; a file of that name is then as it was.
+pub fn write(path: &Path, bytes: &[u8]) -> Result<(), FileError> {
+    let mut target = Target::create(path)?;
+    target.write(bytes)?;
+    target.save()
 }
 
 /// A file being written. It appears under its name when [`Target::save`] has succeeded, and only then:

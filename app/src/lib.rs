@@ -4,6 +4,7 @@ pub mod args;
 pub mod batch;
 pub mod command;
 pub mod export;
+pub mod figure;
 pub mod files;
 pub mod session;
 pub mod window;

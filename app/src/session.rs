@@ -15,6 +15,7 @@ mod selection;
 
 pub use selection::Selection;
 
+use crate::files::FileError;
 use chem::drawing::{Drawing, Edit, EditError, Renumbering};
 use chem::pipeline::{self, Report, Solution, Verdict};
 use chem::solve::Refusal;
@@ -162,7 +163,7 @@ impl Session {
     ///
     /// # Errors
     /// If it cannot be read, or holds no drawing.
-    pub fn open(path: &Path) -> Result<Session, files::FileError> {
+    pub fn open(path: &Path) -> Result<Session, FileError> {
         let document = files::read(path)?;
         // saving must not lose the records beside this one
         let own = (!document.has_more).then(|| path.to_owned());
@@ -440,7 +441,7 @@ impl Session {
     ///
     /// # Errors
     /// If the file cannot be written; what stood there is then untouched.
-    pub fn save(&mut self, path: &Path) -> Result<(), files::FileError> {
+    pub fn save(&mut self, path: &Path) -> Result<(), FileError> {
         self.settle();
         let drawing = (**self.drawing()).clone();
         let record = self.document.record.clone().with_drawing(drawing);

@@ -408,7 +408,7 @@ fn a_file_that_cannot_be_opened_is_told() {
     h.get_by_label("file path").type_text("no such file.mol");
     h.run_steps(1);
     press(&mut h, Key::Enter);
-    h.get_by_label_contains("no such file.mol cannot be read");
+    h.get_by_label_contains("no such file.mol: there is no such file");
 }
 
 #[test]

@@ -1,9 +1,9 @@
 //! `labels`: what each drawing carries.
 
-use super::records::{self, FAULT, Piece};
+use super::records::{self, FAULT};
 use super::{Failure, Status, say};
 use crate::args::Labels;
-use crate::files::{Source, Target};
+use crate::files::{FileError, Piece, Source, Target};
 use chem::format::{Notice, ReadError};
 use chem::pipeline::{self, Place};
 use chem::solve::require::Requirement;
@@ -27,9 +27,7 @@ pub(super) fn run(args: &Labels) -> Result<Status, Failure> {
         // a file that cannot be used does not keep the others from it
         match one_file(path, many, args, &mut out) {
             Ok(ended) => status = status.max(ended),
-            Err(Failure::File(crate::files::FileError::Write { name, error })) => {
-                return Err(crate::files::FileError::Write { name, error }.into());
-            }
+            Err(failure @ Failure::File(FileError::Write { .. })) => return Err(failure),
             Err(failure) => {
                 say(&failure.to_string());
                 status = Status::Unusable;
@@ -90,7 +88,7 @@ fn one_file(path: &Path, many: bool, args: &Labels, out: &mut Target) -> Result<
 }
 
 fn in_table(piece: &Piece) -> Answer {
-    let record = match piece.text().and_then(|text| text.read(piece)) {
+    let record = match piece.read() {
         Ok(record) => record,
         Err(error) => {
             return Answer {
@@ -109,8 +107,7 @@ fn in_table(piece: &Piece) -> Answer {
 }
 
 fn in_json(piece: &Piece, file: Option<&str>) -> Answer {
-    let read = piece.text().and_then(|text| text.read(piece));
-    let (units, error, notices) = match read {
+    let (units, error, notices) = match piece.read() {
         Ok(record) => {
             let report = pipeline::report(&record.drawing, &Requirement::default());
             let units = report.places.iter().map(UnitJson::new).collect();

@@ -1,14 +1,13 @@
 //! `place`: the drawings that carry what is required.
 
-use super::records::{self, FAULT, Piece};
+use super::records::{self, FAULT};
 use super::{Failure, Status, say};
 use crate::args::Place;
-use crate::files::{Source, Target, name_of, same_file};
+use crate::files::{self, Piece, Source, Target, name_of, same_file};
 use chem::format::{Notice, Record, WriteOptions, molfile, sdf};
 use chem::pipeline;
 use chem::solve::line;
 use chem::solve::require::Requirement;
-use std::path::Path;
 
 /// Data fields that this verb writes; those of an earlier run are replaced.
 const OURS: [&str; 3] = ["CARRIES", "VERDICT", "REASON"];
@@ -82,14 +81,12 @@ pub(super) fn run(args: &Place) -> Result<Status, Failure> {
     let mut writer = Writer {
         out: Target::create(&args.out)?,
         name: source.name.clone(),
-        to_sdf: is_named_sdf(&args.out),
+        to_sdf: files::is_sd(&args.out),
         counts: [0; 3],
         read_any: false,
         asked: false,
     };
-    // in UTC: the header has no room for a time zone
-    let date = jiff::Timestamp::now().strftime("%m%d%y%H%M").to_string();
-    let options = WriteOptions { date: Some(date) };
+    let options = files::dated();
     records::each(
         &mut source,
         args.threads,
@@ -122,14 +119,9 @@ fn check(line: &str) -> Result<(), Failure> {
     Ok(())
 }
 
-fn is_named_sdf(path: &Path) -> bool {
-    path.extension()
-        .is_some_and(|e| e.eq_ignore_ascii_case("sdf") || e.eq_ignore_ascii_case("sd"))
-}
-
 /// Does one record.
 fn one(piece: &Piece, wish: &Wish<'_>, options: &WriteOptions) -> Placed {
-    let record = match piece.text().and_then(|text| text.read(piece)) {
+    let record = match piece.read() {
         Ok(record) => record,
         Err(error) => {
             let mut placed = Placed::cannot(error.to_string(), true);
@@ -223,7 +215,7 @@ struct Writer {
 
 impl Writer {
     fn take(&mut self, piece: &Piece, placed: &Placed) -> Result<(), Failure> {
-        if piece.is_lost() {
+        if piece.too_long {
             return Err(Failure::Lost {
                 name: self.name.clone(),
                 record: piece.number,
@@ -263,7 +255,7 @@ impl Writer {
             bytes.extend(b"$$$$\n");
             return bytes;
         };
-        let raw = text.raw(piece);
+        let raw = text.raw();
         if piece.number == 1 {
             self.to_sdf |= piece.ended || !raw.data.trim().is_empty();
         }

@@ -1,10 +1,7 @@
 //! The records of a file worked on by several threads, given back in their order.
 
 use super::Failure;
-use crate::files::Source;
-use chem::format::sdf::{RawRecord, Reader};
-use chem::format::{Notice, ReadError, Reason, Record, text};
-use std::borrow::Cow;
+use crate::files::{Piece, Source};
 use std::collections::BTreeMap;
 use std::num::NonZeroUsize;
 use std::panic::{AssertUnwindSafe, catch_unwind};
@@ -12,76 +9,6 @@ use std::sync::{Mutex, mpsc};
 
 /// Records on their way at once, for each thread.
 const AHEAD: usize = 32;
-
-/// One record as it stands in its file.
-#[derive(Debug)]
-pub(super) struct Piece {
-    /// Number from 1.
-    pub(super) number: usize,
-    /// Line at which it starts, from 1.
-    pub(super) line: usize,
-    /// Its bytes, without `$$$$`.
-    pub(super) bytes: Vec<u8>,
-    /// Whether a line `$$$$` ended it.
-    pub(super) ended: bool,
-    too_long: bool,
-}
-
-/// A record as text.
-#[derive(Debug)]
-pub(super) struct PieceText<'a> {
-    pub(super) text: Cow<'a, str>,
-    /// That it is not UTF-8.
-    notice: Option<Notice>,
-}
-
-impl Piece {
-    /// Its text.
-    pub(super) fn text(&self) -> Result<PieceText<'_>, ReadError> {
-        if self.too_long {
-            let reason = Reason::TooLong(Reader::<&[u8]>::LIMIT);
-            return Err(ReadError::line(self.line, reason));
-        }
-        let (text, notice) = text::decode(&self.bytes, self.line)?;
-        Ok(PieceText { text, notice })
-    }
-
-    /// Whether its bytes are not here.
-    pub(super) fn is_lost(&self) -> bool {
-        self.too_long
-    }
-
-    /// Its first line, as the name to show for it; a tab or other sign that would break a table is a blank.
-    pub(super) fn title(&self) -> String {
-        let line = self.bytes.split(|b| matches!(b, b'\n' | b'\r')).next();
-        let line = line.unwrap_or_default();
-        let line = line.strip_prefix(b"\xEF\xBB\xBF").unwrap_or(line);
-        let text = match std::str::from_utf8(line) {
-            Ok(text) => text.to_owned(),
-            Err(_) => line.iter().map(|b| char::from(*b)).collect(),
-        };
-        text.trim_end().replace(|c: char| c.is_control(), " ")
-    }
-}
-
-impl PieceText<'_> {
-    /// Parted into molfile and data fields.
-    pub(super) fn raw(&self, piece: &Piece) -> RawRecord<'_> {
-        RawRecord::new(&self.text, piece.number, piece.line)
-    }
-
-    /// Whether it had to be read as Latin-1.
-    pub(super) fn is_latin(&self) -> bool {
-        self.notice.is_some()
-    }
-
-    /// Understood.
-    pub(super) fn read(&self, piece: &Piece) -> Result<Record, ReadError> {
-        let mut record = self.raw(piece).read()?;
-        record.notices.extend(self.notice.clone());
-        Ok(record)
-    }
-}
 
 /// Does `work` for each record and hands the results to `take` in the order of the file. A record at
 /// which `work` fails by a fault of the program gives `None`.
@@ -95,7 +22,7 @@ pub(super) fn each<T: Send>(
     let available = std::thread::available_parallelism().map_or(1, NonZeroUsize::get);
     let threads = threads.map_or(available, NonZeroUsize::get).min(256);
     if threads == 1 {
-        while let Some(piece) = next(source)? {
+        while let Some(piece) = source.next_piece()? {
             let result = guarded(&piece);
             take(piece, result)?;
         }
@@ -129,7 +56,7 @@ pub(super) fn each<T: Send>(
         let (mut sent, mut taken, mut more) = (0usize, 0usize, true);
         loop {
             while more && sent - taken < threads * AHEAD {
-                more = match next(source)? {
+                more = match source.next_piece()? {
                     Some(piece) => to_work.send(piece).is_ok(),
                     None => false,
                 };
@@ -148,16 +75,6 @@ pub(super) fn each<T: Send>(
             }
         }
     })
-}
-
-pub(super) fn next(source: &mut Source) -> Result<Option<Piece>, Failure> {
-    Ok(source.next_chunk()?.map(|chunk| Piece {
-        number: chunk.number,
-        line: chunk.line,
-        bytes: chunk.bytes.to_vec(),
-        ended: chunk.ended,
-        too_long: chunk.too_long,
-    }))
 }
 
 /// What is said of a record at which the program itself failed.

@@ -12,8 +12,7 @@ use chem::ink::{Ink, Item, Part, Shape, TextRun};
 use kurbo::Vec2;
 use std::fmt;
 
-/// Points in a millimetre.
-pub const POINTS_PER_MM: f64 = 72.0 / 25.4;
+pub use chem::ink::POINTS_PER_MM;
 
 /// The least side of a page, in points: an empty drawing still gives a file that opens.
 const LEAST_SIDE: f64 = 1.0;

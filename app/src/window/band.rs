@@ -3,6 +3,7 @@
 use super::signs;
 use super::theme::{self, CAPTION, Colors, GRID, LINE, TEXT};
 use crate::command::Command;
+use crate::figure;
 use crate::session::{Session, Tally};
 use chem::pipeline::{Place, Verdict};
 use chem::solve::require::RequirementError;
@@ -221,7 +222,7 @@ fn carried_job(places: &[Place], colors: &Colors) -> LayoutJob {
             Verdict::Agrees | Verdict::NotAsked => colors.ink,
             other => colors.verdict(other),
         };
-        let locant = super::sheet::locant(place);
+        let locant = figure::locant(place);
         job.append(
             &locant,
             0.0,

@@ -36,11 +36,18 @@ impl Purpose {
         }
     }
 
-    /// The path with the usual ending, if it has none.
+    /// The usual ending of a file.
+    pub(super) fn ending(self) -> &'static str {
+        match self {
+            Purpose::Open | Purpose::Save => "mol",
+            Purpose::Figure => "svg",
+        }
+    }
+
+    /// The path to write, with the usual ending if it has none.
     pub(super) fn complete(self, path: PathBuf) -> PathBuf {
         match (self, path.extension()) {
-            (Purpose::Save, None) => path.with_extension("mol"),
-            (Purpose::Figure, None) => path.with_extension("svg"),
+            (Purpose::Save | Purpose::Figure, None) => path.with_extension(self.ending()),
             _ => path,
         }
     }
@@ -71,7 +78,6 @@ static FAILURES: AtomicU64 = AtomicU64::new(0);
 /// Listens to the log for dialogs that failed; everything else goes on to `next`.
 struct Listener {
     next: env_logger::Logger,
-    listens: bool,
 }
 
 impl log::Log for Listener {
@@ -83,11 +89,10 @@ impl log::Log for Listener {
         let failed = record.level() == log::Level::Error
             && record.target().starts_with("rfd")
             && record.args().to_string().contains("zenity");
-        if self.listens && failed {
+        if failed {
+            // it is told in the window
             FAILURES.fetch_add(1, Ordering::SeqCst);
-        }
-        // what failed is told in the window
-        if !failed && self.next.enabled(record.metadata()) {
+        } else if self.next.enabled(record.metadata()) {
             self.next.log(record);
         }
     }
@@ -101,10 +106,7 @@ impl log::Log for Listener {
 pub(super) fn listen() -> bool {
     let next = env_logger::Builder::from_default_env().build();
     let most = next.filter().max(log::LevelFilter::Error);
-    let installed = log::set_boxed_logger(Box::new(Listener {
-        next,
-        listens: true,
-    }));
+    let installed = log::set_boxed_logger(Box::new(Listener { next }));
     if installed.is_ok() {
         log::set_max_level(most);
     }

@@ -1,9 +1,12 @@
 //! What commands leave to the window: files, dialogs, questions, the view.
 
+use super::Window;
 use super::dialogs::{Choice, Dialog, Purpose};
 use super::prompts::{self, Keep, Next, PathField, Typed};
-use super::{Window, figure};
+use super::sheet::Sheet;
 use crate::command::Errand;
+use crate::figure::{self, Form, Options};
+use crate::files;
 use crate::session::Session;
 use egui::{Context, Theme, Ui, ViewportCommand};
 use std::path::{Path, PathBuf};
@@ -85,6 +88,21 @@ impl Window {
         }
     }
 
+    /// Writes the drawing alone, without locants and descriptors.
+    fn save_figure(&self, path: &Path) -> Result<(), String> {
+        let options = Options {
+            form: Form::of(path).map_err(|e| e.to_string())?,
+            style: Sheet::style(),
+            width: None,
+            dpi: figure::DPI,
+        };
+        let (session, report) = (&self.session, self.session.report());
+        let ink = figure::ink(session.drawing(), report, options.style, false);
+        let bytes = figure::write(&ink, &session.name(), report, &options)
+            .map_err(|e| format!("{}: {e}", path.display()))?;
+        files::write(path, &bytes).map_err(|e| e.to_string())
+    }
+
     fn choose(&mut self, purpose: Purpose, ctx: &Context) {
         if self.typed_paths {
             self.type_path(purpose, false);
@@ -110,10 +128,7 @@ impl Window {
 
     /// A path to begin with: that of the document, with the ending that fits.
     fn suggestion(&self, purpose: Purpose) -> PathBuf {
-        let ending = match purpose {
-            Purpose::Figure => "svg",
-            Purpose::Open | Purpose::Save => "mol",
-        };
+        let ending = purpose.ending();
         match self.session.path() {
             Some(path) if purpose != Purpose::Figure => path.to_owned(),
             Some(path) => path.with_extension(ending),
@@ -141,9 +156,9 @@ impl Window {
         match purpose {
             Purpose::Open => self.go_on(Next::Open(path), ctx),
             Purpose::Save => self.save_to(&purpose.complete(path), ctx),
-            Purpose::Figure => match figure::write(&purpose.complete(path), &self.session) {
+            Purpose::Figure => match self.save_figure(&purpose.complete(path)) {
                 Ok(()) => self.notice = None,
-                Err(e) => self.complain(e),
+                Err(text) => self.complain(text),
             },
         }
     }

@@ -8,7 +8,6 @@ mod bars;
 mod demo;
 mod dialogs;
 mod errands;
-mod figure;
 mod graft;
 mod paint;
 mod pen;
@@ -41,7 +40,7 @@ pub enum WindowError {
     NoDisplay(String),
     /// The file named at the start cannot be opened.
     #[error(transparent)]
-    File(#[from] crate::session::files::FileError),
+    File(#[from] crate::files::FileError),
 }
 
 /// Something to tell the person, in a strip over the status line.

@@ -1,9 +1,9 @@
 //! The places: a row for each stereogenic unit, and beneath why the chosen one carries what it does.
 
-use super::sheet::locant;
 use super::signs;
 use super::theme::{self, CAPTION, Colors, GRID, TEXT, scripted};
 use crate::command::Command;
+use crate::figure::locant;
 use crate::session::{Selection, Session};
 use chem::cip::Rule;
 use chem::pipeline::{Place, Verdict};

@@ -21,7 +21,7 @@ mod scene;
 mod spelling;
 mod style;
 
-pub use style::{STYLES, Style};
+pub use style::{POINTS_PER_MM, STYLES, Style};
 
 use captions::Obstacles;
 use face::Setter;

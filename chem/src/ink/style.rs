@@ -1,7 +1,9 @@
 //! Styles: numbers only. Nothing here decides anything.
 
 /// Points in a millimetre.
-const MM: f64 = 72.0 / 25.4;
+pub const POINTS_PER_MM: f64 = 72.0 / 25.4;
+
+const MM: f64 = POINTS_PER_MM;
 
 /// The measures of a figure. Lengths are points (1/72 in) at final size unless a name says otherwise.
 #[derive(Clone, Debug, PartialEq)]
@@ -44,7 +46,7 @@ impl Style {
 }
 
 /// All styles, the usual one first.
-pub const STYLES: &[Style] = &[
+pub static STYLES: [Style; 4] = [
     // Bond, line, wedge, hash, gap, margin and type: the American Chemical Society's public page on
     // illustrations (pubs.acs.org, older page); width of a single column there 3.25 in.
     // Captions: 7 pt, the least that publishers' artwork pages ask; scripts 0.7 of 10 pt likewise.
@@ -128,7 +130,7 @@ mod tests {
     fn the_four_styles_hold_the_recommended_ratios() {
         let names: Vec<_> = STYLES.iter().map(|s| s.name).collect();
         assert_eq!(names, ["journal", "patent", "record", "screen"]);
-        for s in STYLES {
+        for s in &STYLES {
             let cap = 0.714 * s.font_size;
             // GR-1.1: a bond at least twice as long as the label is high
             assert!(s.bond_length >= 2.0 * cap, "{}", s.name);

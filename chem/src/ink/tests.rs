@@ -271,7 +271,7 @@ fn a_crossed_double_bond_crosses_itself() {
 
 #[test]
 fn labels_that_leave_little_room_still_show_their_bond() {
-    for style in STYLES {
+    for style in &STYLES {
         let drawing = draw(&[("O", 0.0, 0.0), ("N", 1.0, 0.0)], &[(0, 1, 1, ' ')]);
         let ink = compose(&drawing, style, &[], None);
         let [a, b] = line(strokes(&ink, 0)[0]);
@@ -310,7 +310,7 @@ fn captions_are_written_locant_first_and_touch_no_ink() {
             tone: Tone::Agrees,
         })
         .collect();
-    for style in STYLES {
+    for style in &STYLES {
         let ink = compose(&drawing, style, &captions, None);
         let written: Vec<&Item> = ink
             .items

@@ -9,9 +9,10 @@ pub(super) use view::{View, beside};
 use super::paint::{Triangles, word_boxes};
 use super::theme::{self, Colors};
 use crate::command::Command;
+use crate::figure;
 use crate::session::{Selection, Session};
 use chem::drawing::Drawing;
-use chem::ink::{self, Caption, Ink, Part, STYLES, Style, Tone};
+use chem::ink::{self, Caption, Ink, POINTS_PER_MM, Part, STYLES, Style, Tone};
 use chem::pipeline::{Report, Verdict};
 use egui::{
     CornerRadius, EventFilter, Rect, Response, Role, Sense, Stroke, StrokeKind, Ui, WidgetInfo,
@@ -91,7 +92,7 @@ impl Sheet {
     /// Width of the figure in millimetres and its scale in percent, once it has been shown.
     pub(super) fn measures(&self) -> Option<(f64, f32)> {
         let composed = self.composed.as_ref()?;
-        let width = composed.page.width() * 25.4 / 72.0;
+        let width = composed.page.width() / POINTS_PER_MM;
         Some((width, self.view.percent(composed.ink.points_per_unit)))
     }
 
@@ -228,32 +229,18 @@ fn same_bond(before: &Drawing, after: &Drawing, b: chem::molecule::BondIx) -> bo
 }
 
 /// Locant and descriptor of every stereogenic place, in the color of its verdict.
-pub(super) fn captions(report: &Report) -> Vec<Caption> {
-    report
-        .places
-        .iter()
-        .map(|place| Caption {
-            atoms: place.atoms.clone(),
-            locant: locant(place),
-            descriptor: place.carries.map(|d| d.to_string()),
-            tone: match place.verdict {
-                Verdict::Agrees => Tone::Agrees,
-                Verdict::Opposite => Tone::Opposite,
-                Verdict::Open => Tone::Open,
-                Verdict::Contradiction => Tone::Contradiction,
-                Verdict::NotAsked => Tone::Muted,
-            },
-        })
+fn captions(report: &Report) -> Vec<Caption> {
+    let tone = |verdict| match verdict {
+        Verdict::Agrees => Tone::Agrees,
+        Verdict::Opposite => Tone::Opposite,
+        Verdict::Open => Tone::Open,
+        Verdict::Contradiction => Tone::Contradiction,
+        Verdict::NotAsked => Tone::Muted,
+    };
+    let places = report.places.iter();
+    places
+        .map(|p| figure::caption(p, tone(p.verdict)))
         .collect()
-}
-
-/// The number by which a place is named: its lower atom.
-pub(super) fn locant(place: &chem::pipeline::Place) -> String {
-    place
-        .atoms
-        .iter()
-        .min()
-        .map_or_else(String::new, |a| (a.index() + 1).to_string())
 }
 
 /// What a screen reader says of the sheet.

@@ -167,7 +167,11 @@ fn carry(record: Record, line: &str, options: &WriteOptions) -> Placed {
     } else {
         Verdict::Differs
     };
-    let mut notices = Vec::new();
+    let mut notices: Vec<Notice> = report
+        .faults()
+        .into_iter()
+        .map(|text| Notice::new(0, "fault", text))
+        .collect();
     let block = if solution.edits().is_empty() {
         None
     } else {

@@ -285,10 +285,10 @@ fn rank_axis_by_reference(
             return Ok(None);
         };
         let mut found: SmallVec<[Ranking; 2]> = SmallVec::new();
-        for k in 0..2 {
+        for (k, partner) in toward.iter().enumerate() {
             let (engine, hub) = hubs.at(k);
             engine.set_reference(Some(reference));
-            let nodes = ligand_nodes(engine, hub, Some(toward[k]))?;
+            let nodes = ligand_nodes(engine, hub, Some(*partner))?;
             let (ranked, _) = rank_nodes(engine, hub, nodes, reach)?;
             let refined = engine.refine_by(ranked, hub, Step::R6)?;
             if !refined.is_complete() {

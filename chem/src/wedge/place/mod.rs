@@ -19,7 +19,8 @@ mod option;
 
 pub use axis::place_axis;
 
-use crate::drawing::{Drawing, Edit, Mark};
+use crate::drawing::{Drawing, Edit, End, Mark};
+use crate::element::Element;
 use crate::molecule::{Atom, AtomIx, BondIx, Order};
 use crate::perceive::Rings;
 use crate::stereo::{Focus, Kind, Parity, UnitIx, Units};
@@ -189,8 +190,7 @@ impl<'a> Scene<'a> {
                 marks[b.index()] = Mark::Plain;
             }
         }
-        let mut added = Vec::new();
-        let mut placed: Vec<crate::geom::Point> = Vec::new();
+        let mut with_hydrogen: Vec<&Site> = Vec::new();
         for (site, choice) in sites.iter().zip(chosen) {
             let option = &site.options[*choice];
             match option.choice {
@@ -208,22 +208,7 @@ impl<'a> Scene<'a> {
                         marks[second.index()] = mark(second, !lift);
                     }
                 }
-                Choice::Hydrogen => {
-                    let spot = hydrogen::spot(self.drawing, self.rings, site.center, &placed);
-                    let lift = option::hydrogen_lift(self, site, spot);
-                    placed.push(spot);
-                    let h = AtomIx::new(molecule.n_atoms() + placed.len() - 1);
-                    let b = BondIx::new(molecule.n_bonds() + placed.len() - 1);
-                    let end = crate::drawing::End::First;
-                    let mark = if lift {
-                        Mark::Solid(end)
-                    } else {
-                        Mark::Hashed(end)
-                    };
-                    added.push(Edit::AddAtom(Atom::new(crate::element::Element::H), spot));
-                    added.push(Edit::AddBond([site.center, h], Order::Single));
-                    added.push(Edit::Mark(b, mark));
-                }
+                Choice::Hydrogen => with_hydrogen.push(site),
             }
         }
         let mut edits: Vec<Edit> = molecule
@@ -231,7 +216,28 @@ impl<'a> Scene<'a> {
             .filter(|b| marks[b.index()] != self.drawing.mark(*b))
             .map(|b| Edit::Mark(b, marks[b.index()]))
             .collect();
-        edits.extend(added);
+        edits.extend(self.hydrogens(&with_hydrogen));
+        edits
+    }
+
+    /// Edits that draw a hydrogen with its mark at each of these centres.
+    fn hydrogens(&self, sites: &[&Site]) -> Vec<Edit> {
+        let molecule = self.drawing.molecule();
+        let centers: Vec<AtomIx> = sites.iter().map(|s| s.center).collect();
+        let spots = hydrogen::spots(self.drawing, self.rings, &centers);
+        let mut edits = Vec::new();
+        for (i, (site, spot)) in sites.iter().zip(spots).enumerate() {
+            let h = AtomIx::new(molecule.n_atoms() + i);
+            let bond = BondIx::new(molecule.n_bonds() + i);
+            let mark = if option::hydrogen_lift(self, site, spot) {
+                Mark::Solid(End::First)
+            } else {
+                Mark::Hashed(End::First)
+            };
+            edits.push(Edit::AddAtom(Atom::new(Element::H), spot));
+            edits.push(Edit::AddBond([site.center, h], Order::Single));
+            edits.push(Edit::Mark(bond, mark));
+        }
         edits
     }
 }

@@ -390,7 +390,7 @@ fn place_by_data_field() {
         &[
             "a.sdf: record 2: cannot",
             "a.sdf: record 3: cannot",
-            "record 4: it has no such data field",
+            "no such data field, so nothing is asked: record 4",
         ],
     );
     let text = bench.text("b.sdf");

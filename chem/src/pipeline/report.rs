@@ -74,7 +74,7 @@ fn idle(drawing: &Drawing, units: &Units, labels: &[UnitLabel]) -> Vec<Idle> {
         let found = here.next();
         let text = match found {
             None if units.center_at(wide).is_some() => format!(
-                "the wedge between atoms {n} and {w} is narrow at atom {n}, which is no center: at atom {w} its wide end says nothing"
+                "the wedge between atoms {n} and {w} is narrow at atom {n}, which is no centre: at atom {w} its wide end says nothing"
             ),
             None => format!(
                 "the wedge from atom {n} to atom {w} says nothing: atom {n} is not stereogenic"

@@ -116,7 +116,7 @@ fn check_status(line: &Line) -> Result<(), RequirementError> {
     };
     let text = match line.status {
         Status::Meso => {
-            "whether a drawing is meso is not checked yet: state each center, as in (2R,3S)"
+            "whether a drawing is meso is not checked yet: state each centre, as in (2R,3S)"
                 .to_owned()
         }
         Status::Abs | Status::Rac | Status::Rel => format!(

@@ -57,7 +57,7 @@ impl fmt::Display for PlaceError {
             ),
             PlaceErrorKind::NoBond => write!(
                 f,
-                "no bond at atom {n} can bear a wedge: all belong to other centers or are not single"
+                "no bond at atom {n} can bear a wedge: all belong to other centres or are not single"
             ),
             PlaceErrorKind::InSpace => write!(
                 f,

@@ -203,7 +203,7 @@ impl Wanted<'_> {
                 first: [a, b],
                 parity,
             };
-            let edits = turn(&now, self.rings, geometry).map_err(|error| Refusal {
+            let edits = turn(&now, self.rings, self.units, geometry).map_err(|error| Refusal {
                 code: "cannot-turn",
                 atoms: ends.to_vec(),
                 text: format!("{} cannot be turned: {error}", name(unit)),

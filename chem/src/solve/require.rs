@@ -201,9 +201,13 @@ impl Sheet<'_> {
         let n_atoms = self.drawing.molecule().n_atoms();
         let index = number as usize;
         if index == 0 || index > n_atoms {
-            let text = format!(
-                "there is no atom {number}: the drawing has atoms 1 to {n_atoms}. Use the numbers of the drawing"
-            );
+            let text = match n_atoms {
+                0 => format!("there is no atom {number}: the drawing is empty"),
+                1 => format!("there is no atom {number}: the drawing has one atom only"),
+                _ => format!(
+                    "there is no atom {number}: the drawing has atoms 1 to {n_atoms}. Use the numbers of the drawing"
+                ),
+            };
             return Err(error("S-NO-LOCANT", column, text));
         }
         Ok(AtomIx::new(index - 1))

@@ -78,7 +78,9 @@ pub fn read(drawing: &Drawing, units: &Units) -> Reading {
             Focus::Pair(ends) => match unit.kind {
                 Kind::CumulatedAxis | Kind::HinderedAxis => read_axis::read(drawing, ends, unit),
                 Kind::Helix => read_helix::read(drawing, ends, unit),
-                Kind::DoubleBond | Kind::Tetrahedral => read_double::read(drawing, ends, unit),
+                Kind::DoubleBond | Kind::Tetrahedral => {
+                    read_double::read(drawing, ends, unit, units)
+                }
             },
         };
         reading

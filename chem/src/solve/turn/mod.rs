@@ -11,7 +11,7 @@ use crate::drawing::{Drawing, Edit, Mark};
 use crate::geom::{self, Point};
 use crate::molecule::{AtomIx, BondIx, Order};
 use crate::perceive::Rings;
-use crate::stereo::Parity;
+use crate::stereo::{Parity, Units};
 use clash::{Clash, ROOMY, TIGHT};
 use std::f64::consts::PI;
 use std::fmt;
@@ -61,12 +61,17 @@ pub struct Geometry {
 ///
 /// # Errors
 /// If it lies in a ring or cannot be turned without collisions.
-pub fn turn(drawing: &Drawing, rings: &Rings, wanted: Geometry) -> Result<Vec<Edit>, TurnError> {
+pub fn turn(
+    drawing: &Drawing,
+    rings: &Rings,
+    units: &Units,
+    wanted: Geometry,
+) -> Result<Vec<Edit>, TurnError> {
     if drawing.depths().is_some() {
         return Err(TurnError::InSpace);
     }
     let mut pose = Pose::new(drawing);
-    let mut edits = clear_either(drawing, wanted.ends);
+    let mut edits = clear_either(drawing, units, wanted.ends);
     let way = |k: usize| {
         drawing
             .molecule()
@@ -93,7 +98,7 @@ pub fn turn(drawing: &Drawing, rings: &Rings, wanted: Geometry) -> Result<Vec<Ed
 }
 
 /// Takes away what says "either" at a double bond.
-fn clear_either(drawing: &Drawing, ends: [AtomIx; 2]) -> Vec<Edit> {
+fn clear_either(drawing: &Drawing, units: &Units, ends: [AtomIx; 2]) -> Vec<Edit> {
     let molecule = drawing.molecule();
     let mut edits = Vec::new();
     for end in ends {
@@ -101,7 +106,10 @@ fn clear_either(drawing: &Drawing, ends: [AtomIx; 2]) -> Vec<Edit> {
             let either = match drawing.mark(n.bond) {
                 Mark::Crossed => !edits.contains(&Edit::Mark(n.bond, Mark::Plain)),
                 Mark::Wavy(_) => {
-                    n.order == Order::Single && drawing.mark_from(end, n.bond) != Mark::Plain
+                    // a wavy bond of another unit is that unit's own
+                    let others = drawing.mark_from(end, n.bond) == Mark::Plain
+                        && units.iter().any(|(_, u)| u.atoms().contains(&n.atom));
+                    n.order == Order::Single && !others
                 }
                 Mark::Plain | Mark::Solid(_) | Mark::Hashed(_) => false,
             };
@@ -427,8 +435,12 @@ mod tests {
     fn the_lesser_side_moves() {
         let d = diene();
         let rings = Rings::find(d.molecule());
-        assert!(turn(&d, &rings, wanted(Parity::Even)).unwrap().is_empty());
-        let edits = turn(&d, &rings, wanted(Parity::Odd)).unwrap();
+        assert!(
+            turn(&d, &rings, &Units::default(), wanted(Parity::Even))
+                .unwrap()
+                .is_empty()
+        );
+        let edits = turn(&d, &rings, &Units::default(), wanted(Parity::Odd)).unwrap();
         assert!(matches!(edits.as_slice(), [Edit::Move(a, p)] if *a == ix(0) && p.y < -0.7));
     }
 
@@ -444,7 +456,7 @@ mod tests {
             &[(0, 1, 1, ' '), (1, 2, 2, 'x'), (2, 3, 1, ' ')],
         );
         let rings = Rings::find(d.molecule());
-        let edits = turn(&d, &rings, wanted(Parity::Odd)).unwrap();
+        let edits = turn(&d, &rings, &Units::default(), wanted(Parity::Odd)).unwrap();
         let (after, _) = d.apply(&edits).unwrap();
         let (y0, y3) = (after.point(ix(0)).y, after.point(ix(3)).y);
         assert!(y0 * y3 < 0.0 && y0.abs() > 0.8);

@@ -148,7 +148,7 @@ impl Session {
             requirement: Ok(Requirement::default()),
             asked: Requirement::default(),
             refusal: None,
-            report: Report { places: Vec::new() },
+            report: Report::default(),
             selection: Selection::default(),
             typing: None,
             pending: None,

@@ -17,6 +17,8 @@ struct Answer {
     line: Option<String>,
     error: Option<String>,
     notices: Vec<Notice>,
+    /// What the labels alone do not show: contradictions, wedges that say nothing.
+    faults: Vec<String>,
 }
 
 pub(super) fn run(args: &Labels) -> Result<Status, Failure> {
@@ -45,7 +47,7 @@ fn one_file(path: &Path, many: bool, args: &Labels, out: &mut Target) -> Result<
         out.write(format!("# {name}\n").as_bytes())?;
     }
     let file = many.then_some(name.as_str());
-    let (mut good, mut bad) = (0usize, 0usize);
+    let (mut good, mut bad, mut faulty) = (0usize, 0usize, 0usize);
     records::each(
         &mut source,
         args.threads,
@@ -62,10 +64,15 @@ fn one_file(path: &Path, many: bool, args: &Labels, out: &mut Target) -> Result<
                 line: args.json.then(|| fault_in_json(&piece, file)),
                 error: Some(FAULT.to_owned()),
                 notices: Vec::new(),
+                faults: Vec::new(),
             });
             for notice in &answer.notices {
                 say(&format!("{name}: record {number}, {notice}"));
             }
+            for fault in &answer.faults {
+                say(&format!("{name}: record {number}, {fault}"));
+            }
+            faulty += usize::from(!answer.faults.is_empty());
             match &answer.error {
                 Some(error) => {
                     bad += 1;
@@ -81,7 +88,8 @@ fn one_file(path: &Path, many: bool, args: &Labels, out: &mut Target) -> Result<
         },
     )?;
     Ok(match (good, bad) {
-        (_, 0) => Status::Good,
+        (_, 0) if faulty == 0 => Status::Good,
+        (_, 0) => Status::Wrong,
         (0, _) => Status::Unusable,
         _ => Status::Wrong,
     })
@@ -95,6 +103,7 @@ fn in_table(piece: &Piece) -> Answer {
                 line: None,
                 error: Some(error.to_string()),
                 notices: Vec::new(),
+                faults: Vec::new(),
             };
         }
     };
@@ -102,18 +111,19 @@ fn in_table(piece: &Piece) -> Answer {
     Answer {
         line: Some(format!("{}\t{}\t{labels}", piece.number, piece.title())),
         error: None,
+        faults: pipeline::faults(&record.drawing),
         notices: record.notices,
     }
 }
 
 fn in_json(piece: &Piece, file: Option<&str>) -> Answer {
-    let (units, error, notices) = match piece.read() {
+    let (units, faults, error, notices) = match piece.read() {
         Ok(record) => {
             let report = pipeline::report(&record.drawing, &Requirement::default());
             let units = report.places.iter().map(UnitJson::new).collect();
-            (units, None, record.notices)
+            (units, report.faults(), None, record.notices)
         }
-        Err(error) => (Vec::new(), Some(error), Vec::new()),
+        Err(error) => (Vec::new(), Vec::new(), Some(error), Vec::new()),
     };
     let json = RecordJson {
         file,
@@ -126,6 +136,7 @@ fn in_json(piece: &Piece, file: Option<&str>) -> Answer {
         line: serde_json::to_string(&json).ok(),
         error: error.map(|e| e.to_string()),
         notices,
+        faults,
     }
 }
 

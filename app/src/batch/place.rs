@@ -85,6 +85,7 @@ pub(super) fn run(args: &Place) -> Result<Status, Failure> {
         counts: [0; 3],
         read_any: false,
         asked: false,
+        unasked: Vec::new(),
     };
     let options = files::dated();
     records::each(
@@ -102,6 +103,7 @@ pub(super) fn run(args: &Place) -> Result<Status, Failure> {
             field: (*field).to_owned(),
         });
     }
+    writer.tell_unasked();
     let replaces = same_file(&args.file, &args.out);
     writer.finish(&name_of(&args.out, "standard output"), replaces)
 }
@@ -167,7 +169,11 @@ fn carry(record: Record, line: &str, options: &WriteOptions) -> Placed {
     } else {
         Verdict::Differs
     };
-    let mut notices = Vec::new();
+    let mut notices: Vec<Notice> = report
+        .faults()
+        .into_iter()
+        .map(|text| Notice::new(0, "fault", text))
+        .collect();
     let block = if solution.edits().is_empty() {
         None
     } else {
@@ -211,6 +217,8 @@ struct Writer {
     /// Whether any record could be read.
     read_any: bool,
     asked: bool,
+    /// Records without the data field that holds what is asked.
+    unasked: Vec<usize>,
 }
 
 impl Writer {
@@ -229,10 +237,7 @@ impl Writer {
             say(&format!("{}: record {}, {notice}", self.name, piece.number));
         }
         if !placed.asked {
-            say(&format!(
-                "{}: record {}: it has no such data field, so nothing is asked of it",
-                self.name, piece.number
-            ));
+            self.unasked.push(piece.number);
         }
         if let Some(reason) = &placed.reason {
             say(&format!(
@@ -280,6 +285,24 @@ impl Writer {
             out.chars().map(latin).collect()
         } else {
             out.into_bytes()
+        }
+    }
+
+    /// Names the records of which nothing was asked, in one line.
+    fn tell_unasked(&self) {
+        let shown: Vec<String> = self.unasked.iter().take(10).map(usize::to_string).collect();
+        if let Some(more) = self.unasked.len().checked_sub(10).filter(|n| *n > 0) {
+            say(&format!(
+                "{}: records {} and {more} more have no such data field, so nothing is asked of them",
+                self.name,
+                shown.join(", ")
+            ));
+        } else if !shown.is_empty() {
+            say(&format!(
+                "{}: no such data field, so nothing is asked: record {}",
+                self.name,
+                shown.join(", ")
+            ));
         }
     }
 

@@ -38,7 +38,7 @@ pub(super) fn rank(kind: Kind, i: usize) -> Option<(usize, &'static str)> {
     let letters = ["a", "b", "c", "d"];
     let (end, rank) = match kind {
         Kind::Tetrahedral => (0, i),
-        Kind::DoubleBond => (i / 2, i % 2),
+        Kind::DoubleBond | Kind::CumulatedAxis | Kind::HinderedAxis | Kind::Helix => (i / 2, i % 2),
     };
     Some((end, letters.get(rank)?))
 }
@@ -203,13 +203,20 @@ fn place_number(place: &Place) -> String {
         .iter()
         .map(|a| (a.index() + 1).to_string())
         .collect();
-    numbers.join("=")
+    let dash = match place.kind {
+        Kind::HinderedAxis | Kind::Helix => "-",
+        Kind::Tetrahedral | Kind::DoubleBond | Kind::CumulatedAxis => "=",
+    };
+    numbers.join(dash)
 }
 
 fn tip(place: &Place) -> String {
     let what = match place.kind {
         Kind::Tetrahedral => "stereogenic centre",
         Kind::DoubleBond => "stereogenic double bond",
+        Kind::CumulatedAxis => "axis of cumulated double bonds",
+        Kind::HinderedAxis => "hindered axis",
+        Kind::Helix => "helix",
     };
     let sense = place.sense.name();
     format!("{what}, drawn: {sense}")
@@ -238,7 +245,7 @@ fn why(ui: &mut Ui, session: &Session, place: &Place) {
         let Some((end, letter)) = rank(place.kind, i) else {
             break;
         };
-        if place.kind == Kind::DoubleBond && letter == "a" {
+        if place.kind != Kind::Tetrahedral && letter == "a" {
             ui.add_space(GRID / 2.0);
             let number = place.atoms.get(end).map_or(0, |a| a.index() + 1);
             let text = format!("at {number}");

@@ -7,7 +7,8 @@ use super::digraph::{NodeIx, NodeKind};
 use super::engine::Engine;
 use super::{Stop, unit};
 use crate::molecule::AtomIx;
-use crate::stereo::{Configuration, Focus, Parity, UnitIx, Units};
+use crate::stereo::{Configuration, Focus, Kind, Parity, Unit, UnitIx, Units};
+use smallvec::SmallVec;
 use std::collections::BTreeMap;
 
 /// Units of defined configuration, by the atoms of their focus.
@@ -86,20 +87,11 @@ fn occurrences(
         }
         let (atom, sphere) = (node.atom, node.sphere);
         for (ix, parity) in foci.at.get(&atom).into_iter().flatten() {
-            if *ix == under_study {
+            // a helix has no ligands to rank and no place in the digraph
+            if *ix == under_study || units.get(*ix).kind == Kind::Helix {
                 continue;
             }
-            let far = match units.get(*ix).focus {
-                Focus::Center(_) => Some(near),
-                Focus::Pair(ends) => {
-                    let other = if ends[0] == atom { ends[1] } else { ends[0] };
-                    let mut children = engine.tree.children(near)?;
-                    children.find(|c| {
-                        let child = engine.tree.node(*c);
-                        child.kind == NodeKind::Atom && child.atom == other
-                    })
-                }
-            };
+            let far = far_end(engine, units.get(*ix), near)?;
             // a pair counts at its nearer end, whose partner lies farther out
             if let Some(far) = far {
                 found.push(Occurrence {
@@ -113,4 +105,33 @@ fn occurrences(
         }
     }
     Ok(found)
+}
+
+/// The node of a unit's far end whose near end is `near`: down the chain between them; a centre is its
+/// own. `None` if the chain does not go on downwards, so that this occurrence is the far end itself.
+fn far_end(engine: &mut Engine<'_>, unit: &Unit, near: NodeIx) -> Result<Option<NodeIx>, Stop> {
+    let Focus::Pair(ends) = unit.focus else {
+        return Ok(Some(near));
+    };
+    let forward = engine.tree.node(near).atom == ends[0];
+    let mut way: SmallVec<[AtomIx; 4]> = unit.inner.iter().copied().collect();
+    if forward {
+        way.push(ends[1]);
+    } else {
+        way.reverse();
+        way.push(ends[0]);
+    }
+    let mut at = near;
+    for atom in way {
+        let children = engine.tree.children(at)?;
+        let next = children.into_iter().find(|c| {
+            let child = engine.tree.node(*c);
+            child.kind == NodeKind::Atom && child.atom == atom
+        });
+        match next {
+            Some(node) => at = node,
+            None => return Ok(None),
+        }
+    }
+    Ok(Some(at))
 }

@@ -246,6 +246,41 @@ impl<'a> Engine<'a> {
         Ok(Ordering::Equal)
     }
 
+    /// Where a rule tells two branches apart: the two sets of nodes compared there, in order; `None` if it
+    /// does not. The first sets are the two nodes themselves.
+    pub(super) fn decisive_sets(
+        &mut self,
+        a: Branch,
+        b: Branch,
+        step: Step,
+    ) -> Result<Option<[Nodes; 2]>, Stop> {
+        if self.compare_nodes(a.node, b.node, step)?.is_ne() {
+            return Ok(Some([
+                Nodes::from_slice(&[a.node]),
+                Nodes::from_slice(&[b.node]),
+            ]));
+        }
+        let mut queue = vec![(a, b)];
+        let mut next = 0;
+        while let Some((a, b)) = queue.get(next).copied() {
+            next += 1;
+            let sets = [self.ranked(a, step)?.nodes, self.ranked(b, step)?.nodes];
+            if step == Step::R1a && self.compare_sets(a, b)?.is_ne() {
+                return Ok(Some(sets));
+            }
+            for (u, v) in sets[0].iter().zip(&sets[1]) {
+                if self.compare_nodes(*u, *v, step)?.is_ne() {
+                    return Ok(Some(sets));
+                }
+            }
+            queue.extend(sets[0].iter().zip(&sets[1]).map(|(u, v)| {
+                let from = |node, from| Branch { node, from };
+                (from(*u, a.node), from(*v, b.node))
+            }));
+        }
+        Ok(None)
+    }
+
     /// Rule 1a on the sets beyond two nodes: all atomic numbers from high to low; the longer set wins.
     fn compare_sets(&mut self, a: Branch, b: Branch) -> Result<Ordering, Stop> {
         let mut sets = [

@@ -14,6 +14,9 @@ mod digraph;
 mod engine;
 mod rules;
 mod unit;
+mod why;
+
+pub use why::{Compared, Tie};
 
 use crate::molecule::Molecule;
 use crate::perceive::Rings;
@@ -190,6 +193,32 @@ impl<'a> Ranker<'a> {
         let ranking = self.by_constitution(unit).ok().flatten()?;
         let kind = self.units.get(unit).kind;
         Some(unit::letter(kind, parity.flipped_if(ranking.odd), true))
+    }
+
+    /// Why a unit's ligands stand in their order: one entry for each two neighbors in it (of a pair, one for
+    /// each end); `None` where one of the two is a lone pair, stands alone, or only Rule 6 parts them.
+    ///
+    /// # Errors
+    /// If the bound is reached.
+    pub fn why(
+        &self,
+        molecule: &Molecule,
+        configurations: &[Configuration],
+        unit: UnitIx,
+        ranking: &Ranking,
+    ) -> Result<Vec<Option<Tie>>, Stop> {
+        let foci =
+            (!ranking.rule.is_constitutional()).then(|| Foci::of(self.units, configurations));
+        let foci = foci.as_ref();
+        unit::ties(
+            &self.context,
+            molecule,
+            self.units,
+            unit,
+            ranking,
+            foci,
+            self.limits,
+        )
     }
 
     /// The labels of all units in a molecule whose units have these configurations.

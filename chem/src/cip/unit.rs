@@ -9,8 +9,9 @@ use super::context::Context;
 use super::digraph::{Digraph, NodeIx, NodeKind, Nodes, ROOT};
 use super::engine::{Engine, Ranked};
 use super::rules::Step;
+use super::why::{self, Tie};
 use super::{Limits, Ranking, Rule, Stop};
-use crate::molecule::AtomIx;
+use crate::molecule::{AtomIx, Molecule};
 use crate::stereo::{
     Descriptor, Focus, Kind, Ligand, Parity, Unit, UnitIx, Units, odd_permutation,
 };
@@ -36,6 +37,19 @@ pub(super) fn letter(kind: Kind, parity: Parity, varies: bool) -> Descriptor {
         (Kind::DoubleBond, Parity::Odd, true) => Descriptor::E,
         (Kind::DoubleBond, Parity::Even, false) => Descriptor::LowerZ,
         (Kind::DoubleBond, Parity::Odd, false) => Descriptor::LowerE,
+        // seen along an axis, from the higher ligand in front to the higher one behind: clockwise is P
+        (Kind::CumulatedAxis | Kind::HinderedAxis | Kind::Helix, Parity::Even, true) => {
+            Descriptor::M
+        }
+        (Kind::CumulatedAxis | Kind::HinderedAxis | Kind::Helix, Parity::Odd, true) => {
+            Descriptor::P
+        }
+        (Kind::CumulatedAxis | Kind::HinderedAxis | Kind::Helix, Parity::Even, false) => {
+            Descriptor::LowerM
+        }
+        (Kind::CumulatedAxis | Kind::HinderedAxis | Kind::Helix, Parity::Odd, false) => {
+            Descriptor::LowerP
+        }
     }
 }
 
@@ -45,6 +59,14 @@ pub(super) fn rank_by_constitution(
     unit: &Unit,
     limits: Limits,
 ) -> Result<Option<Ranking>, Stop> {
+    if unit.kind == Kind::Helix {
+        // its hand is its descriptor: nothing is ranked
+        return Ok(Some(Ranking {
+            order: SmallVec::new(),
+            rule: Rule::R1a,
+            odd: false,
+        }));
+    }
     let mut sites = Sites::rooted(context, unit, limits);
     sites.rank(unit, Reach::Constitution)
 }
@@ -80,6 +102,48 @@ pub(super) fn auxiliary_descriptor(
     };
     let found = sites.rank_both_ways(unit)?;
     Ok(found.map(|(ranking, varies)| letter(unit.kind, parity.flipped_if(ranking.odd), varies)))
+}
+
+/// For each two neighbors in the order of a unit's ligands, how they were told apart; `None` where one is
+/// a lone pair, stands alone at its end of a pair, or only Rule 6 parts them.
+pub(super) fn ties(
+    context: &Context,
+    molecule: &Molecule,
+    units: &Units,
+    ix: UnitIx,
+    ranking: &Ranking,
+    foci: Option<&Foci>,
+    limits: Limits,
+) -> Result<Vec<Option<Tie>>, Stop> {
+    let unit = units.get(ix);
+    let mut sites = Sites::rooted(context, unit, limits);
+    if let Some(foci) = foci {
+        for engine in sites.engines() {
+            auxiliary::fill(engine, units, ix, foci)?;
+        }
+    }
+    let toward = unit.toward_each_other();
+    let is_pair = matches!(unit.focus, Focus::Pair(_));
+    let mut ties = Vec::new();
+    for (k, engine) in sites.engines().into_iter().enumerate() {
+        let partner = is_pair.then_some(toward[k]);
+        let nodes = ligand_nodes(engine, ROOT, partner)?;
+        let here = if is_pair {
+            ranking.order.get(2 * k..2 * k + 2)
+        } else {
+            ranking.order.get(..)
+        };
+        for two in here.unwrap_or_default().windows(2) {
+            let node =
+                |wanted: Ligand| nodes.iter().copied().find(|n| ligand(engine, *n) == wanted);
+            let (higher, lower) = (node(two[0]), node(two[1]));
+            ties.push(match (higher, lower) {
+                (Some(a), Some(b)) => why::tie(engine, molecule, ROOT, a, b)?,
+                _ => None,
+            });
+        }
+    }
+    Ok(ties)
 }
 
 enum Where<'e, 'a> {
@@ -153,40 +217,104 @@ impl<'e, 'a> Sites<'e, 'a> {
             };
             return rank_center(place.engine(), *hub, &unit.ligands, reach);
         };
-        let (first, second) = match self {
-            Sites::Ends(engines) => {
-                let [a, b] = &mut **engines;
-                let first = rank_end(a, ROOT, ends[1], &unit.ligands[..2], reach)?;
-                (
-                    first,
-                    rank_end(b, ROOT, ends[0], &unit.ligands[2..], reach)?,
-                )
-            }
+        let Some(mut hubs) = self.hubs(ends) else {
+            return Ok(None);
+        };
+        let toward = unit.toward_each_other();
+        let mut found = [None, None];
+        for (k, found) in found.iter_mut().enumerate() {
+            let ligands = &unit.ligands[2 * k..2 * k + 2];
+            let (engine, hub) = hubs.at(k);
+            *found = rank_end(engine, hub, toward[k], ligands, reach)?;
+        }
+        if let [Some(first), Some(second)] = &found {
+            return Ok(Some(joined(first, second)));
+        }
+        let axial = matches!(unit.kind, Kind::CumulatedAxis | Kind::HinderedAxis);
+        let both_tied = found.iter().all(Option::is_none);
+        if axial && both_tied && reach != Reach::Constitution {
+            return rank_axis_by_reference(&mut hubs, unit, reach);
+        }
+        Ok(None)
+    }
+
+    /// The nodes of a pair's ends, each with its digraph.
+    fn hubs(&mut self, ends: [AtomIx; 2]) -> Option<Hubs<'_, 'a>> {
+        match self {
+            Sites::Ends(engines) => Some(Hubs::Apart(engines)),
             Sites::Inner(engine, near, far) => {
                 let near_is_first = engine.tree.node(*near).atom == ends[0];
-                let hubs = if near_is_first {
+                let nodes = if near_is_first {
                     [*near, *far]
                 } else {
                     [*far, *near]
                 };
-                let first = rank_end(engine, hubs[0], ends[1], &unit.ligands[..2], reach)?;
-                (
-                    first,
-                    rank_end(engine, hubs[1], ends[0], &unit.ligands[2..], reach)?,
-                )
+                Some(Hubs::Together(engine, nodes))
             }
-            Sites::Center(..) => return Ok(None),
-        };
-        let (Some(first), Some(second)) = (first, second) else {
+            Sites::Center(..) => None,
+        }
+    }
+}
+
+/// Where the two ends of a pair are ranked.
+enum Hubs<'s, 'a> {
+    Apart(&'s mut [Engine<'a>; 2]),
+    Together(&'s mut Engine<'a>, [NodeIx; 2]),
+}
+
+impl<'a> Hubs<'_, 'a> {
+    fn at(&mut self, k: usize) -> (&mut Engine<'a>, NodeIx) {
+        match self {
+            Hubs::Apart(engines) => (&mut engines[k], ROOT),
+            Hubs::Together(engine, nodes) => (engine, nodes[k]),
+        }
+    }
+}
+
+/// Rule 6 for an axis that is tied at both ends: a ligand of the first end in turn is the reference in
+/// the digraphs of both; every choice must order both ends and give one sense.
+fn rank_axis_by_reference(
+    hubs: &mut Hubs<'_, '_>,
+    unit: &Unit,
+    reach: Reach,
+) -> Result<Option<Ranking>, Stop> {
+    let toward = unit.toward_each_other();
+    let mut agreed: Option<Ranking> = None;
+    for reference in &unit.ligands[..2] {
+        let Some(reference) = reference.atom() else {
             return Ok(None);
         };
-        let mut order = first.order;
-        order.extend(second.order);
-        Ok(Some(Ranking {
-            order,
-            rule: first.rule.max(second.rule),
-            odd: first.odd != second.odd,
-        }))
+        let mut found: SmallVec<[Ranking; 2]> = SmallVec::new();
+        for (k, partner) in toward.iter().enumerate() {
+            let (engine, hub) = hubs.at(k);
+            engine.set_reference(Some(reference));
+            let nodes = ligand_nodes(engine, hub, Some(*partner))?;
+            let (ranked, _) = rank_nodes(engine, hub, nodes, reach)?;
+            let refined = engine.refine_by(ranked, hub, Step::R6)?;
+            if !refined.is_complete() {
+                return Ok(None);
+            }
+            let ligands = &unit.ligands[2 * k..2 * k + 2];
+            found.push(end_ranking(engine, &refined, ligands, Rule::R6));
+        }
+        let ranking = joined(&found[0], &found[1]);
+        match &agreed {
+            Some(earlier) if earlier.odd != ranking.odd => return Ok(None),
+            Some(_) => {}
+            None => agreed = Some(ranking),
+        }
+    }
+    Ok(agreed)
+}
+
+/// The ranking of a pair from those of its ends.
+fn joined(first: &Ranking, second: &Ranking) -> Ranking {
+    let mut order = first.order.clone();
+    order.extend(second.order.iter().copied());
+    Ranking {
+        order,
+        rule: first.rule.max(second.rule),
+        odd: first.odd != second.odd,
     }
 }
 
@@ -239,7 +367,8 @@ fn rank_center(
     Ok(agreed)
 }
 
-/// Ranks the one or two ligands of one end of a double bond. Rule 6 is not used there.
+/// Ranks the one or two ligands of one end of a pair; `partner` is the neighbor on the way to the other.
+/// Double bonds know no Rule 6.
 fn rank_end(
     engine: &mut Engine<'_>,
     hub: NodeIx,
@@ -249,16 +378,19 @@ fn rank_end(
 ) -> Result<Option<Ranking>, Stop> {
     let nodes = ligand_nodes(engine, hub, Some(partner))?;
     let (ranked, rule) = rank_nodes(engine, hub, nodes, reach)?;
-    if !ranked.is_complete() {
-        return Ok(None);
-    }
+    Ok(ranked
+        .is_complete()
+        .then(|| end_ranking(engine, &ranked, ligands, rule)))
+}
+
+fn end_ranking(engine: &Engine<'_>, ranked: &Ranked, ligands: &[Ligand], rule: Rule) -> Ranking {
     let mut order: SmallVec<[Ligand; 4]> =
         ranked.nodes().iter().map(|n| ligand(engine, *n)).collect();
     if order.len() < 2 {
         order.push(ligands[1]);
     }
     let odd = order.first() != ligands.first();
-    Ok(Some(Ranking { order, rule, odd }))
+    Ranking { order, rule, odd }
 }
 
 /// Nodes that stand for real ligands of a node: all neighbours but duplicates for further electron

@@ -40,6 +40,18 @@ pub(super) enum Side {
     Above,
 }
 
+impl Side {
+    /// The way to it from the symbol, length 1, on the page.
+    fn direction(self) -> Vec2 {
+        match self {
+            Side::Right => Vec2::new(1.0, 0.0),
+            Side::Left => Vec2::new(-1.0, 0.0),
+            Side::Below => Vec2::new(0.0, 1.0),
+            Side::Above => Vec2::new(0.0, -1.0),
+        }
+    }
+}
+
 /// Where its charge or mass number stands.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 enum Corner {
@@ -69,18 +81,7 @@ pub(super) fn free_side(spelling: &Spelling, bonds: &[Vec2]) -> Side {
             }
         }
         _ => {
-            let room = |side: Vec2| {
-                bonds
-                    .iter()
-                    .map(|b| geom::between(*b, side))
-                    .fold(f64::INFINITY, f64::min)
-            };
-            let sides = [
-                (Side::Right, room(Vec2::new(1.0, 0.0))),
-                (Side::Left, room(Vec2::new(-1.0, 0.0))),
-                (Side::Below, room(Vec2::new(0.0, 1.0))),
-                (Side::Above, room(Vec2::new(0.0, -1.0))),
-            ];
+            let sides = rooms(bonds);
             // a bond within 57 degrees takes a side
             sides[..2].iter().find(|s| s.1 > 1.0).map_or_else(
                 || {
@@ -98,19 +99,56 @@ pub(super) fn free_side(spelling: &Spelling, bonds: &[Vec2]) -> Side {
     }
 }
 
-/// Places a label with its symbol's middle at `at`.
+/// The angle from each side to the nearest bond, in the order in which sides are preferred.
+fn rooms(bonds: &[Vec2]) -> [(Side, f64); 4] {
+    [Side::Right, Side::Left, Side::Below, Side::Above].map(|side| {
+        let room = bonds
+            .iter()
+            .map(|b| geom::between(*b, side.direction()))
+            .fold(f64::INFINITY, f64::min);
+        (side, room)
+    })
+}
+
+/// The free side, or another one with room among the bonds if something else on the page stands where the
+/// hydrogens would; `others` are the places of nearby atoms as seen from this one.
+fn clear_side(style: &Style, spelling: &Spelling, bonds: &[Vec2], others: &[Vec2]) -> Side {
+    let preferred = free_side(spelling, bonds);
+    if spelling.hydrogens == 0 {
+        return preferred;
+    }
+    let blocked = |side: Side| {
+        let spot = side.direction() * (0.85 * style.font_size);
+        others
+            .iter()
+            .any(|other| (*other - spot).hypot() < 0.8 * style.font_size)
+    };
+    if !blocked(preferred) {
+        return preferred;
+    }
+    rooms(bonds)
+        .into_iter()
+        .filter(|(side, room)| *room > 0.7 && !blocked(*side))
+        .map(|(side, _)| side)
+        .next()
+        .unwrap_or(preferred)
+}
+
+/// Places a label with its symbol's middle at `at`; `others` are the places of nearby atoms as
+/// seen from there.
 pub(super) fn place(
     setter: &mut Setter,
     style: &Style,
     spelling: &Spelling,
     at: Point,
     bonds: &[Vec2],
+    others: &[Vec2],
 ) -> Label {
     let layout = Layout {
         style,
         spelling,
         at,
-        side: free_side(spelling, bonds),
+        side: clear_side(style, spelling, bonds, others),
     };
     let (number, plain) = layout.number(setter, bonds);
     if spelling.charge.is_empty() {
@@ -407,6 +445,7 @@ mod tests {
             s,
             Point::new(3.0, 4.0),
             &bonds,
+            &[],
         );
         let text = label.sets.iter().map(|s| s.run.text.as_str()).collect();
         (text, label)
@@ -428,6 +467,17 @@ mod tests {
         assert_eq!(free_side(&nh, &bonds(&[150.0, -90.0])), Side::Right);
         assert_eq!(free_side(&nh, &bonds(&[30.0, 150.0])), Side::Below);
         assert_eq!(free_side(&nh, &bonds(&[-30.0, -150.0])), Side::Above);
+    }
+
+    #[test]
+    fn hydrogens_give_way_to_what_stands_there() {
+        let nh = spelling("N", 1, "");
+        let below = bonds(&[-90.0]);
+        let side = |others: &[Vec2]| clear_side(&STYLES[0], &nh, &below, others);
+        assert_eq!(side(&[]), Side::Right);
+        let to_the_right = Vec2::new(STYLES[0].font_size * 1.2, 0.0);
+        assert_eq!(side(&[to_the_right]), Side::Left);
+        assert_eq!(side(&[to_the_right, -to_the_right]), Side::Above);
     }
 
     fn bonds(degrees: &[f64]) -> Vec<Vec2> {

@@ -162,12 +162,17 @@ impl<'a> Scene<'a> {
     fn make_label(&self, atom: AtomIx, setter: &mut Setter) -> Option<Label> {
         let spelling = spelling::spell(self.molecule(), atom, self.is_straight(atom))?;
         let bonds = self.directions(atom, None);
+        let at = self.point(atom);
+        let near = 2.2 * self.style.font_size;
+        let others: Vec<Vec2> = self
+            .molecule()
+            .atoms()
+            .filter(|a| *a != atom)
+            .map(|a| self.point(a) - at)
+            .filter(|v| v.x.abs() < near && v.y.abs() < near)
+            .collect();
         Some(letters::place(
-            setter,
-            self.style,
-            &spelling,
-            self.point(atom),
-            &bonds,
+            setter, self.style, &spelling, at, &bonds, &others,
         ))
     }
 

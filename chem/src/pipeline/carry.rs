@@ -9,7 +9,7 @@ use crate::solve::Refusal;
 use crate::solve::require::Requirement;
 use crate::solve::search::{Goal, SearchError, search};
 use crate::solve::turn::{Geometry, turn};
-use crate::stereo::{Configuration, Focus, Unit, UnitIx, Units};
+use crate::stereo::{Configuration, Focus, Kind, Unit, UnitIx, Units};
 use crate::wedge::{self, Target};
 
 /// The drawing that carries the requirement, with the least change; places of which nothing is asked
@@ -34,7 +34,9 @@ pub fn carry(drawing: &Drawing, requirement: &Requirement) -> Result<Solution, R
         configurations: &configurations,
     };
     let (turned, mut edits) = wanted.turn_all(drawing)?;
-    let (marked, marks) = wanted.mark_all(&turned)?;
+    let (with_axes, marks) = wanted.mark_axes(&turned)?;
+    edits.extend(marks);
+    let (marked, marks) = wanted.mark_all(&with_axes)?;
     edits.extend(marks);
     read_back(&units, &configurations, marked, edits, requirement)
 }
@@ -81,7 +83,14 @@ fn goals(units: &Units, requirement: &Requirement) -> Result<Vec<Goal>, Refusal>
 fn name(unit: &Unit) -> String {
     match unit.focus {
         Focus::Center(a) => format!("atom {}", a.index() + 1),
-        Focus::Pair([a, b]) => format!("the double bond {}={}", a.index() + 1, b.index() + 1),
+        Focus::Pair([a, b]) => {
+            let (a, b) = (a.index() + 1, b.index() + 1);
+            match unit.kind {
+                Kind::CumulatedAxis | Kind::HinderedAxis => format!("the axis {a}-{b}"),
+                Kind::Helix => format!("the helix {a}-{b}"),
+                Kind::DoubleBond | Kind::Tetrahedral => format!("the double bond {a}={b}"),
+            }
+        }
     }
 }
 
@@ -175,7 +184,7 @@ impl Wanted<'_> {
         let mut now = drawing.clone();
         let mut all = Vec::new();
         for (ix, unit) in self.units.iter() {
-            let Focus::Pair(ends) = unit.focus else {
+            let (Focus::Pair(ends), Kind::DoubleBond) = (unit.focus, unit.kind) else {
                 continue;
             };
             let wanted = self.configurations[ix.index()];
@@ -190,14 +199,47 @@ impl Wanted<'_> {
             };
             let geometry = Geometry {
                 ends,
+                toward: unit.toward_each_other(),
                 first: [a, b],
                 parity,
             };
-            let edits = turn(&now, self.rings, geometry).map_err(|error| Refusal {
+            let edits = turn(&now, self.rings, self.units, geometry).map_err(|error| Refusal {
                 code: "cannot-turn",
                 atoms: ends.to_vec(),
                 text: format!("{} cannot be turned: {error}", name(unit)),
             })?;
+            now = applied(&now, &edits)?;
+            all.extend(edits);
+        }
+        Ok((now, all))
+    }
+
+    /// Marks each axis and helix that reads otherwise.
+    fn mark_axes(&self, drawing: &Drawing) -> Result<(Drawing, Vec<Edit>), Refusal> {
+        let mut now = drawing.clone();
+        let mut all = Vec::new();
+        for (ix, unit) in self.units.iter() {
+            let wanted = self.configurations[ix.index()];
+            let Configuration::Defined(parity) = wanted else {
+                continue;
+            };
+            let is_axis = matches!(
+                unit.kind,
+                Kind::CumulatedAxis | Kind::HinderedAxis | Kind::Helix
+            );
+            if !is_axis || wedge::read(&now, self.units).configuration(ix) == wanted {
+                continue;
+            }
+            let edits = wedge::place_axis(&now, self.units, self.rings, unit, parity).ok_or_else(
+                || Refusal {
+                    code: "no-place",
+                    atoms: unit.atoms().to_vec(),
+                    text: format!(
+                        "no bond at the ends of {} can bear a wedge, or its other end lies in line",
+                        name(unit)
+                    ),
+                },
+            )?;
             now = applied(&now, &edits)?;
             all.extend(edits);
         }

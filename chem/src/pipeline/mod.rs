@@ -5,11 +5,11 @@ mod carry;
 mod report;
 
 pub use carry::carry;
-pub use report::{labels_line, report};
+pub use report::{faults, labels_line, report, why};
 
 use crate::cip::Rule;
 use crate::drawing::{Drawing, Edit};
-use crate::molecule::AtomIx;
+use crate::molecule::{AtomIx, BondIx};
 use crate::solve::require::{Requirement, RequirementError};
 use crate::stereo::{Descriptor, Kind, Ligand};
 
@@ -91,10 +91,23 @@ pub struct Place {
 }
 
 /// What a drawing carries and how that stands to a requirement.
-#[derive(Clone, Debug, PartialEq)]
+#[derive(Clone, Debug, Default, PartialEq)]
 pub struct Report {
     /// Places that carry, could carry or must carry a descriptor, by lowest atom.
     pub places: Vec<Place>,
+    /// Wedges that say nothing to a careful reader.
+    pub idle: Vec<Idle>,
+}
+
+/// A wedge that says nothing: at its narrow end no configuration can be read from it.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct Idle {
+    /// Its bond.
+    pub bond: BondIx,
+    /// The atom at its narrow end.
+    pub atom: AtomIx,
+    /// What it does, in a sentence.
+    pub text: String,
 }
 
 impl Report {
@@ -123,11 +136,30 @@ impl Report {
         }
     }
 
-    /// Whether everything that is asked is carried.
+    /// Whether everything that is asked is carried; places of which nothing is asked do not count.
     pub fn all_agree(&self) -> bool {
         self.places
             .iter()
-            .all(|p| matches!(p.verdict, Verdict::Agrees | Verdict::NotAsked))
+            .all(|p| p.must.is_none() || p.verdict == Verdict::Agrees)
+    }
+
+    /// Faults that a reader of the labels alone would not see, a sentence each: marks that contradict each
+    /// other and wedges that say nothing.
+    pub fn faults(&self) -> Vec<String> {
+        let contradictions = self
+            .places
+            .iter()
+            .filter(|p| p.sense == Sense::Contradiction)
+            .map(|p| {
+                let atoms: Vec<String> = p
+                    .atoms
+                    .iter()
+                    .map(|a| (a.index() + 1).to_string())
+                    .collect();
+                format!("atom {}: {}", atoms.join(" and "), p.note)
+            });
+        let idle = self.idle.iter().map(|i| i.text.clone());
+        contradictions.chain(idle).collect()
     }
 }
 

@@ -1,12 +1,12 @@
 //! What a drawing carries, place by place.
 
-use super::{Place, Report, Sense, Verdict};
-use crate::cip::{Limits, Missing, Ranker, UnitLabel};
+use super::{Idle, Place, Report, Sense, Verdict};
+use crate::cip::{Limits, Missing, Ranker, Tie, UnitLabel};
 use crate::drawing::{Drawing, Mark};
-use crate::molecule::AtomIx;
+use crate::molecule::{AtomIx, Order};
 use crate::perceive::Rings;
 use crate::solve::require::Requirement;
-use crate::stereo::{Configuration, Descriptor, Focus, Ligand, Unit, UnitIx, Units};
+use crate::stereo::{Configuration, Descriptor, Focus, Kind, Ligand, Unit, UnitIx, Units};
 use crate::wedge::{self, Reading};
 
 /// What a drawing carries, and how that stands to a requirement (an empty one asks nothing).
@@ -22,11 +22,95 @@ pub fn report(drawing: &Drawing, requirement: &Requirement) -> Report {
             let must = wanted(requirement, unit);
             let label = &labels[ix.index()];
             is_shown(drawing, unit, ix, &reading, label, must)
-                .then(|| place(unit, ix, &reading, label, must))
+                .then(|| place(drawing, unit, ix, &reading, label, must))
         })
         .collect();
     places.sort_by_key(|p| p.atoms.clone());
-    Report { places }
+    Report {
+        places,
+        idle: idle(drawing, &units, &labels),
+    }
+}
+
+/// Why the ligands of a place stand in their order: one entry for each two neighbors in it (of a pair,
+/// one for each end); empty where nothing is ranked. See [`Ranker::why`].
+pub fn why(drawing: &Drawing, place: &Place) -> Vec<Option<Tie>> {
+    let molecule = drawing.molecule();
+    let rings = Rings::find(molecule);
+    let units = Units::find(molecule, &rings);
+    let ranker = Ranker::new(molecule, &rings, &units, Limits::default());
+    let reading = wedge::read(drawing, &units);
+    let unit = units
+        .iter()
+        .find(|(_, u)| u.kind == place.kind && u.atoms().as_slice() == place.atoms.as_slice());
+    let Some((ix, _)) = unit else {
+        return Vec::new();
+    };
+    let labels = ranker.label_all(reading.configurations());
+    let Some(ranking) = &labels[ix.index()].ranking else {
+        return Vec::new();
+    };
+    ranker
+        .why(molecule, reading.configurations(), ix, ranking)
+        .unwrap_or_default()
+}
+
+/// Wedges from whose narrow end no reader learns anything: no unit there, or one whose ligands are alike.
+/// A wedge in a ring may hold others in their geometry though its own atom carries nothing, and stays
+/// unmentioned.
+fn idle(drawing: &Drawing, units: &Units, labels: &[UnitLabel]) -> Vec<Idle> {
+    let molecule = drawing.molecule();
+    let rings = Rings::find(molecule);
+    let mut list = Vec::new();
+    for bond in molecule.bonds() {
+        let mark = drawing.mark(bond);
+        let (Mark::Solid(end) | Mark::Hashed(end)) = mark else {
+            continue;
+        };
+        let ends = molecule.bond(bond).ends;
+        let (narrow, wide) = (ends[end.index()], ends[end.other().index()]);
+        let (n, w) = (narrow.index() + 1, wide.index() + 1);
+        let mut here = units.iter().filter(|(_, u)| speaks_at(u, narrow, wide));
+        let found = here.next();
+        let text = match found {
+            None if units.center_at(wide).is_some() => format!(
+                "the wedge between atoms {n} and {w} is narrow at atom {n}, which is no centre: at atom {w} its wide end says nothing"
+            ),
+            None => format!(
+                "the wedge from atom {n} to atom {w} says nothing: atom {n} is not stereogenic"
+            ),
+            Some((ix, _))
+                if labels[ix.index()].descriptor == Err(Missing::Alike)
+                    && !rings.has_atom(molecule, narrow) =>
+            {
+                format!(
+                    "the wedge from atom {n} to atom {w} says nothing: two ligands of atom {n} are alike"
+                )
+            }
+            Some(_) if molecule.bond(bond).order != Order::Single => format!(
+                "the wedge from atom {n} to atom {w} is on a bond that is not single and says nothing"
+            ),
+            Some(_) => continue,
+        };
+        list.push(Idle {
+            bond,
+            atom: narrow,
+            text,
+        });
+    }
+    list
+}
+
+/// Whether a unit can be read from a mark that is narrow at one atom and wide at another.
+fn speaks_at(unit: &Unit, narrow: AtomIx, wide: AtomIx) -> bool {
+    match unit.kind {
+        Kind::Tetrahedral => unit.atoms().contains(&narrow),
+        Kind::DoubleBond => false,
+        Kind::CumulatedAxis | Kind::HinderedAxis => {
+            unit.atoms().contains(&narrow) && unit.ligands.contains(&Ligand::Atom(wide))
+        }
+        Kind::Helix => unit.toward_each_other().contains(&narrow) && unit.atoms().contains(&wide),
+    }
 }
 
 /// The labels of a drawing alone: `3R 7E 8E`. Units that the drawing leaves open are not ranked.
@@ -47,6 +131,33 @@ pub fn labels_line(drawing: &Drawing) -> String {
         .flat_map(|(unit, d)| unit.atoms().into_iter().map(move |a| (a, d)))
         .collect();
     spell(list)
+}
+
+/// What a reader of the labels alone would not see, a sentence each (see [`Report::faults`]); quick where
+/// every wedge starts at a centre that can be read.
+pub fn faults(drawing: &Drawing) -> Vec<String> {
+    let molecule = drawing.molecule();
+    let rings = Rings::find(molecule);
+    let units = Units::find(molecule, &rings);
+    let reading = wedge::read(drawing, &units);
+    let mut plain = vec![true; molecule.n_atoms()];
+    for (ix, unit) in units.iter() {
+        if let (Focus::Center(a), Configuration::Defined(_)) =
+            (unit.focus, reading.configuration(ix))
+        {
+            plain[a.index()] = false;
+        }
+    }
+    let doubtful = units.iter().any(|(ix, _)| reading.doubt(ix).is_some());
+    let strays = molecule.bonds().any(|b| match drawing.mark(b) {
+        Mark::Solid(end) | Mark::Hashed(end) => plain[molecule.bond(b).ends[end.index()].index()],
+        Mark::Plain | Mark::Wavy(_) | Mark::Crossed => false,
+    });
+    if doubtful || strays {
+        report(drawing, &Requirement::default()).faults()
+    } else {
+        Vec::new()
+    }
 }
 
 /// Labels in the order of their atoms.
@@ -90,7 +201,9 @@ fn is_shown(
                 && matches!(unit.focus, Focus::Center(_));
             let silent =
                 reading.doubt(ix).is_none() && reading.configuration(ix) == Configuration::Open;
-            label.ranking.is_some() && !(held_by_cage && silent)
+            // only a mark says that rotation about a bond is hindered or that rings form a helix
+            let needs_mark = matches!(unit.kind, Kind::HinderedAxis | Kind::Helix);
+            label.ranking.is_some() && !((held_by_cage || needs_mark) && silent)
         }
         Err(Missing::Stopped(_)) => has_mark(drawing, unit),
         _ => false,
@@ -107,7 +220,19 @@ fn has_mark(drawing: &Drawing, unit: &Unit) -> bool {
     })
 }
 
+/// Whether a wedge is wide at the centre.
+fn has_wide_end(drawing: &Drawing, unit: &Unit) -> bool {
+    let Focus::Center(center) = unit.focus else {
+        return false;
+    };
+    drawing.molecule().neighbors(center).iter().any(|n| {
+        let wedge = matches!(drawing.mark(n.bond), Mark::Solid(_) | Mark::Hashed(_));
+        wedge && drawing.mark_from(center, n.bond) == Mark::Plain
+    })
+}
+
 fn place(
+    drawing: &Drawing,
     unit: &Unit,
     ix: UnitIx,
     reading: &Reading,
@@ -132,6 +257,9 @@ fn place(
         (Some(doubt), _) => doubt.text().to_owned(),
         (None, Err(Missing::Undefined)) if sense == Sense::Either => {
             "drawn as unknown or mixed".to_owned()
+        }
+        (None, Err(Missing::Undefined)) if has_wide_end(drawing, unit) => {
+            "a wedge has its wide end here, which says nothing".to_owned()
         }
         (None, Err(missing)) => missing.to_string(),
         (None, Ok(_)) => String::new(),

@@ -116,7 +116,7 @@ fn check_status(line: &Line) -> Result<(), RequirementError> {
     };
     let text = match line.status {
         Status::Meso => {
-            "whether a drawing is meso is not checked yet: state each center, as in (2R,3S)"
+            "whether a drawing is meso is not checked yet: state each centre, as in (2R,3S)"
                 .to_owned()
         }
         Status::Abs | Status::Rac | Status::Rel => format!(
@@ -201,9 +201,13 @@ impl Sheet<'_> {
         let n_atoms = self.drawing.molecule().n_atoms();
         let index = number as usize;
         if index == 0 || index > n_atoms {
-            let text = format!(
-                "there is no atom {number}: the drawing has atoms 1 to {n_atoms}. Use the numbers of the drawing"
-            );
+            let text = match n_atoms {
+                0 => format!("there is no atom {number}: the drawing is empty"),
+                1 => format!("there is no atom {number}: the drawing has one atom only"),
+                _ => format!(
+                    "there is no atom {number}: the drawing has atoms 1 to {n_atoms}. Use the numbers of the drawing"
+                ),
+            };
             return Err(error("S-NO-LOCANT", column, text));
         }
         Ok(AtomIx::new(index - 1))
@@ -231,6 +235,7 @@ impl Sheet<'_> {
                 let carried = match unit.kind {
                     Kind::Tetrahedral => "R or S",
                     Kind::DoubleBond => "E or Z",
+                    Kind::CumulatedAxis | Kind::HinderedAxis | Kind::Helix => "M or P",
                 };
                 error(
                     "S-KIND",
@@ -299,14 +304,21 @@ impl Sheet<'_> {
             .map(|item| Ok((item, plain(item)?)))
             .collect::<Result<Vec<_>, RequirementError>>()?;
         let mut found = Vec::new();
-        for kind in [Kind::Tetrahedral, Kind::DoubleBond] {
-            let of_kind: Vec<_> = asked.iter().filter(|(_, d)| kind.can_carry(*d)).collect();
+        for kinds in [
+            [Kind::Tetrahedral].as_slice(),
+            &[Kind::DoubleBond],
+            &[Kind::CumulatedAxis, Kind::HinderedAxis, Kind::Helix],
+        ] {
+            let of_kind: Vec<_> = asked
+                .iter()
+                .filter(|(_, d)| kinds.iter().any(|k| k.can_carry(*d)))
+                .collect();
             let Some((first, descriptor)) = of_kind.first() else {
                 continue;
             };
             let places: Vec<UnitIx> = self
                 .could_carry()
-                .filter(|(_, u)| u.kind == kind)
+                .filter(|(_, u)| kinds.contains(&u.kind))
                 .map(|(ix, _)| ix)
                 .collect();
             let column = first.columns.start;
@@ -323,13 +335,6 @@ impl Sheet<'_> {
                 return Err(error("S-COUNT", column, text));
             }
             found.extend(places.into_iter().map(|ix| (ix, *descriptor)));
-        }
-        if let Some((item, d)) = asked
-            .iter()
-            .find(|(_, d)| !Kind::Tetrahedral.can_carry(*d) && !Kind::DoubleBond.can_carry(*d))
-        {
-            let text = format!("{d} belongs to an axis or helix, which are not handled yet");
-            return Err(error("S-KIND", item.columns.start, text));
         }
         Ok(found)
     }

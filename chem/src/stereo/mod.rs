@@ -8,8 +8,11 @@
 //! Source of the candidate lists: the InChI technical manual's tables of stereogenic elements, as far
 //! as they agree with the drawings of the public CIP Validation Suite.
 
+mod cumulated;
 mod descriptor;
 mod double_bond;
+mod helix;
+mod hindered;
 mod tetrahedral;
 
 pub use descriptor::Descriptor;
@@ -24,8 +27,14 @@ use smallvec::SmallVec;
 pub enum Kind {
     /// A centre with four ligands, a hydrogen or a lone pair among them.
     Tetrahedral,
-    /// A double bond.
+    /// A double bond, or three, five ... in a row.
     DoubleBond,
+    /// Two, four ... double bonds in a row: the planes of the ends cross.
+    CumulatedAxis,
+    /// A single bond between two rings that cannot turn. Only a mark says that it is hindered.
+    HinderedAxis,
+    /// The inner rim of a helicene.
+    Helix,
 }
 
 impl Kind {
@@ -34,6 +43,9 @@ impl Kind {
         match self {
             Kind::Tetrahedral => "tetrahedral",
             Kind::DoubleBond => "double-bond",
+            Kind::CumulatedAxis => "cumulated-axis",
+            Kind::HinderedAxis => "hindered-axis",
+            Kind::Helix => "helix",
         }
     }
 
@@ -43,6 +55,10 @@ impl Kind {
         match self {
             Kind::Tetrahedral => matches!(descriptor, D::R | D::S | D::LowerR | D::LowerS),
             Kind::DoubleBond => matches!(descriptor, D::E | D::Z | D::LowerE | D::LowerZ),
+            Kind::CumulatedAxis | Kind::HinderedAxis => {
+                matches!(descriptor, D::M | D::P | D::LowerM | D::LowerP)
+            }
+            Kind::Helix => matches!(descriptor, D::M | D::P),
         }
     }
 }
@@ -102,7 +118,10 @@ pub struct Unit {
     /// The atom or the two atoms that hold the ligands.
     pub focus: Focus,
     /// Four ligands in reference order; of a pair, the two of its first atom, then the two of its second.
+    /// A helix has none: each of its slots holds an end.
     pub ligands: [Ligand; 4],
+    /// Atoms of a pair between its ends, from the first to the second.
+    pub inner: SmallVec<[AtomIx; 2]>,
 }
 
 impl Unit {
@@ -113,12 +132,24 @@ impl Unit {
             Focus::Pair(ends) => SmallVec::from_slice(&ends),
         }
     }
+
+    /// The neighbors of a pair's ends on the way to each other; of a centre, itself.
+    pub fn toward_each_other(&self) -> [AtomIx; 2] {
+        match self.focus {
+            Focus::Center(a) => [a, a],
+            Focus::Pair([a, b]) => [
+                self.inner.first().copied().unwrap_or(b),
+                self.inner.last().copied().unwrap_or(a),
+            ],
+        }
+    }
 }
 
 /// One of the two arrangements of a unit, relative to its ligands in reference order.
 ///
 /// Centre: `Even` if, seen from the first ligand, the other three follow each other clockwise.
-/// Double bond: `Even` if the first ligands of both ends are on the same side.
+/// Double bond: `Even` if the first ligands of both ends are on the same side. Axis: as a centre, the two
+/// ligands of the first end before those of the second. Helix: `Even` if it is left-handed.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
 pub enum Parity {
     /// See the type.
@@ -170,7 +201,12 @@ impl Units {
     pub fn find(molecule: &Molecule, rings: &Rings) -> Units {
         let mut list = Vec::new();
         tetrahedral::find(molecule, rings, &mut list);
-        double_bond::find(molecule, rings, &mut list);
+        let chains = cumulated::chains(molecule);
+        double_bond::find(molecule, rings, &chains, &mut list);
+        cumulated::find(molecule, rings, &chains, &mut list);
+        hindered::find(molecule, rings, &mut list);
+        helix::find(molecule, rings, &mut list);
+        list.sort_by_key(|unit| (unit.kind, unit.atoms()));
         Units { list }
     }
 

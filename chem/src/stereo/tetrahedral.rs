@@ -4,6 +4,7 @@ use super::{Focus, Kind, Ligand, Unit};
 use crate::element::Element;
 use crate::molecule::{AtomIx, Molecule, Order};
 use crate::perceive::Rings;
+use smallvec::SmallVec;
 
 pub(super) fn find(molecule: &Molecule, rings: &Rings, list: &mut Vec<Unit>) {
     for atom in molecule.atoms() {
@@ -12,6 +13,7 @@ pub(super) fn find(molecule: &Molecule, rings: &Rings, list: &mut Vec<Unit>) {
                 kind: Kind::Tetrahedral,
                 focus: Focus::Center(atom),
                 ligands,
+                inner: SmallVec::new(),
             });
         }
     }

@@ -3,8 +3,10 @@
 
 mod place;
 mod read;
+mod read_axis;
 mod read_center;
 mod read_double;
+mod read_helix;
 
-pub use place::{PlaceError, PlaceErrorKind, Target, place};
+pub use place::{PlaceError, PlaceErrorKind, Target, place, place_axis};
 pub use read::{Doubt, Reading, read};

@@ -7,9 +7,9 @@
 //! (ST-0.4, ST-0.5, ST-1.2.10, ST-1.2.12, ST-4.4, as their readers quote them); InChI technical manual,
 //! stereochemical layer.
 
-use super::{read_center, read_double};
+use super::{read_axis, read_center, read_double, read_helix};
 use crate::drawing::Drawing;
-use crate::stereo::{Configuration, Focus, UnitIx, Units};
+use crate::stereo::{Configuration, Focus, Kind, UnitIx, Units};
 
 /// Why a unit's marks cannot be read.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -75,7 +75,13 @@ pub fn read(drawing: &Drawing, units: &Units) -> Reading {
     for (_, unit) in units.iter() {
         let seen = match unit.focus {
             Focus::Center(center) => read_center::read(drawing, center, &unit.ligands),
-            Focus::Pair(ends) => read_double::read(drawing, ends, &unit.ligands),
+            Focus::Pair(ends) => match unit.kind {
+                Kind::CumulatedAxis | Kind::HinderedAxis => read_axis::read(drawing, ends, unit),
+                Kind::Helix => read_helix::read(drawing, ends, unit),
+                Kind::DoubleBond | Kind::Tetrahedral => {
+                    read_double::read(drawing, ends, unit, units)
+                }
+            },
         };
         reading
             .configurations

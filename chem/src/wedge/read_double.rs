@@ -6,7 +6,8 @@
 use super::read::Doubt;
 use crate::drawing::{Drawing, Mark};
 use crate::molecule::{AtomIx, Order};
-use crate::stereo::{Configuration, Ligand, Parity};
+use crate::stereo::{Configuration, Ligand, Parity, Unit, Units};
+use smallvec::SmallVec;
 
 /// Sine of 5 degrees.
 const ON_AXIS: f64 = 0.087_155_742_747_658_17;
@@ -14,13 +15,20 @@ const ON_AXIS: f64 = 0.087_155_742_747_658_17;
 pub(super) fn read(
     drawing: &Drawing,
     ends: [AtomIx; 2],
-    ligands: &[Ligand; 4],
+    unit: &Unit,
+    units: &Units,
 ) -> Result<Configuration, Doubt> {
-    let molecule = drawing.molecule();
-    let crossed = molecule
-        .bond_between(ends[0], ends[1])
-        .is_some_and(|b| drawing.mark(b) == Mark::Crossed);
-    if crossed || has_wavy(drawing, ends[0]) || has_wavy(drawing, ends[1]) {
+    let ligands = &unit.ligands;
+    let mut chain: SmallVec<[AtomIx; 4]> = SmallVec::from_slice(&ends[..1]);
+    chain.extend_from_slice(&unit.inner);
+    chain.push(ends[1]);
+    let crossed = chain.windows(2).any(|pair| {
+        drawing
+            .molecule()
+            .bond_between(pair[0], pair[1])
+            .is_some_and(|b| drawing.mark(b) == Mark::Crossed)
+    });
+    if crossed || ends.iter().any(|end| has_wavy(drawing, units, *end)) {
         return Ok(Configuration::Either);
     }
     let first = side(drawing, ends, ends[0], &ligands[..2]);
@@ -33,9 +41,13 @@ pub(super) fn read(
     }
 }
 
-fn has_wavy(drawing: &Drawing, end: AtomIx) -> bool {
+/// Whether a wavy bond at an end speaks for the double bond: its narrow end is here, or at an atom that
+/// has no configuration of its own to leave unknown (on paper a wavy bond shows no narrow end).
+fn has_wavy(drawing: &Drawing, units: &Units, end: AtomIx) -> bool {
     drawing.molecule().neighbors(end).iter().any(|n| {
-        n.order == Order::Single && matches!(drawing.mark_from(end, n.bond), Mark::Wavy(_))
+        let wavy = n.order == Order::Single && matches!(drawing.mark(n.bond), Mark::Wavy(_));
+        wavy && (drawing.mark_from(end, n.bond) != Mark::Plain
+            || !units.iter().any(|(_, u)| u.atoms().contains(&n.atom)))
     })
 }
 
@@ -123,7 +135,7 @@ mod tests {
         let d = draw(atoms, bonds);
         let units = Units::find(d.molecule(), &Rings::find(d.molecule()));
         let (_, unit) = units.iter().next().unwrap();
-        read(&d, unit.atoms().to_vec().try_into().unwrap(), &unit.ligands)
+        read(&d, unit.atoms().to_vec().try_into().unwrap(), unit, &units)
     }
 
     const BONDS: [(usize, usize, u8, char); 3] = [(0, 1, 1, ' '), (1, 2, 2, ' '), (2, 3, 1, ' ')];
@@ -175,5 +187,7 @@ mod tests {
         assert_eq!(geometry(&cis, &crossed), Ok(Configuration::Either));
         let wavy = [(0, 1, 1, ' '), (1, 2, 2, ' '), (2, 3, 1, '~')];
         assert_eq!(geometry(&cis, &wavy), Ok(Configuration::Either));
+        let from_methyl = [(0, 1, 1, ' '), (1, 2, 2, ' '), (3, 2, 1, '~')];
+        assert_eq!(geometry(&cis, &from_methyl), Ok(Configuration::Either));
     }
 }

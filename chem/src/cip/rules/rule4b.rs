@@ -122,3 +122,23 @@ fn likeness(engine: &mut Engine<'_>, branch: Branch, right: bool) -> Result<Vec<
     }
     Ok(bits)
 }
+
+/// The descriptors of a branch that count under this rule, in order, with its first reference in front.
+pub(in crate::cip) fn sequence(
+    engine: &mut Engine<'_>,
+    branch: Branch,
+) -> Result<Vec<NodeIx>, Stop> {
+    let right = references(engine, branch)?.first().copied().unwrap_or(true);
+    let mut queue = vec![branch];
+    let mut next = 0;
+    while let Some(at) = queue.get(next).copied() {
+        next += 1;
+        let ranked = engine.ranked(at, Step::Reference(right))?;
+        queue.extend(ranked.nodes().iter().map(|n| branch_of(*n, at)));
+    }
+    Ok(queue
+        .into_iter()
+        .map(|b| b.node)
+        .filter(|n| class(engine.tree.node(*n).descriptor).is_some())
+        .collect())
+}

@@ -316,7 +316,7 @@ impl Reader<'_> {
             }
             if !double_bond(spelled.value) {
                 let text = format!(
-                    "{}/{} may mean a racemate, an unknown center or either isomer: write rac-, Ξ, or one of them.",
+                    "{}/{} may mean a racemate, an unknown centre or either isomer: write rac-, Ξ, or one of them.",
                     spelled.value, other.value
                 );
                 return Err(self.error("E-RS-SLASH", start, text));

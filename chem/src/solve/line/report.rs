@@ -106,7 +106,7 @@ impl Note {
             Note::MixedEz => "Both E and Z are named: the double bond is left open.",
             Note::NoItems => "No descriptors were given: no configuration is asked for.",
             Note::Partial => {
-                "Only some centers are starred or RS: the others are taken as absolute. If all are meant, use rel- or rac-."
+                "Only some centres are starred or RS: the others are taken as absolute. If all are meant, use rel- or rac-."
             }
             Note::PlaneOrPhosphorus => {
                 "Rp and Sp mean a chirality plane, but phosphorus among nucleotide chemists: check which one is meant."
@@ -114,7 +114,7 @@ impl Note {
             Note::Unlocated => {
                 "Several descriptors without locants: which atom carries which cannot be told from the line."
             }
-            Note::Xi => "A center or double bond is left unknown on purpose.",
+            Note::Xi => "A centre or double bond is left unknown on purpose.",
         };
         text.to_owned()
     }

@@ -3,17 +3,21 @@
 use super::Pose;
 use crate::geom;
 
-/// Nearer than this (in bond lengths) two atoms that are not joined collide.
-const NEAR: f64 = 0.7;
+/// How near (in bond lengths) two atoms that are not joined may come.
+#[derive(Clone, Copy)]
+pub(super) struct Clash(f64);
 
-pub(super) struct Clash;
+/// Room for labels; asked for first.
+pub(super) const ROOMY: Clash = Clash(0.7);
+/// As near as a drawing can still be read.
+pub(super) const TIGHT: Clash = Clash(0.5);
 
 impl Clash {
     /// Sum over all pairs of atoms that collide and bonds that cross; 0 for a clear drawing. Quadratic in
     /// the number of atoms.
-    pub(super) fn everywhere(pose: &Pose<'_>) -> f64 {
+    pub(super) fn everywhere(self, pose: &Pose<'_>) -> f64 {
         let molecule = pose.drawing.molecule();
-        let near = NEAR * pose.drawing.bond_length();
+        let near = self.0 * pose.drawing.bond_length();
         let mut clash = 0.0;
         for a in molecule.atoms() {
             for b in molecule.atoms().skip(a.index() + 1) {

@@ -11,8 +11,8 @@ use crate::drawing::{Drawing, Edit, Mark};
 use crate::geom::{self, Point};
 use crate::molecule::{AtomIx, BondIx, Order};
 use crate::perceive::Rings;
-use crate::stereo::Parity;
-use clash::Clash;
+use crate::stereo::{Parity, Units};
+use clash::{Clash, ROOMY, TIGHT};
 use std::f64::consts::PI;
 use std::fmt;
 
@@ -48,6 +48,9 @@ impl std::error::Error for TurnError {}
 pub struct Geometry {
     /// Its two ends.
     pub ends: [AtomIx; 2],
+    /// The neighbors of the ends on the way to each other: the ends themselves, or the inner atoms of a
+    /// chain of cumulated double bonds.
+    pub toward: [AtomIx; 2],
     /// Of each end the ligand that counts (the unit's first ligand there).
     pub first: [AtomIx; 2],
     /// `Even`: these two on the same side.
@@ -58,16 +61,23 @@ pub struct Geometry {
 ///
 /// # Errors
 /// If it lies in a ring or cannot be turned without collisions.
-pub fn turn(drawing: &Drawing, rings: &Rings, wanted: Geometry) -> Result<Vec<Edit>, TurnError> {
+pub fn turn(
+    drawing: &Drawing,
+    rings: &Rings,
+    units: &Units,
+    wanted: Geometry,
+) -> Result<Vec<Edit>, TurnError> {
     if drawing.depths().is_some() {
         return Err(TurnError::InSpace);
     }
     let mut pose = Pose::new(drawing);
-    let mut edits = clear_either(drawing, wanted.ends);
-    let axis = drawing
-        .molecule()
-        .bond_between(wanted.ends[0], wanted.ends[1]);
-    let Some(axis) = axis else {
+    let mut edits = clear_either(drawing, units, wanted.ends);
+    let way = |k: usize| {
+        drawing
+            .molecule()
+            .bond_between(wanted.ends[k], wanted.toward[k])
+    };
+    let (Some(first), Some(last)) = (way(0), way(1)) else {
         return Ok(edits);
     };
     for k in 0..2 {
@@ -77,25 +87,29 @@ pub fn turn(drawing: &Drawing, rings: &Rings, wanted: Geometry) -> Result<Vec<Ed
     }
     let same = pose.side(wanted, 0) == pose.side(wanted, 1);
     if same != (wanted.parity == Parity::Even) {
-        if rings.has_bond(axis) {
+        if rings.has_bond(first) {
             return Err(TurnError::InRing);
         }
-        pose = mirrored(&pose, wanted, axis, rings)?;
+        let with = |clash| mirrored(&pose, wanted, [first, last], rings, clash);
+        pose = with(ROOMY).or_else(|_| with(TIGHT))?;
     }
     edits.extend(pose.edits());
     Ok(edits)
 }
 
 /// Takes away what says "either" at a double bond.
-fn clear_either(drawing: &Drawing, ends: [AtomIx; 2]) -> Vec<Edit> {
+fn clear_either(drawing: &Drawing, units: &Units, ends: [AtomIx; 2]) -> Vec<Edit> {
     let molecule = drawing.molecule();
     let mut edits = Vec::new();
     for end in ends {
         for n in molecule.neighbors(end) {
             let either = match drawing.mark(n.bond) {
-                Mark::Crossed => end == ends[0] && n.atom == ends[1],
+                Mark::Crossed => !edits.contains(&Edit::Mark(n.bond, Mark::Plain)),
                 Mark::Wavy(_) => {
-                    n.order == Order::Single && drawing.mark_from(end, n.bond) != Mark::Plain
+                    // a wavy bond of another unit is that unit's own
+                    let others = drawing.mark_from(end, n.bond) == Mark::Plain
+                        && units.iter().any(|(_, u)| u.atoms().contains(&n.atom));
+                    n.order == Order::Single && !others
                 }
                 Mark::Plain | Mark::Solid(_) | Mark::Hashed(_) => false,
             };
@@ -152,7 +166,7 @@ impl<'a> Pose<'a> {
             .neighbors(wanted.ends[k])
             .iter()
             .map(|n| n.atom)
-            .find(|a| *a != wanted.ends[1 - k] && *a != wanted.first[k])
+            .find(|a| *a != wanted.toward[k] && *a != wanted.first[k])
     }
 
     fn edits(&self) -> Vec<Edit> {
@@ -238,7 +252,7 @@ fn bend(pose: &mut Pose<'_>, rings: &Rings, wanted: Geometry, k: usize) -> Resul
             let about = trial.at(end);
             trial.swing(&side, about, axis + sign * turn - now);
         }
-        let clash = Clash::everywhere(&trial);
+        let clash = ROOMY.everywhere(&trial);
         if best.as_ref().is_none_or(|(least, _)| clash < *least) {
             best = Some((clash, trial));
         }
@@ -260,30 +274,32 @@ enum Relief {
 fn mirrored<'a>(
     pose: &Pose<'a>,
     wanted: Geometry,
-    axis: BondIx,
+    axis: [BondIx; 2],
     rings: &Rings,
+    room: Clash,
 ) -> Result<Pose<'a>, TurnError> {
     let mut sides: Vec<Vec<AtomIx>> = wanted
         .ends
         .iter()
-        .map(|end| beyond(pose.drawing, axis, *end).ok_or(TurnError::InRing))
+        .zip(axis)
+        .map(|(end, bond)| beyond(pose.drawing, bond, *end).ok_or(TurnError::InRing))
         .collect::<Result<_, _>>()?;
     // the lesser side first; at equal size the one of the later end
     sides.sort_by_key(Vec::len);
-    let tolerated = Clash::everywhere(pose);
+    let tolerated = room.everywhere(pose);
     let mut poses = Vec::new();
     for side in &sides {
         let mut trial = pose.clone();
         let [a, b] = wanted.ends.map(|e| pose.at(e));
         trial.mirror(side, a, b);
-        if Clash::everywhere(&trial) <= tolerated {
+        if room.everywhere(&trial) <= tolerated {
             return Ok(trial);
         }
         poses.push((trial, side));
     }
     for (trial, side) in &poses {
         let reliefs = reliefs(trial, side, rings);
-        if let Some(found) = relieve(trial, &reliefs, tolerated) {
+        if let Some(found) = relieve(trial, &reliefs, tolerated, room) {
             return Ok(found);
         }
     }
@@ -327,11 +343,16 @@ fn reliefs(pose: &Pose<'_>, moved: &[AtomIx], rings: &Rings) -> Vec<Relief> {
     list
 }
 
-fn relieve<'a>(pose: &Pose<'a>, reliefs: &[Relief], tolerated: f64) -> Option<Pose<'a>> {
+fn relieve<'a>(
+    pose: &Pose<'a>,
+    reliefs: &[Relief],
+    tolerated: f64,
+    room: Clash,
+) -> Option<Pose<'a>> {
     let mut best: Option<(f64, Pose<'a>)> = None;
     for relief in reliefs {
         let trial = relieved(pose, *relief)?;
-        let clash = Clash::everywhere(&trial);
+        let clash = room.everywhere(&trial);
         if clash <= tolerated {
             return Some(trial);
         }
@@ -344,7 +365,7 @@ fn relieve<'a>(pose: &Pose<'a>, reliefs: &[Relief], tolerated: f64) -> Option<Po
         let (least, from) = best.take()?;
         for relief in reliefs {
             let trial = relieved(&from, *relief)?;
-            let clash = Clash::everywhere(&trial);
+            let clash = room.everywhere(&trial);
             if clash <= tolerated {
                 return Some(trial);
             }
@@ -404,6 +425,7 @@ mod tests {
     fn wanted(parity: Parity) -> Geometry {
         Geometry {
             ends: [ix(1), ix(2)],
+            toward: [ix(2), ix(1)],
             first: [ix(0), ix(3)],
             parity,
         }
@@ -413,8 +435,12 @@ mod tests {
     fn the_lesser_side_moves() {
         let d = diene();
         let rings = Rings::find(d.molecule());
-        assert!(turn(&d, &rings, wanted(Parity::Even)).unwrap().is_empty());
-        let edits = turn(&d, &rings, wanted(Parity::Odd)).unwrap();
+        assert!(
+            turn(&d, &rings, &Units::default(), wanted(Parity::Even))
+                .unwrap()
+                .is_empty()
+        );
+        let edits = turn(&d, &rings, &Units::default(), wanted(Parity::Odd)).unwrap();
         assert!(matches!(edits.as_slice(), [Edit::Move(a, p)] if *a == ix(0) && p.y < -0.7));
     }
 
@@ -430,7 +456,7 @@ mod tests {
             &[(0, 1, 1, ' '), (1, 2, 2, 'x'), (2, 3, 1, ' ')],
         );
         let rings = Rings::find(d.molecule());
-        let edits = turn(&d, &rings, wanted(Parity::Odd)).unwrap();
+        let edits = turn(&d, &rings, &Units::default(), wanted(Parity::Odd)).unwrap();
         let (after, _) = d.apply(&edits).unwrap();
         let (y0, y3) = (after.point(ix(0)).y, after.point(ix(3)).y);
         assert!(y0 * y3 < 0.0 && y0.abs() > 0.8);

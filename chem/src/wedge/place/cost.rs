@@ -8,7 +8,7 @@ use crate::drawing::Drawing;
 use crate::element::Element;
 use crate::geom;
 use crate::molecule::{AtomIx, Order};
-use crate::stereo::Focus;
+use crate::stereo::{Focus, Kind};
 use std::f64::consts::PI;
 
 const UNIT: i64 = 100;
@@ -73,7 +73,7 @@ fn double_bonds(scene: &Scene<'_>, at: AtomIx) -> i64 {
         .filter(|n| n.order == Order::Double)
     {
         let is_unit = scene.units.iter().any(|(_, u)| {
-            matches!(u.focus, Focus::Pair(ends) if ends.contains(&at) && ends.contains(&n.atom))
+            u.kind == Kind::DoubleBond && matches!(u.focus, Focus::Pair(ends) if ends.contains(&at))
         });
         let crossed = scene.drawing.mark(n.bond) == crate::drawing::Mark::Crossed;
         cost += match (is_unit, crossed) {

@@ -12,14 +12,18 @@
 //! ST-0.5; none in rings; hydrogen in the widest gap, ST-1.1.4); their weights are our own.
 
 mod assign;
+mod axis;
 mod cost;
 mod hydrogen;
 mod option;
 
-use crate::drawing::{Drawing, Edit, Mark};
+pub use axis::place_axis;
+
+use crate::drawing::{Drawing, Edit, End, Mark};
+use crate::element::Element;
 use crate::molecule::{Atom, AtomIx, BondIx, Order};
 use crate::perceive::Rings;
-use crate::stereo::{Focus, Parity, UnitIx, Units};
+use crate::stereo::{Focus, Kind, Parity, UnitIx, Units};
 use option::{Choice, Site};
 use std::fmt;
 
@@ -53,7 +57,7 @@ impl fmt::Display for PlaceError {
             ),
             PlaceErrorKind::NoBond => write!(
                 f,
-                "no bond at atom {n} can bear a wedge: all belong to other centers or are not single"
+                "no bond at atom {n} can bear a wedge: all belong to other centres or are not single"
             ),
             PlaceErrorKind::InSpace => write!(
                 f,
@@ -105,6 +109,7 @@ struct Scene<'a> {
     /// Whether an atom is the focus of a centre, or an end of a double bond unit.
     is_center: Vec<bool>,
     is_double_end: Vec<bool>,
+    is_axis_end: Vec<bool>,
     is_target: Vec<bool>,
 }
 
@@ -122,14 +127,24 @@ impl<'a> Scene<'a> {
             rings,
             is_center: vec![false; n],
             is_double_end: vec![false; n],
+            is_axis_end: vec![false; n],
             is_target: vec![false; n],
         };
         for (_, unit) in units.iter() {
             match unit.focus {
                 Focus::Center(a) => scene.is_center[a.index()] = true,
+                Focus::Pair(_) if unit.kind == Kind::Helix => {
+                    for a in unit.toward_each_other() {
+                        scene.is_axis_end[a.index()] = true;
+                    }
+                }
                 Focus::Pair(ends) => {
                     for a in ends {
-                        scene.is_double_end[a.index()] = true;
+                        if unit.kind == Kind::DoubleBond {
+                            scene.is_double_end[a.index()] = true;
+                        } else {
+                            scene.is_axis_end[a.index()] = true;
+                        }
                     }
                 }
             }
@@ -158,6 +173,7 @@ impl<'a> Scene<'a> {
         }
         // a mark that another unit needs stays; one that says nothing may be replaced
         let needed = self.is_center[narrow.index()]
+            || self.is_axis_end[narrow.index()]
             || (matches!(mark, Mark::Wavy(_)) && self.is_double_end[narrow.index()]);
         !needed
     }
@@ -174,8 +190,7 @@ impl<'a> Scene<'a> {
                 marks[b.index()] = Mark::Plain;
             }
         }
-        let mut added = Vec::new();
-        let mut placed: Vec<crate::geom::Point> = Vec::new();
+        let mut with_hydrogen: Vec<&Site> = Vec::new();
         for (site, choice) in sites.iter().zip(chosen) {
             let option = &site.options[*choice];
             match option.choice {
@@ -193,22 +208,7 @@ impl<'a> Scene<'a> {
                         marks[second.index()] = mark(second, !lift);
                     }
                 }
-                Choice::Hydrogen => {
-                    let spot = hydrogen::spot(self.drawing, self.rings, site.center, &placed);
-                    let lift = option::hydrogen_lift(self, site, spot);
-                    placed.push(spot);
-                    let h = AtomIx::new(molecule.n_atoms() + placed.len() - 1);
-                    let b = BondIx::new(molecule.n_bonds() + placed.len() - 1);
-                    let end = crate::drawing::End::First;
-                    let mark = if lift {
-                        Mark::Solid(end)
-                    } else {
-                        Mark::Hashed(end)
-                    };
-                    added.push(Edit::AddAtom(Atom::new(crate::element::Element::H), spot));
-                    added.push(Edit::AddBond([site.center, h], Order::Single));
-                    added.push(Edit::Mark(b, mark));
-                }
+                Choice::Hydrogen => with_hydrogen.push(site),
             }
         }
         let mut edits: Vec<Edit> = molecule
@@ -216,7 +216,28 @@ impl<'a> Scene<'a> {
             .filter(|b| marks[b.index()] != self.drawing.mark(*b))
             .map(|b| Edit::Mark(b, marks[b.index()]))
             .collect();
-        edits.extend(added);
+        edits.extend(self.hydrogens(&with_hydrogen));
+        edits
+    }
+
+    /// Edits that draw a hydrogen with its mark at each of these centres.
+    fn hydrogens(&self, sites: &[&Site]) -> Vec<Edit> {
+        let molecule = self.drawing.molecule();
+        let centers: Vec<AtomIx> = sites.iter().map(|s| s.center).collect();
+        let spots = hydrogen::spots(self.drawing, self.rings, &centers);
+        let mut edits = Vec::new();
+        for (i, (site, spot)) in sites.iter().zip(spots).enumerate() {
+            let h = AtomIx::new(molecule.n_atoms() + i);
+            let bond = BondIx::new(molecule.n_bonds() + i);
+            let mark = if option::hydrogen_lift(self, site, spot) {
+                Mark::Solid(End::First)
+            } else {
+                Mark::Hashed(End::First)
+            };
+            edits.push(Edit::AddAtom(Atom::new(Element::H), spot));
+            edits.push(Edit::AddBond([site.center, h], Order::Single));
+            edits.push(Edit::Mark(bond, mark));
+        }
         edits
     }
 }

@@ -1,0 +1,74 @@
+//! Hindered axes: a single bond between two flat rings (biaryls, also bridged).
+//!
+//! The graph cannot tell whether rotation is hindered, so every such bond is a unit and only a mark at
+//! one of its ends makes it speak. Both ends must lie in unsaturated rings of three to seven atoms:
+//! bold ring bonds of cyclophanes, drawn in perspective, are no axes.
+
+use super::{Focus, Kind, Ligand, Unit};
+use crate::element::Element;
+use crate::molecule::{AtomIx, BondIx, Molecule, Order};
+use crate::perceive::Rings;
+use smallvec::SmallVec;
+
+/// The smallest ring through the axis itself: a bridge of seven atoms still lets both senses exist.
+const SMALLEST_BRIDGE: usize = 7;
+/// The largest ring that is flat enough.
+const LARGEST_RING: usize = 7;
+
+pub(super) fn find(molecule: &Molecule, rings: &Rings, list: &mut Vec<Unit>) {
+    for bond in molecule.bonds() {
+        if let Some(unit) = unit(molecule, rings, bond) {
+            list.push(unit);
+        }
+    }
+}
+
+fn unit(molecule: &Molecule, rings: &Rings, bond: BondIx) -> Option<Unit> {
+    let b = molecule.bond(bond);
+    let bridged_tightly = rings
+        .smallest_through(bond)
+        .is_some_and(|n| n < SMALLEST_BRIDGE);
+    if b.order != Order::Single || bridged_tightly {
+        return None;
+    }
+    let mut ends = b.ends;
+    ends.sort_unstable();
+    let [a, c] = ortho(molecule, rings, ends[0], ends[1])?;
+    let [d, e] = ortho(molecule, rings, ends[1], ends[0])?;
+    Some(Unit {
+        kind: Kind::HinderedAxis,
+        focus: Focus::Pair(ends),
+        ligands: [a, c, d, e],
+        inner: SmallVec::new(),
+    })
+}
+
+/// The two ring neighbors of an axis atom, the lower one first.
+fn ortho(molecule: &Molecule, rings: &Rings, end: AtomIx, partner: AtomIx) -> Option<[Ligand; 2]> {
+    if molecule.degree(end) != 3 || molecule.hydrogens(end) > 0 {
+        return None;
+    }
+    let others = || molecule.neighbors(end).iter().filter(|n| n.atom != partner);
+    let flat = match molecule.element(end) {
+        Element::C => others().any(|n| n.order == Order::Double),
+        // the nitrogen of a pyrrole or lactam has no double bond of its own
+        Element::N => others().any(|n| {
+            n.order == Order::Double
+                || molecule
+                    .neighbors(n.atom)
+                    .iter()
+                    .any(|m| m.order == Order::Double)
+        }),
+        _ => false,
+    };
+    let small = |b: BondIx| rings.smallest_through(b).is_some_and(|n| n <= LARGEST_RING);
+    if !flat || !others().all(|n| small(n.bond)) {
+        return None;
+    }
+    let mut atoms: SmallVec<[AtomIx; 2]> = others().map(|n| n.atom).collect();
+    atoms.sort_unstable();
+    match atoms.as_slice() {
+        [a, b] => Some([Ligand::Atom(*a), Ligand::Atom(*b)]),
+        _ => None,
+    }
+}

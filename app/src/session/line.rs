@@ -60,22 +60,16 @@ fn place(place: Place, map: &Renumbering) -> Option<Place> {
     let Place::Numbered(numbered) = place else {
         return Some(place);
     };
-    let plain = Numbered {
-        number: numbered.number,
-        superscript: None,
-        letter: None,
-        digit: None,
-        primes: 0,
-        other: numbered.other,
-    };
-    if numbered != plain {
+    let mut after = numbered;
+    after.other = None;
+    if after != Numbered::plain(numbered.number) {
         // no number of an atom
         return Some(place);
     }
-    let mut after = plain;
-    after.number = number(plain.number, map)?;
-    if let Some(other) = &mut after.other {
+    after.number = number(numbered.number, map)?;
+    if let Some(mut other) = numbered.other {
         other.number = number(other.number, map)?;
+        after.other = Some(other);
     }
     Some(Place::Numbered(after))
 }

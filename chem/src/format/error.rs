@@ -286,14 +286,17 @@ impl fmt::Display for WriteError {
         match self {
             WriteError::NeedsV3000 { atoms, bonds } => write!(
                 f,
-                "{atoms} atoms and {bonds} bonds do not fit a V2000 molfile, which holds 999 of each; it needs V3000"
+                "{atoms} atoms and {bonds} bonds do not fit a V2000 molfile, which holds 999 of each; split the drawing"
             ),
             WriteError::TooFar(atom) => write!(
                 f,
                 "the coordinates of atom {atom} do not fit a molfile (-9999.9999 to 99999.9999); move or scale the drawing"
             ),
             WriteError::DoesNotFit { atom, what } => {
-                write!(f, "the {what} of atom {atom} does not fit a molfile")
+                write!(
+                    f,
+                    "the {what} of atom {atom} does not fit a molfile; take it away or correct it"
+                )
             }
         }
     }

@@ -9,7 +9,7 @@ use crate::molecule::{BondIx, Order};
 use kurbo::{BezPath, Circle, Point, Shape as _};
 
 /// No bond has more dots, dashes, bars or waves than this, however long it is.
-pub(super) const MOST_PIECES: usize = 200;
+const MOST_PIECES: usize = 200;
 
 /// Draws a bond; nothing if its atoms touch or their labels leave no room.
 pub(super) fn draw(scene: &Scene<'_>, bond: BondIx, items: &mut Vec<Item>) {

@@ -1,5 +1,6 @@
 //! Captions beside their units: in the free angle with most room, touching no ink (GR-11).
 
+use super::bonds::count;
 use super::face::{CAP_HEIGHT, Set, Setter};
 use super::plane;
 use super::scene::Scene;
@@ -167,9 +168,8 @@ impl Place {
                 let sum = own
                     .iter()
                     .fold(Vec2::ZERO, |sum, a| sum + scene.point(*a).to_vec2());
-                let count = f64::from(u32::try_from(own.len()).unwrap_or(u32::MAX));
                 Some(Place {
-                    middle: (sum / count).to_point(),
+                    middle: (sum / count(own.len())).to_point(),
                     lines: along.map_or_else(Vec::new, |u| vec![u, -u]),
                     own,
                 })

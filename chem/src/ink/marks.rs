@@ -1,7 +1,7 @@
 //! Wedges and waves. Every axis here runs from the narrow end to the wide one.
 
 use super::Shape;
-use super::bonds::{MOST_PIECES, count, pieces, share};
+use super::bonds::{count, pieces, share};
 use super::plane;
 use super::scene::{Axis, Scene};
 use kurbo::{BezPath, Point, Vec2};
@@ -47,7 +47,7 @@ fn joined_end(scene: &Scene<'_>, axis: &Axis, tip: Point, half: f64) -> Option<V
     };
     let corner = |side: f64, bond: Vec2| {
         let edge = axis.at(axis.length, side * half) - tip;
-        let across = Vec2::new(-bond.y, bond.x);
+        let across = bond.turn_90();
         let outward = if across.dot(axis.u) < 0.0 {
             -across
         } else {
@@ -111,7 +111,7 @@ pub(super) fn wavy(scene: &Scene<'_>, axis: &Axis) -> Vec<Shape> {
         return Vec::new();
     };
     let length = axis.length - a - b;
-    let n = pieces(length, 0.9 * style.hash_pitch, 4).min(MOST_PIECES);
+    let n = pieces(length, 0.9 * style.hash_pitch, 4);
     let step = length / count(n);
     let mut path = BezPath::new();
     path.move_to(axis.at(a, 0.0));

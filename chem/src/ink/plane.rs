@@ -92,7 +92,7 @@ pub(super) fn exit(hull: &[Point], from: Point, u: Vec2, margin: f64) -> Option<
         }
         let length = p.distance(q);
         for shift in [margin, -margin] {
-            let corner = v + Vec2::new(-edge.y, edge.x) * shift;
+            let corner = v + edge.turn_90() * shift;
             let t = corner.cross(edge) / slope;
             let on_edge = (u * t - corner).dot(edge);
             if (0.0..=length).contains(&on_edge) {

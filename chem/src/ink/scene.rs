@@ -128,7 +128,7 @@ impl<'a> Scene<'a> {
             from,
             to,
             u,
-            n: Vec2::new(-u.y, u.x),
+            n: u.turn_90(),
             length: from.distance(to),
         })
     }

@@ -24,7 +24,7 @@ impl Reader<'_> {
             Some(c) if is_greek(c) => self.greek(start, c),
             Some(c) if c.is_alphabetic() || c == '?' => self.lettered(start),
             Some(c) => Err(self.unexpected(start, c)),
-            None => Err(self.error("E-EMPTY", start, "An item is missing here.")),
+            None => Err(self.error("E-EMPTY", start, "an item is missing here: type one, as 1R")),
         }
     }
 
@@ -32,7 +32,7 @@ impl Reader<'_> {
         self.error(
             "E-LOCANT",
             start,
-            "This is not a locant: write 3, 3a, 3a1, 12', 1^2 or 1(10), then the descriptor at once.",
+            "this is not a locant: write 3, 3a, 3a1, 12', 1^2 or 1(10), then the descriptor at once",
         )
     }
 
@@ -40,7 +40,7 @@ impl Reader<'_> {
         self.error(
             "E-NO-DESC",
             start,
-            "A locant without a descriptor: type it right behind the locant, as 1R.",
+            "a locant without a descriptor: type it right behind the locant, as 1R",
         )
     }
 
@@ -48,18 +48,18 @@ impl Reader<'_> {
         self.error(
             "E-UNSUPPORTED",
             start,
-            format!("'{word}' is known but not handled: give R, S, E or Z instead."),
+            format!("'{word}' is known but not handled: give R, S, E or Z instead"),
         )
     }
 
     fn unknown(&self, start: usize, word: &str) -> LineError {
         let advice = if words::status(word).is_some() {
-            format!("'{word}' belongs in front of the parentheses, as {word}-(1R,2S).")
+            format!("'{word}' belongs in front of the parentheses, as {word}-(1R,2S)")
         } else if let Some(near) = words::nearest(word) {
             format!("'{word}' is not a descriptor: is {near} meant?")
         } else {
             format!(
-                "'{word}' is not a descriptor: use R, S, E, Z, r, s, M, P or another one of the list."
+                "'{word}' is not a descriptor: use R, S, E, Z, r, s, M, P or another one of the list"
             )
         };
         self.error("E-UNKNOWN", start, advice)
@@ -68,7 +68,7 @@ impl Reader<'_> {
     /// The error of a word that is no descriptor, `located` if a locant stands before it.
     fn not_descriptor(&self, start: usize, word: &str, located: bool) -> LineError {
         if words::is_dl(word) {
-            let text = "D and L are not read, as they need a reference compound: give R and S.";
+            let text = "D and L are not read, as they need a reference compound: give R and S";
             return self.error("E-DL", start, text);
         }
         let bare = self.is_at_start(start);
@@ -77,7 +77,7 @@ impl Reader<'_> {
         }
         if !located && words::is_run_together(word) {
             let text =
-                format!("'{word}' can be read in several ways: put a comma between descriptors.");
+                format!("'{word}' can be read in several ways: put a comma between descriptors");
             return self.error("E-AMBIG", start, text);
         }
         self.unknown(start, word)
@@ -117,8 +117,8 @@ impl Reader<'_> {
                 continue;
             };
             if reading.two_fold {
-                let text = "The letter may belong to the locant or be a descriptor: separate items by commas, \
-                            or write the digit of an interior atom as 3r^1.";
+                let text = "the letter may belong to the locant or be a descriptor: separate items by commas, \
+                            or write the digit of an interior atom as 3r^1";
                 return Err(self.error("E-AMBIG", start, text));
             }
             let locant = Locant::single(Place::Numbered(reading.numbered));
@@ -226,7 +226,7 @@ impl Reader<'_> {
                 return Some(Err(self.not_descriptor(start, &next, true)));
             }
         }
-        let text = "No descriptor follows 'all': write it as (all-E).";
+        let text = "no descriptor follows 'all': write it as (all-E)";
         Some(Err(self.error("E-NO-DESC", start, text)))
     }
 
@@ -316,7 +316,7 @@ impl Reader<'_> {
             }
             if !double_bond(spelled.value) {
                 let text = format!(
-                    "{}/{} may mean a racemate, an unknown centre or either isomer: write rac-, Ξ, or one of them.",
+                    "{}/{} may mean a racemate, an unknown centre or either isomer: write rac-, Ξ, or one of them",
                     spelled.value, other.value
                 );
                 return Err(self.error("E-RS-SLASH", start, text));
@@ -329,7 +329,7 @@ impl Reader<'_> {
             end = stop;
         }
         if self.found.items.len() >= MOST_ITEMS {
-            let text = format!("More than {MOST_ITEMS} items: shorten the line.");
+            let text = format!("more than {MOST_ITEMS} items: shorten the line");
             return Err(self.error("E-LIMIT", start, text));
         }
         let notes = &mut self.found.notes;

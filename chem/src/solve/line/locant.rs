@@ -89,17 +89,9 @@ impl Locant {
     /// The number, if it is a plain one: no letter, prime, superscript or other end.
     pub fn number(&self) -> Option<usize> {
         match (self.first, self.second) {
-            (
-                Place::Numbered(Numbered {
-                    number,
-                    superscript: None,
-                    letter: None,
-                    digit: None,
-                    primes: 0,
-                    other: None,
-                }),
-                None,
-            ) => usize::try_from(number).ok(),
+            (Place::Numbered(n), None) if n == Numbered::plain(n.number) => {
+                usize::try_from(n.number).ok()
+            }
             _ => None,
         }
     }
@@ -115,6 +107,18 @@ fn primes(f: &mut fmt::Formatter<'_>, count: usize) -> fmt::Result {
 }
 
 impl Numbered {
+    /// A number with nothing more to it.
+    pub fn plain(number: u32) -> Numbered {
+        Numbered {
+            number,
+            superscript: None,
+            letter: None,
+            digit: None,
+            primes: 0,
+            other: None,
+        }
+    }
+
     /// Writes it; `raised` marks the digit of an interior atom as the superscript that it is.
     pub(super) fn write(&self, f: &mut fmt::Formatter<'_>, raised: bool) -> fmt::Result {
         write!(f, "{}", self.number)?;

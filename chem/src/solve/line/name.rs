@@ -54,7 +54,7 @@ impl Reader<'_> {
             return Err(self.error(
                 "E-UNKNOWN",
                 self.pos,
-                "Neither a descriptor nor a name starts here: delete the signs.",
+                "neither a descriptor nor a name starts here: delete the signs",
             ));
         }
         if let Some(last) = self.bare.and(self.found.items.last()) {
@@ -66,7 +66,7 @@ impl Reader<'_> {
                     "E-AMBIG",
                     last.start,
                     format!(
-                        "'{0}-' may be a descriptor or belong to the name: put descriptors into parentheses, as ({0})-.",
+                        "'{0}-' may be a descriptor or belong to the name: put descriptors into parentheses, as ({0})-",
                         last.value
                     ),
                 ));
@@ -127,7 +127,7 @@ impl Reader<'_> {
         if unread && is_name && self.found.items.is_empty() {
             return LineError::whole(
                 "E-NO-STEREO",
-                "This is a name with no descriptors in front: put them there, as (2R)-butan-2-ol.",
+                "this is a name with no descriptors in front: put them there, as (2R)-butan-2-ol",
             );
         }
         error

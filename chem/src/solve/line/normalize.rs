@@ -212,7 +212,7 @@ pub(super) fn normalize(typed: &str) -> Result<Text, LineError> {
 fn too_long() -> LineError {
     LineError::whole(
         "E-LIMIT",
-        format!("The line is longer than {MOST_CHARACTERS} characters: shorten it."),
+        format!("the line is longer than {MOST_CHARACTERS} characters: shorten it"),
     )
 }
 
@@ -222,7 +222,7 @@ fn refuse(c: char, column: usize) -> Result<(), LineError> {
             "E-CONTROL",
             column,
             format!(
-                "An invisible character (U+{:04X}) stands here: delete it and type the place again.",
+                "an invisible character (U+{:04X}) stands here: delete it and type the place again",
                 u32::from(c)
             ),
         ));
@@ -232,7 +232,7 @@ fn refuse(c: char, column: usize) -> Result<(), LineError> {
             "E-LOOKALIKE",
             column,
             format!(
-                "'{c}' is not the Latin letter {latin}, though it looks like it: type {latin} on a Latin keyboard."
+                "'{c}' is not the Latin letter {latin}, though it looks like it: type {latin} on a Latin keyboard"
             ),
         )),
         None => Ok(()),

@@ -57,12 +57,8 @@ impl Reader<'_> {
             (superscript, end) = (Some(value), stop);
         }
         let numbered = Numbered {
-            number,
             superscript,
-            letter: None,
-            digit: None,
-            primes: 0,
-            other: None,
+            ..Numbered::plain(number)
         };
         let with_letter = self.with_letter(numbered, end);
         let primes = self.primes(end);

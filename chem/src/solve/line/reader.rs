@@ -105,7 +105,7 @@ fn partners(text: &Text) -> Result<Vec<Option<usize>>, LineError> {
                         "E-UNBALANCED",
                         text.column(index),
                         format!(
-                            "No bracket opened before it fits this '{c}': delete it, or open one."
+                            "no bracket opened before it fits this '{c}': delete it, or open one"
                         ),
                     ));
                 }
@@ -116,7 +116,7 @@ fn partners(text: &Text) -> Result<Vec<Option<usize>>, LineError> {
         Some((at, close)) => Err(LineError::new(
             "E-UNBALANCED",
             text.column(*at),
-            format!("This bracket is not closed: add '{close}'."),
+            format!("this bracket is not closed: add '{close}'"),
         )),
         None => Ok(partner),
     }
@@ -199,7 +199,7 @@ impl<'a> Reader<'a> {
         if self.at(self.pos).is_none() {
             return Err(LineError::whole(
                 "E-EMPTY",
-                "The line is empty: type descriptors, as (1R,2S).",
+                "the line is empty: type descriptors, as (1R,2S)",
             ));
         }
         let mut first = true;
@@ -248,7 +248,7 @@ impl<'a> Reader<'a> {
             return Err(self.error(
                 "E-UNKNOWN",
                 self.pos,
-                "No comma stands between groups: put all items into one pair of parentheses.",
+                "no comma stands between groups: put all items into one pair of parentheses",
             ));
         }
         Ok(())
@@ -258,7 +258,7 @@ impl<'a> Reader<'a> {
         self.error(
             "E-SLASH",
             index,
-            "A line asks for one stereoisomer: give the alternatives one by one, or write rac- or rel-.",
+            "a line asks for one stereoisomer: give the alternatives one by one, or write rac- or rel-",
         )
     }
 
@@ -282,7 +282,7 @@ impl<'a> Reader<'a> {
             return Err(self.error(
                 "E-ROT-TWICE",
                 self.pos,
-                "A second sign of rotation: keep one.",
+                "a second sign of rotation: keep one",
             ));
         }
         if rotation == Rotation::Both {
@@ -402,7 +402,7 @@ impl<'a> Reader<'a> {
                 return Err(self.error(
                     "E-EMPTY",
                     self.pos,
-                    "An item is missing here: type a locant with its descriptor, as 1R, or delete the sign.",
+                    "an item is missing here: type a locant with its descriptor, as 1R, or delete the sign",
                 ));
             }
             self.item()?;
@@ -435,7 +435,7 @@ impl<'a> Reader<'a> {
                     None | Some(',' | ';') => self.error(
                         "E-EMPTY",
                         next,
-                        format!("Nothing stands behind '{c}': delete it, or type the rest."),
+                        format!("nothing stands behind '{c}': delete it, or type the rest"),
                     ),
                     Some(_) => self.unexpected(self.pos, c),
                 });
@@ -461,7 +461,7 @@ impl<'a> Reader<'a> {
         self.error(
             "E-UNKNOWN",
             index,
-            format!("'{c}' has no meaning here: separate items by commas, as (1R,2S)."),
+            format!("'{c}' has no meaning here: separate items by commas, as (1R,2S)"),
         )
     }
 
@@ -483,7 +483,7 @@ impl<'a> Reader<'a> {
             "E-ORDER",
             last.start,
             format!(
-                "The number stands before its descriptor: write 1{0}, not {0}1.",
+                "the number stands before its descriptor: write 1{0}, not {0}1",
                 last.value
             ),
         )
@@ -494,7 +494,7 @@ fn want_hyphen(mut error: LineError) -> LineError {
     if error.code == "E-UNKNOWN" {
         error
             .text
-            .push_str(" A name needs a hyphen in front of it.");
+            .push_str("; a name needs a hyphen in front of it");
     }
     error
 }

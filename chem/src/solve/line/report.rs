@@ -77,44 +77,44 @@ impl Note {
     pub fn text(&self) -> String {
         let text = match self {
             Note::AtomSuffix => {
-                "A descriptor names its element (R_P): where no locant stands before it, the element is the locant."
+                "a descriptor names its element (R_P): where no locant stands before it, the element is the locant"
             }
-            Note::Bare => "No brackets were typed; the line is read as if they stood there.",
-            Note::Bracket => "Other or doubled brackets are read as one pair of parentheses.",
-            Note::Duplicate => "The same item stands twice; it is taken once.",
-            Note::NameTail => "The name behind the descriptors is not used.",
-            Note::NoComma => "Items without a comma between them are read as separate items.",
-            Note::Redundant => "The status is said twice.",
+            Note::Bare => "no brackets were typed; the line is read as if they stood there",
+            Note::Bracket => "other or doubled brackets are read as one pair of parentheses",
+            Note::Duplicate => "the same item stands twice; it is taken once",
+            Note::NameTail => "the name behind the descriptors is not used",
+            Note::NoComma => "items without a comma between them are read as separate items",
+            Note::Redundant => "the status is said twice",
             Note::Separator => {
-                "Other signs than commas separate the parts; they are read all the same."
+                "other signs than commas separate the parts; they are read all the same"
             }
             Note::CisTrans => {
-                "cis and trans compare two substituents that must be chosen; they are no CIP descriptors."
+                "cis and trans compare two substituents that must be chosen; they are no CIP descriptors"
             }
             Note::Dl => {
-                "The name holds D or L, which is not used: check that the descriptors agree with it."
+                "the name holds D or L, which is not used: check that the descriptors agree with it"
             }
             Note::Inner(found) => {
                 return format!(
-                    "The name holds descriptors of a substituent with its own numbering, which are not used: {}.",
+                    "the name holds descriptors of a substituent with its own numbering, which are not used: {}",
                     found.join(" ")
                 );
             }
             Note::LowerEz => {
-                "Lower-case e and z stand for seqTrans and seqCis; if E or Z is meant, type the capital."
+                "lower-case e and z stand for seqTrans and seqCis; if E or Z is meant, type the capital"
             }
-            Note::MixedEz => "Both E and Z are named: the double bond is left open.",
-            Note::NoItems => "No descriptors were given: no configuration is asked for.",
+            Note::MixedEz => "both E and Z are named: the double bond is left open",
+            Note::NoItems => "no descriptors were given: no configuration is asked for",
             Note::Partial => {
-                "Only some centres are starred or RS: the others are taken as absolute. If all are meant, use rel- or rac-."
+                "only some centres are starred or RS: the others are taken as absolute. If all are meant, use rel- or rac-"
             }
             Note::PlaneOrPhosphorus => {
-                "Rp and Sp mean a chirality plane, but phosphorus among nucleotide chemists: check which one is meant."
+                "Rp and Sp mean a chirality plane, but phosphorus among nucleotide chemists: check which one is meant"
             }
             Note::Unlocated => {
-                "Several descriptors without locants: which atom carries which cannot be told from the line."
+                "several descriptors without locants: which atom carries which cannot be told from the line"
             }
-            Note::Xi => "A centre or double bond is left unknown on purpose.",
+            Note::Xi => "a centre or double bond is left unknown on purpose",
         };
         text.to_owned()
     }

@@ -74,7 +74,7 @@ fn distinct(items: Vec<Taken>, notes: &mut Vec<Note>) -> Result<Vec<Taken>, Line
 fn conflict(locant: Locant, before: Value, value: Value) -> LineError {
     LineError::whole(
         "E-CONFLICT",
-        format!("Locant {locant} is given both {before} and {value}: keep one of them."),
+        format!("locant {locant} is given both {before} and {value}: keep one of them"),
     )
 }
 
@@ -88,7 +88,7 @@ fn located(items: &[Taken], notes: &mut Vec<Note>) -> Result<(), LineError> {
     if without > 0 && with > 0 {
         return Err(LineError::whole(
             "E-MIXED-LOC",
-            "Some descriptors have locants and some have none: give each its locant.",
+            "some descriptors have locants and some have none: give each its locant",
         ));
     }
     if without > 1 {
@@ -114,7 +114,7 @@ fn status(
     let said = words.first().copied();
     if words.iter().any(|w| Some(*w) != said) {
         return Err(contradiction(
-            "The line says two different statuses: keep one of rac, rel, meso, abs.",
+            "the line says two different statuses: keep one of rac, rel, meso, abs",
         ));
     }
     if words.len() > 1 {
@@ -125,7 +125,7 @@ fn status(
     let status = match (said, starred, racemic) {
         (_, true, true) => {
             return Err(contradiction(
-                "R* and S* say relative, RS and SR say racemic: use one kind of them.",
+                "R* and S* say relative, RS and SR say racemic: use one kind of them",
             ));
         }
         (None, true, false) => Status::Rel,
@@ -139,7 +139,7 @@ fn status(
         }
         (Some(_), _, _) => {
             return Err(contradiction(
-                "The status and the descriptors contradict each other: leave out the status, or use plain R and S.",
+                "the status and the descriptors contradict each other: leave out the status, or use plain R and S",
             ));
         }
     };
@@ -152,7 +152,7 @@ fn status(
         status == Status::Meso || (status == Status::Rac && (said.is_some() || !partial));
     if turns && inactive {
         return Err(contradiction(
-            "A racemate or a meso form has no rotation: leave out the sign, or the status.",
+            "a racemate or a meso form has no rotation: leave out the sign, or the status",
         ));
     }
     Ok(status)

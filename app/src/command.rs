@@ -122,36 +122,35 @@ pub struct Shortcut {
     pub key: &'static str,
 }
 
-const fn plain(key: &'static str) -> Option<Shortcut> {
-    Some(Shortcut {
+/// A key alone.
+pub const fn plain(key: &'static str) -> Shortcut {
+    Shortcut {
         ctrl: false,
         shift: false,
         key,
-    })
+    }
 }
 
-const fn shift(key: &'static str) -> Option<Shortcut> {
-    Some(Shortcut {
-        ctrl: false,
+const fn shift(key: &'static str) -> Shortcut {
+    Shortcut {
         shift: true,
-        key,
-    })
+        ..plain(key)
+    }
 }
 
-const fn ctrl(key: &'static str) -> Option<Shortcut> {
-    Some(Shortcut {
+/// A key with Ctrl.
+pub const fn ctrl(key: &'static str) -> Shortcut {
+    Shortcut {
         ctrl: true,
-        shift: false,
-        key,
-    })
+        ..plain(key)
+    }
 }
 
-const fn ctrl_shift(key: &'static str) -> Option<Shortcut> {
-    Some(Shortcut {
+const fn ctrl_shift(key: &'static str) -> Shortcut {
+    Shortcut {
         ctrl: true,
-        shift: true,
-        key,
-    })
+        ..shift(key)
+    }
 }
 
 /// The menus: name, then the commands; `None` is a gap.
@@ -254,7 +253,7 @@ impl Command {
 
     /// Its keys, if it has some.
     pub fn shortcut(&self) -> Option<Shortcut> {
-        match self {
+        Some(match self {
             Command::New => ctrl("N"),
             Command::Open => ctrl("O"),
             Command::Save => ctrl("S"),
@@ -284,8 +283,8 @@ impl Command {
             | Command::Step(..)
             | Command::Ask(_)
             | Command::Settle
-            | Command::Select(_) => None,
-        }
+            | Command::Select(_) => return None,
+        })
     }
 
     /// What it does, in a sentence.

@@ -12,12 +12,14 @@ pub mod files;
 mod history;
 mod line;
 mod selection;
+mod tally;
 
 pub use selection::Selection;
+pub use tally::Tally;
 
 use crate::files::FileError;
 use chem::drawing::{Drawing, Edit, EditError, Renumbering};
-use chem::pipeline::{self, Report, Solution, Verdict};
+use chem::pipeline::{self, Report, Solution};
 use chem::solve::Refusal;
 use chem::solve::require::{Requirement, RequirementError};
 use files::Document;
@@ -72,38 +74,6 @@ struct Typing {
     /// The drawing before the first key: marks are always sought from it.
     base: Arc<Drawing>,
     base_text: String,
-}
-
-/// How many places stand how.
-#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
-pub struct Tally {
-    /// Places that carry what they must.
-    pub agrees: usize,
-    /// Places that carry something else.
-    pub opposite: usize,
-    /// Places that must carry something and carry nothing.
-    pub open: usize,
-    /// Places whose marks contradict each other.
-    pub contradiction: usize,
-    /// Places of which nothing is asked.
-    pub not_asked: usize,
-}
-
-impl Tally {
-    /// The verdict to show for the whole line.
-    pub fn verdict(&self) -> Verdict {
-        if self.contradiction > 0 {
-            Verdict::Contradiction
-        } else if self.opposite > 0 {
-            Verdict::Opposite
-        } else if self.open > 0 {
-            Verdict::Open
-        } else if self.agrees > 0 {
-            Verdict::Agrees
-        } else {
-            Verdict::NotAsked
-        }
-    }
 }
 
 /// The open document.
@@ -210,17 +180,7 @@ impl Session {
 
     /// How many places stand how.
     pub fn tally(&self) -> Tally {
-        let mut tally = Tally::default();
-        for place in &self.report.places {
-            match place.verdict {
-                Verdict::Agrees => tally.agrees += 1,
-                Verdict::Opposite => tally.opposite += 1,
-                Verdict::Open if place.must.is_some() => tally.open += 1,
-                Verdict::Contradiction => tally.contradiction += 1,
-                Verdict::Open | Verdict::NotAsked => tally.not_asked += 1,
-            }
-        }
-        tally
+        Tally::of(&self.report)
     }
 
     /// Whether something is asked that the drawing does not carry yet.
@@ -294,27 +254,22 @@ impl Session {
             return;
         }
         self.stop_work();
-        if self.typing.is_none() {
-            self.typing = Some(Typing {
-                base: self.drawing().clone(),
-                base_text: self.line().to_owned(),
-            });
-            let drawing = self.drawing().clone();
-            self.history.push("", drawing, text.to_owned());
-        }
         let base = match &self.typing {
             Some(typing) => typing.base.clone(),
-            None => return,
+            None => {
+                let base = self.drawing().clone();
+                self.typing = Some(Typing {
+                    base: base.clone(),
+                    base_text: self.line().to_owned(),
+                });
+                self.history.push("", base.clone(), text.to_owned());
+                base
+            }
         };
-        let drawing = if text.trim().is_empty() {
-            base.clone()
+        let (name, drawing) = if text.trim().is_empty() {
+            ("Clear the line".to_owned(), base.clone())
         } else {
-            self.drawing().clone()
-        };
-        let name = if text.trim().is_empty() {
-            "Clear the line".to_owned()
-        } else {
-            carry_name(text)
+            (carry_name(text), self.drawing().clone())
         };
         self.history.amend(&name, drawing, text.to_owned());
         self.read();

@@ -4,6 +4,7 @@ use super::*;
 use chem::format::{Record, molfile};
 use chem::geom::Point;
 use chem::molecule::AtomIx;
+use chem::pipeline::Verdict;
 
 /// Alanine with nothing marked; atom 2 is the centre.
 const ALANINE: &str = "alanine

@@ -18,7 +18,7 @@ mod sheet;
 mod signs;
 mod theme;
 
-use crate::command::{Command, Effect, MENUS, Shortcut};
+use crate::command::{Command, Effect, MENUS, Shortcut, ctrl, plain};
 use crate::session::Session;
 use chem::pipeline::Verdict;
 use dialogs::Dialog;
@@ -294,16 +294,11 @@ impl Window {
 /// Whether the keys of a command, or other keys that mean the same, were pressed; they are used up.
 fn pressed(ui: &Ui, command: &Command, shortcut: Shortcut) -> bool {
     let mut keys = vec![shortcut];
-    let other = |ctrl, key| Shortcut {
-        ctrl,
-        shift: false,
-        key,
-    };
     match command {
-        Command::Redo => keys.push(other(true, "Y")),
-        Command::Delete => keys.push(other(false, "Backspace")),
-        Command::Swap => keys.push(other(false, "Right")),
-        Command::Nearer => keys.push(other(true, "Equals")),
+        Command::Redo => keys.push(ctrl("Y")),
+        Command::Delete => keys.push(plain("Backspace")),
+        Command::Swap => keys.push(plain("Right")),
+        Command::Nearer => keys.push(ctrl("Equals")),
         _ => {}
     }
     keys.into_iter().any(|s| {

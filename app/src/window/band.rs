@@ -282,11 +282,7 @@ fn verdict(ui: &mut Ui, session: &Session) {
         let text = if session.is_searching() {
             "seeking marks …".to_owned()
         } else if !understood {
-            if session.is_typing() {
-                "not finished yet".to_owned()
-            } else {
-                "not understood".to_owned()
-            }
+            "the line does not count: see below".to_owned()
         } else {
             words(&tally)
         };

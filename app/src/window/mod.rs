@@ -198,7 +198,7 @@ impl Window {
                 .frame(desk(Margin::symmetric(24, 20)))
                 .resizable(false)
                 .show_separator_line(false)
-                .exact_size(320.0)
+                .exact_size((ui.available_width() * 0.27).clamp(228.0, 320.0))
                 .show(ui, |ui| places::show(ui, &self.session, out));
         }
         CentralPanel::default_margins()

@@ -5,14 +5,16 @@ use super::theme::{self, CAPTION, Colors, GRID, TEXT, scripted};
 use crate::command::Command;
 use crate::figure::locant;
 use crate::session::{Selection, Session};
-use chem::cip::Rule;
-use chem::pipeline::{Place, Verdict};
+use chem::cip::{Compared, Rule, Tie};
+use chem::molecule::AtomIx;
+use chem::pipeline::{self, Place, Verdict};
 use chem::stereo::{Kind, Ligand};
 use egui::text::LayoutJob;
 use egui::{
     Align2, Color32, CornerRadius, Painter, Pos2, Rect, RichText, Role, ScrollArea, Sense, Stroke,
     StrokeKind, Ui, WidgetInfo, pos2, vec2,
 };
+use std::sync::Arc;
 
 /// Height of a row.
 const ROW: f32 = 32.0;
@@ -76,6 +78,7 @@ pub(super) fn show(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
                 "no stereogenic place in this drawing"
             };
             ui.label(RichText::new(text).color(colors.muted));
+            faults(ui, session);
             return;
         }
         header(ui);
@@ -83,6 +86,7 @@ pub(super) fn show(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
         for place in places {
             row(ui, session, place, chosen.is_some_and(|c| c == place), out);
         }
+        faults(ui, session);
         if let Some(place) = chosen {
             ui.add_space(2.0 * GRID);
             theme::hairline(ui, 1.0);
@@ -241,6 +245,7 @@ fn why(ui: &mut Ui, session: &Session, place: &Place) {
         }
     });
     ui.add_space(GRID);
+    let ties = ties(ui, session, place);
     for (i, ligand) in place.ranking.iter().enumerate() {
         let Some((end, letter)) = rank(place.kind, i) else {
             break;
@@ -252,8 +257,17 @@ fn why(ui: &mut Ui, session: &Session, place: &Place) {
             ui.label(RichText::new(text).small().color(colors.muted));
         }
         ligand_row(ui, session, letter, *ligand, &colors);
+        let slot = if place.kind == Kind::Tetrahedral {
+            i
+        } else {
+            i / 2
+        };
+        let parts_next = place.kind == Kind::Tetrahedral || i % 2 == 0;
+        if let (true, Some(Some(tie))) = (parts_next, ties.get(slot)) {
+            tie_row(ui, tie, &colors);
+        }
     }
-    if let Some(rule) = place.rule {
+    if let (true, Some(rule)) = (ties.iter().all(Option::is_none), place.rule) {
         ui.add_space(GRID / 2.0);
         let text = format!(
             "The last tie broke by Rule {}: {}",
@@ -265,6 +279,73 @@ fn why(ui: &mut Ui, session: &Session, place: &Place) {
     if !place.note.is_empty() {
         ui.add_space(GRID / 2.0);
         ui.add(egui::Label::new(RichText::new(&place.note).size(TEXT - 0.5)).wrap());
+    }
+}
+
+/// How the ligands of a place were told apart; kept until the drawing or the place changes.
+fn ties(ui: &Ui, session: &Session, place: &Place) -> Arc<Vec<Option<Tie>>> {
+    type Kept = Option<(u64, Vec<AtomIx>, Arc<Vec<Option<Tie>>>)>;
+    let id = egui::Id::unique("why of the chosen place");
+    let kept: Kept = ui.data(|d| d.get_temp(id)).flatten();
+    if let Some((revision, atoms, ties)) = kept
+        && revision == session.revision()
+        && atoms == place.atoms
+    {
+        return ties;
+    }
+    let ties = Arc::new(pipeline::why(session.drawing(), place));
+    let kept: Kept = Some((session.revision(), place.atoms.clone(), Arc::clone(&ties)));
+    ui.data_mut(|d| d.insert_temp(id, kept));
+    ties
+}
+
+/// The rule and the sphere that part a ligand from the next, and what was compared there.
+fn tie_row(ui: &mut Ui, tie: &Tie, colors: &Colors) {
+    let set = |members: &[Compared]| {
+        let words: Vec<String> = members
+            .iter()
+            .map(|m| {
+                if m.is_duplicate {
+                    format!("({})", m.text)
+                } else {
+                    m.text.clone()
+                }
+            })
+            .collect();
+        match words.as_slice() {
+            [only] => only.clone(),
+            _ => format!("{{{}}}", words.join(",")),
+        }
+    };
+    let text = format!(
+        "sphere {}, Rule {}: {} over {}",
+        tie.sphere,
+        tie.rule.name(),
+        set(&tie.higher),
+        set(&tie.lower)
+    );
+    ui.horizontal(|ui| {
+        ui.spacing_mut().item_spacing.x = 0.0;
+        ui.add_space(26.0);
+        let label = RichText::new(text).size(TEXT - 2.0).color(colors.muted);
+        ui.add(egui::Label::new(label).wrap())
+            .on_hover_text(format!(
+                "Rule {}: {}. Duplicate atoms stand in parentheses",
+                tie.rule.name(),
+                meaning(tie.rule)
+            ));
+    });
+}
+
+/// Wedges that say nothing and marks that contradict each other, a sentence each.
+fn faults(ui: &mut Ui, session: &Session) {
+    let colors = Colors::of(ui);
+    for idle in &session.report().idle {
+        ui.add_space(GRID);
+        let text = RichText::new(&idle.text)
+            .size(TEXT - 0.5)
+            .color(colors.verdict(Verdict::Opposite));
+        ui.add(egui::Label::new(text).wrap());
     }
 }
 

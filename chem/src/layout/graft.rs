@@ -34,12 +34,29 @@ pub fn graft(
     bonds: &[BondIx],
     word: Word,
 ) -> Result<Graft, GraftError> {
-    match word {
+    let mut graft = match word {
         Word::Element(element, charge) => set_element(drawing, atoms, bonds, element, charge),
         Word::Charge(charge) => set_charge(drawing, atoms, charge),
         Word::Bond(order) => bond(drawing, atoms, bonds, order),
         Word::Ring { size, alternating } => ring::graft(drawing, (atoms, bonds), size, alternating),
+    }?;
+    if let Some(symbol) = overfilled(drawing, &graft.edits) {
+        graft.says = format!("{}; {symbol} has no such valence", graft.says);
     }
+    Ok(graft)
+}
+
+/// The symbol of the first atom that gets a valence which its element does not have.
+fn overfilled(drawing: &Drawing, edits: &[Edit]) -> Option<&'static str> {
+    let (after, _) = drawing.apply(edits).ok()?;
+    let (before, after) = (drawing.molecule(), after.molecule());
+    after
+        .atoms()
+        .find(|a| {
+            let was_so = a.index() < before.n_atoms() && !before.valence_is_usual(*a);
+            !after.valence_is_usual(*a) && !was_so
+        })
+        .map(|a| after.element(a).symbol())
 }
 
 fn set_element(

@@ -1,6 +1,7 @@
 //! Implicit hydrogens by the standard valences.
 
 use super::{AtomIx, Molecule};
+use crate::element::Element;
 
 /// Hydrogens that fill each atom up to the next valence of its element.
 pub(super) fn count_all(molecule: &Molecule) -> Vec<u8> {
@@ -14,11 +15,13 @@ fn count(molecule: &Molecule, ix: AtomIx) -> u8 {
         return valence.saturating_sub(used);
     }
     let used = used.saturating_add(atom.radical.valences());
-    atom.element
-        .valences(atom.charge)
-        .iter()
-        .find(|v| **v >= used)
-        .map_or(0, |v| v - used)
+    let valences = atom.element.valences(atom.charge);
+    // a halogen with two bonds is a slip, not a halogen hydride
+    let filled = match (valences, atom.element) {
+        ([first, ..], Element::CL | Element::BR | Element::I) => std::slice::from_ref(first),
+        _ => valences,
+    };
+    filled.iter().find(|v| **v >= used).map_or(0, |v| v - used)
 }
 
 pub(super) fn valence_is_usual(molecule: &Molecule, ix: AtomIx) -> bool {
@@ -31,7 +34,7 @@ pub(super) fn valence_is_usual(molecule: &Molecule, ix: AtomIx) -> bool {
     let special = molecule.neighbors(ix).iter().any(|n| n.order.pairs() == 0);
     valences.is_empty() || special || valences.contains(&used)
         // nitro and N-oxide drawn with five bonds on nitrogen
-        || (atom.element == crate::element::Element::N && atom.charge == 0 && used == 5)
+        || (atom.element == Element::N && atom.charge == 0 && used == 5)
 }
 
 #[cfg(test)]
@@ -60,6 +63,14 @@ mod tests {
             [0, 3, 3, 3]
         );
         assert_eq!(hydrogens(&["Na", "Fe", "He"], &[]), [0, 0, 0]);
+    }
+
+    #[test]
+    fn a_halogen_is_never_filled_up() {
+        let bridge = build(&["Cl", "C", "C"], &[(0, 1, 1), (0, 2, 1)]);
+        assert_eq!(bridge.hydrogens(AtomIx::new(0)), 0);
+        assert!(!bridge.valence_is_usual(AtomIx::new(0)));
+        assert_eq!(hydrogens(&["Cl"], &[]), [1]);
     }
 
     #[test]

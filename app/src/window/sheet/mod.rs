@@ -83,6 +83,14 @@ impl Sheet {
         &STYLES[0]
     }
 
+    /// The same with captions for the screen, where the drawing stands enlarged.
+    fn on_sheet() -> Style {
+        Style {
+            caption_size: 0.55 * Self::style().font_size,
+            ..Self::style().clone()
+        }
+    }
+
     /// Width of the figure in millimetres and its scale in percent, once it has been shown.
     pub(super) fn measures(&self) -> Option<(f64, f32)> {
         let composed = self.composed.as_ref()?;
@@ -136,9 +144,9 @@ impl Sheet {
             return;
         }
         let captions = captions(session.report());
-        let style = Self::style();
-        let ink = ink::compose(session.drawing(), style, &captions, None);
-        let bare = ink::compose(session.drawing(), style, &[], None).bounds;
+        let style = Self::on_sheet();
+        let ink = ink::compose(session.drawing(), &style, &captions, None);
+        let bare = ink::compose(session.drawing(), &style, &[], None).bounds;
         self.composed = Some(Composed {
             revision,
             page: bare.inflate(style.page_margin, style.page_margin),
@@ -163,7 +171,7 @@ impl Sheet {
         let Some(composed) = &self.composed else {
             return;
         };
-        self.frame(&painter, session, composed);
+        self.frame(&painter, session, composed, ghost.is_some());
         self.selection(&painter, session);
         let moved = self.gesture.preview(session);
         let shown = moved.as_ref().or(ghost);
@@ -185,7 +193,7 @@ impl Sheet {
     /// A drawing as it would be: what is new or other than before in the accent.
     fn paint_ghost(&self, painter: &egui::Painter, session: &Session, after: &Drawing) {
         let before = session.drawing();
-        let ink = ink::compose(after, Self::style(), &captions(session.report()), None);
+        let ink = ink::compose(after, &Self::on_sheet(), &captions(session.report()), None);
         let accent = theme::LIGHT.accent.gamma_multiply(0.6);
         let triangles = Triangles::of(&ink);
         let mesh = triangles.mesh(self.view.of_ink(&ink), |part, tone| {

@@ -19,9 +19,18 @@ const TICK: f32 = 12.0;
 
 impl Sheet {
     /// Four corner ticks round the figure and its width in print beneath.
-    pub(super) fn frame(&self, painter: &Painter, session: &Session, composed: &Composed) {
+    /// On an empty sheet a word of what to do, unless something is about to come.
+    pub(super) fn frame(
+        &self,
+        painter: &Painter,
+        session: &Session,
+        composed: &Composed,
+        something_comes: bool,
+    ) {
         if session.drawing().molecule().n_atoms() == 0 {
-            self.empty(painter);
+            if !something_comes {
+                self.empty(painter);
+            }
             return;
         }
         let page = self

@@ -101,7 +101,8 @@ impl Band {
             });
             ui.vertical(|ui| {
                 // the verdict and its button must stay in sight
-                ui.set_max_width((ui.available_width() - 352.0).max(120.0));
+                let kept = if session.can_carry() { 352.0 } else { 200.0 };
+                ui.set_max_width((ui.available_width() - kept).max(120.0));
                 carries(ui, session);
             });
             ui.vertical(|ui| {

@@ -194,11 +194,13 @@ impl Window {
             }
         }
         if self.show_places {
+            let width = (ui.available_width() * 0.33).clamp(264.0, 320.0);
+            let side = if width < 320.0 { 14 } else { 24 };
             Panel::right("places")
-                .frame(desk(Margin::symmetric(24, 20)))
+                .frame(desk(Margin::symmetric(side, 20)))
                 .resizable(false)
                 .show_separator_line(false)
-                .exact_size((ui.available_width() * 0.27).clamp(228.0, 320.0))
+                .exact_size(width)
                 .show(ui, |ui| places::show(ui, &self.session, out));
         }
         CentralPanel::default_margins()

@@ -18,8 +18,14 @@ use std::sync::Arc;
 
 /// Height of a row.
 const ROW: f32 = 32.0;
-/// Left edges of the columns, from the left edge of the panel's content.
-const COLUMNS: [f32; 4] = [0.0, 60.0, 104.0, 160.0];
+/// Left edges of the columns, from the left edge of the panel's content, for its width.
+fn columns(width: f32) -> [f32; 4] {
+    if width < 268.0 {
+        [0.0, 44.0, 76.0, 118.0]
+    } else {
+        [0.0, 60.0, 104.0, 160.0]
+    }
+}
 
 /// The place that is selected on the sheet, if it is one.
 pub(super) fn chosen(session: &Session) -> Option<&Place> {
@@ -108,7 +114,10 @@ fn heading(ui: &mut Ui, text: &str) {
 fn header(ui: &mut Ui) {
     let colors = Colors::of(ui);
     let (rect, _) = ui.allocate_exact_size(vec2(ui.available_width(), 20.0), Sense::hover());
-    for (x, text) in COLUMNS.iter().zip(["locant", "must", "carries", "verdict"]) {
+    for (x, text) in columns(rect.width())
+        .iter()
+        .zip(["locant", "must", "carries", "verdict"])
+    {
         ui.painter().text(
             pos2(rect.min.x + x, rect.center().y),
             Align2::LEFT_CENTER,
@@ -167,7 +176,7 @@ fn row(ui: &mut Ui, session: &Session, place: &Place, chosen: bool, out: &mut Ve
 
 fn cells(painter: &Painter, rect: Rect, place: &Place, colors: &Colors) {
     let y = rect.center().y;
-    let [x0, x1, x2, x3] = COLUMNS.map(|x| rect.min.x + x);
+    let [x0, x1, x2, x3] = columns(rect.width()).map(|x| rect.min.x + x);
     let color = colors.verdict(place.verdict);
     let number = place_number(place);
     let write = |at: Pos2, text: String, font, color| {

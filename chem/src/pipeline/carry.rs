@@ -1,6 +1,6 @@
 //! From a requirement to a drawing that carries it, read back.
 
-use super::{Solution, Verdict, report};
+use super::{Solution, Verdict, perceived, report};
 use crate::cip::{Limits, Ranker, Stop};
 use crate::drawing::{Drawing, Edit};
 use crate::molecule::AtomIx;
@@ -21,8 +21,7 @@ use crate::wedge::{self, Target};
 /// # Errors
 /// Why no drawing could be made; the given drawing is unchanged.
 pub fn carry(drawing: &Drawing, requirement: &Requirement) -> Result<Solution, Refusal> {
-    let rings = Rings::find(drawing.molecule());
-    let units = Units::find(drawing.molecule(), &rings);
+    let (rings, units) = perceived(drawing);
     let ranker = Ranker::new(drawing.molecule(), &rings, &units, Limits::default());
     let reading = wedge::read(drawing, &units);
     let goals = goals(&units, requirement)?;
@@ -293,8 +292,7 @@ fn read_back(
     edits: Vec<Edit>,
     requirement: &Requirement,
 ) -> Result<Solution, Refusal> {
-    let rings = Rings::find(after.molecule());
-    let units_after = Units::find(after.molecule(), &rings);
+    let (_, units_after) = perceived(&after);
     let reading = wedge::read(&after, &units_after);
     for (ix, unit) in units.iter() {
         let same = units_after

@@ -10,8 +10,9 @@ pub use report::{faults, labels_line, report, why};
 use crate::cip::Rule;
 use crate::drawing::{Drawing, Edit};
 use crate::molecule::{AtomIx, BondIx};
+use crate::perceive::Rings;
 use crate::solve::require::{Requirement, RequirementError};
-use crate::stereo::{Descriptor, Kind, Ligand};
+use crate::stereo::{Descriptor, Kind, Ligand, Units};
 
 /// How a place of the drawing stands to what it must carry. Told apart by shape and colour on screen.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
@@ -187,6 +188,13 @@ impl Solution {
     pub fn report(&self) -> &Report {
         &self.report
     }
+}
+
+/// Rings and units of a drawing.
+fn perceived(drawing: &Drawing) -> (Rings, Units) {
+    let rings = Rings::find(drawing.molecule());
+    let units = Units::find(drawing.molecule(), &rings);
+    (rings, units)
 }
 
 /// A typed requirement, understood for this drawing.

@@ -1,6 +1,6 @@
 //! What a drawing carries, place by place.
 
-use super::{Idle, Place, Report, Sense, Verdict};
+use super::{Idle, Place, Report, Sense, Verdict, perceived};
 use crate::cip::{Limits, Missing, Ranker, Tie, UnitLabel};
 use crate::drawing::{Drawing, Mark};
 use crate::molecule::{AtomIx, Order};
@@ -11,8 +11,7 @@ use crate::wedge::{self, Reading};
 
 /// What a drawing carries, and how that stands to a requirement (an empty one asks nothing).
 pub fn report(drawing: &Drawing, requirement: &Requirement) -> Report {
-    let rings = Rings::find(drawing.molecule());
-    let units = Units::find(drawing.molecule(), &rings);
+    let (rings, units) = perceived(drawing);
     let ranker = Ranker::new(drawing.molecule(), &rings, &units, Limits::default());
     let reading = wedge::read(drawing, &units);
     let labels = ranker.label_all(reading.configurations());
@@ -36,8 +35,7 @@ pub fn report(drawing: &Drawing, requirement: &Requirement) -> Report {
 /// one for each end); empty where nothing is ranked. See [`Ranker::why`].
 pub fn why(drawing: &Drawing, place: &Place) -> Vec<Option<Tie>> {
     let molecule = drawing.molecule();
-    let rings = Rings::find(molecule);
-    let units = Units::find(molecule, &rings);
+    let (rings, units) = perceived(drawing);
     let ranker = Ranker::new(molecule, &rings, &units, Limits::default());
     let reading = wedge::read(drawing, &units);
     let unit = units
@@ -115,8 +113,7 @@ fn speaks_at(unit: &Unit, narrow: AtomIx, wide: AtomIx) -> bool {
 
 /// The labels of a drawing alone: `3R 7E 8E`. Units that the drawing leaves open are not ranked.
 pub fn labels_line(drawing: &Drawing) -> String {
-    let rings = Rings::find(drawing.molecule());
-    let units = Units::find(drawing.molecule(), &rings);
+    let (rings, units) = perceived(drawing);
     let reading = wedge::read(drawing, &units);
     let defined = |c: &Configuration| matches!(c, Configuration::Defined(_));
     if !reading.configurations().iter().any(defined) {
@@ -137,8 +134,7 @@ pub fn labels_line(drawing: &Drawing) -> String {
 /// every wedge starts at a centre that can be read.
 pub fn faults(drawing: &Drawing) -> Vec<String> {
     let molecule = drawing.molecule();
-    let rings = Rings::find(molecule);
-    let units = Units::find(molecule, &rings);
+    let (_, units) = perceived(drawing);
     let reading = wedge::read(drawing, &units);
     let mut plain = vec![true; molecule.n_atoms()];
     for (ix, unit) in units.iter() {

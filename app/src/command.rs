@@ -21,6 +21,10 @@ pub enum Command {
     SaveAs,
     /// Write the picture.
     SaveFigure,
+    /// The next style of figure.
+    FigureStyle,
+    /// Descriptors in the figure, or none.
+    FigureDescriptors,
     /// Close the window.
     Close,
     /// Take the last step back.
@@ -163,7 +167,10 @@ pub const MENUS: [(&str, &[Option<Command>]); 4] = [
             None,
             Some(Command::Save),
             Some(Command::SaveAs),
+            None,
             Some(Command::SaveFigure),
+            Some(Command::FigureStyle),
+            Some(Command::FigureDescriptors),
             None,
             Some(Command::Close),
         ],
@@ -222,6 +229,13 @@ impl Command {
             Command::Save => "Save",
             Command::SaveAs => "Save as…",
             Command::SaveFigure => "Save figure…",
+            Command::FigureStyle => {
+                return Cow::Owned(format!("Figure style: {}", session.figure().style.name));
+            }
+            Command::FigureDescriptors if session.figure().descriptors => {
+                "Figure: with descriptors"
+            }
+            Command::FigureDescriptors => "Figure: without descriptors",
             Command::Close => "Close",
             Command::Undo => return named("Undo", session.undo_name()),
             Command::Redo => return named("Redo", session.redo_name()),
@@ -280,6 +294,8 @@ impl Command {
             Command::Dim => ctrl("D"),
             Command::Places => ctrl("P"),
             Command::ClearMarks
+            | Command::FigureStyle
+            | Command::FigureDescriptors
             | Command::Step(..)
             | Command::Ask(_)
             | Command::Settle
@@ -295,6 +311,10 @@ impl Command {
             Command::Save => "Writes the molfile",
             Command::SaveAs => "Writes the molfile to another place",
             Command::SaveFigure => "Writes the picture as SVG, PDF or PNG, by the name's ending",
+            Command::FigureStyle => {
+                "Changes the measures: journal, patent, record, screen; the width in print follows"
+            }
+            Command::FigureDescriptors => "Writes locants and descriptors into the figure, or not",
             Command::Close => "Asks first if something is not saved",
             Command::Undo => "Takes the last step back",
             Command::Redo => "Makes the step again",
@@ -378,6 +398,8 @@ impl Command {
             Command::Ask(text) => session.ask(&text),
             Command::Settle => session.settle(),
             Command::MakeItCarry => session.make_it_carry(),
+            Command::FigureStyle => session.next_figure_style(),
+            Command::FigureDescriptors => session.toggle_figure_descriptors(),
             Command::Delete => return effects::delete(session),
             Command::Raise => return effects::wedge(session, "Raise the wide end", Mark::Solid),
             Command::Lower => return effects::wedge(session, "Lower the wide end", Mark::Hashed),

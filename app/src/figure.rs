@@ -5,7 +5,7 @@ use crate::export::png::{Depth, PngError};
 use crate::export::svg::TextAs;
 use crate::export::{Facts, Sheet, SheetError, pdf, png, svg};
 use chem::drawing::Drawing;
-use chem::ink::{Caption, Ink, Style, Tone, compose};
+use chem::ink::{Caption, Ink, POINTS_PER_MM, Style, Tone, compose};
 use chem::pipeline::{Place, Report};
 use std::path::Path;
 
@@ -69,6 +69,23 @@ pub struct Options {
     pub width: Option<f64>,
     /// Pixels per inch of a PNG.
     pub dpi: f64,
+}
+
+/// Width of a figure with its margin, millimetres.
+pub fn width_mm(ink: &Ink, style: &Style) -> f64 {
+    (ink.bounds.width() + 2.0 * style.page_margin) / POINTS_PER_MM
+}
+
+/// What to say of a figure that is wider than the place of print takes.
+pub fn too_wide(ink: &Ink, style: &Style) -> Option<String> {
+    let width = ink.bounds.width();
+    let limit = style.width_limit.filter(|limit| width > *limit)?;
+    Some(format!(
+        "the figure is {:.1} mm wide, more than the {:.1} mm that the style {} has room for",
+        width / POINTS_PER_MM,
+        limit / POINTS_PER_MM,
+        style.name
+    ))
 }
 
 /// The ink of a figure; with locants and descriptors beside their places if `descriptors` says so.

@@ -19,6 +19,7 @@ pub use tally::Tally;
 
 use crate::files::FileError;
 use chem::drawing::{Drawing, Edit, EditError, Renumbering};
+use chem::ink::{STYLES, Style};
 use chem::pipeline::{self, Report, Solution};
 use chem::solve::Refusal;
 use chem::solve::require::{Requirement, RequirementError};
@@ -93,6 +94,25 @@ pub struct Session {
     pending: Option<Pending>,
     work: Option<Work>,
     next_work: u64,
+    figure: FigureChoice,
+}
+
+/// How the figure of the document is made.
+#[derive(Clone, Copy, Debug)]
+pub struct FigureChoice {
+    /// With which measures.
+    pub style: &'static Style,
+    /// With locants and descriptors beside their places.
+    pub descriptors: bool,
+}
+
+impl Default for FigureChoice {
+    fn default() -> FigureChoice {
+        FigureChoice {
+            style: &STYLES[0],
+            descriptors: false,
+        }
+    }
 }
 
 impl Session {
@@ -124,6 +144,7 @@ impl Session {
             pending: None,
             work: None,
             next_work: 0,
+            figure: FigureChoice::default(),
         };
         session.read();
         session
@@ -190,6 +211,23 @@ impl Session {
             .as_ref()
             .is_ok_and(|r| !r.wanted.is_empty());
         asks && !self.report.all_agree()
+    }
+
+    /// How its figure is made.
+    pub fn figure(&self) -> FigureChoice {
+        self.figure
+    }
+
+    /// The next style of figure in the table of styles; after the last the first.
+    pub fn next_figure_style(&mut self) {
+        let now = STYLES.iter().position(|s| s.name == self.figure.style.name);
+        let next = now.map_or(0, |i| (i + 1) % STYLES.len());
+        self.figure.style = &STYLES[next];
+    }
+
+    /// Puts descriptors into the figure, or leaves them out.
+    pub fn toggle_figure_descriptors(&mut self) {
+        self.figure.descriptors = !self.figure.descriptors;
     }
 
     /// What is selected.

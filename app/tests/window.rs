@@ -329,6 +329,64 @@ fn a_figure_is_written_by_its_ending() {
 }
 
 #[test]
+fn a_figure_takes_the_style_and_descriptors_of_the_menu() {
+    let folder = std::env::temp_dir().join(format!("wedgewright-style-{}", std::process::id()));
+    std::fs::create_dir_all(&folder).unwrap();
+    let mut h = drive(Window::demo());
+    for item in ["Figure style: journal", "Figure: without descriptors"] {
+        h.get_by_label("File").click();
+        h.run_steps(4);
+        h.get_by_label_contains(item).click();
+        h.run_steps(4);
+    }
+    let path = folder.join("a.svg");
+    type_path(&mut h, Modifiers::COMMAND | Modifiers::SHIFT, Key::F, &path);
+    h.get_by_label_contains("saved, style patent");
+    let choice = h.state().session().figure();
+    assert_eq!((choice.style.name, choice.descriptors), ("patent", true));
+    let styled = std::fs::read(&path).unwrap();
+    let other = folder.join("b.svg");
+    let mut plain = drive(Window::demo());
+    type_path(
+        &mut plain,
+        Modifiers::COMMAND | Modifiers::SHIFT,
+        Key::F,
+        &other,
+    );
+    assert_ne!(styled, std::fs::read(&other).unwrap());
+    std::fs::remove_dir_all(&folder).unwrap();
+}
+
+#[test]
+fn keys_pressed_twice_within_a_frame_count_twice() {
+    let mut h = alanine();
+    let before = h.state().session().undo_name().map(str::to_owned);
+    assert!(before.is_some());
+    let n = h.state().session().drawing().molecule().n_atoms();
+    for _ in 0..2 {
+        for pressed in [true, false] {
+            h.event(egui::Event::Key {
+                key: Key::Z,
+                physical_key: None,
+                pressed,
+                repeat: false,
+                modifiers: Modifiers::COMMAND,
+            });
+        }
+    }
+    h.run_steps(2);
+    h.key_press_modifiers(Modifiers::COMMAND | Modifiers::SHIFT, Key::Z);
+    h.run_steps(2);
+    let once = h.state().session().drawing().molecule().n_atoms();
+    h.key_press_modifiers(Modifiers::COMMAND | Modifiers::SHIFT, Key::Z);
+    h.run_steps(2);
+    // two steps were taken back, so two can be made again
+    assert_eq!(h.state().session().undo_name().map(str::to_owned), before);
+    assert_eq!(h.state().session().drawing().molecule().n_atoms(), n);
+    assert!(h.state().session().redo_name().is_none() && once <= n);
+}
+
+#[test]
 fn a_file_that_is_there_is_replaced_only_when_asked_twice() {
     let folder = std::env::temp_dir().join(format!("wedgewright-twice-{}", std::process::id()));
     std::fs::create_dir_all(&folder).unwrap();

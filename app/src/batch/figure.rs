@@ -2,10 +2,8 @@
 
 use super::{Failure, Status, say};
 use crate::args::Figure;
-use crate::export::POINTS_PER_MM;
 use crate::figure::{self, Form, Options};
 use crate::files::{self, Piece, Source, is_standard, name_of, same_file};
-use chem::ink::{Ink, Style};
 use chem::pipeline;
 use chem::solve::require::Requirement;
 use std::num::NonZeroUsize;
@@ -34,8 +32,8 @@ pub(super) fn run(args: &Figure) -> Result<Status, Failure> {
     }
     let report = pipeline::report(&record.drawing, &Requirement::default());
     let ink = figure::ink(&record.drawing, &report, args.style, args.descriptors);
-    if args.width.is_none() {
-        check_width(&ink, args.style);
+    if let (None, Some(warning)) = (args.width, figure::too_wide(&ink, args.style)) {
+        say(&warning);
     }
     let options = Options {
         form,
@@ -53,19 +51,6 @@ pub(super) fn run(args: &Figure) -> Result<Status, Failure> {
             say(&format!("{name}: {error}. {out} was not written"));
             Ok(Status::Wrong)
         }
-    }
-}
-
-/// Tells of a figure that is wider than the place of print takes.
-fn check_width(ink: &Ink, style: &Style) {
-    let width = ink.bounds.width();
-    if let Some(limit) = style.width_limit.filter(|limit| width > *limit) {
-        say(&format!(
-            "the figure is {:.1} mm wide, more than the {:.1} mm that the style {} has room for",
-            width / POINTS_PER_MM,
-            limit / POINTS_PER_MM,
-            style.name
-        ));
     }
 }
 

@@ -3,7 +3,6 @@
 use super::Window;
 use super::dialogs::{Choice, Dialog, Purpose};
 use super::prompts::{self, Keep, Next, PathField, Typed};
-use super::sheet::Sheet;
 use crate::command::Errand;
 use crate::figure::{self, Form, Options};
 use crate::files;
@@ -88,19 +87,28 @@ impl Window {
         }
     }
 
-    /// Writes the drawing alone, without locants and descriptors.
-    fn save_figure(&self, path: &Path) -> Result<(), String> {
+    /// Writes the figure as the menu says and tells what was written.
+    fn save_figure(&self, path: &Path) -> Result<String, String> {
+        let choice = self.session.figure();
         let options = Options {
             form: Form::of(path).map_err(|e| e.to_string())?,
-            style: Sheet::style(),
+            style: choice.style,
             width: None,
             dpi: figure::DPI,
         };
         let (session, report) = (&self.session, self.session.report());
-        let ink = figure::ink(session.drawing(), report, options.style, false);
+        let ink = figure::ink(session.drawing(), report, options.style, choice.descriptors);
         let bytes = figure::write(&ink, &session.name(), report, &options)
             .map_err(|e| format!("{}: {e}", path.display()))?;
-        files::write(path, &bytes).map_err(|e| e.to_string())
+        files::write(path, &bytes).map_err(|e| e.to_string())?;
+        let width = figure::width_mm(&ink, choice.style);
+        let warning =
+            figure::too_wide(&ink, choice.style).map_or_else(String::new, |w| format!("; {w}"));
+        Ok(format!(
+            "{} saved, style {}, {width:.0} mm wide{warning}. Have it checked by a second person before it is filed or released",
+            path.display(),
+            choice.style.name
+        ))
     }
 
     fn choose(&mut self, purpose: Purpose, ctx: &Context) {
@@ -157,7 +165,7 @@ impl Window {
             Purpose::Open => self.go_on(Next::Open(path), ctx),
             Purpose::Save => self.save_to(&purpose.complete(path), ctx),
             Purpose::Figure => match self.save_figure(&purpose.complete(path)) {
-                Ok(()) => self.notice = None,
+                Ok(text) => self.tell(text),
                 Err(text) => self.complain(text),
             },
         }

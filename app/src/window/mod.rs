@@ -132,6 +132,13 @@ impl Window {
         }
     }
 
+    fn tell(&mut self, text: String) {
+        self.notice = Some(Notice {
+            verdict: Verdict::NotAsked,
+            text,
+        });
+    }
+
     fn complain(&mut self, text: String) {
         self.notice = Some(Notice {
             verdict: Verdict::Opposite,
@@ -253,8 +260,11 @@ impl Window {
                 if (plain || selects_all) && (!on_sheet || busy) {
                     continue;
                 }
-                if pressed(ui, command, shortcut) && command.enabled(&self.session) {
-                    out.push(command.clone());
+                // a key pressed twice within a frame counts twice
+                for _ in 0..pressed(ui, command, shortcut) {
+                    if command.enabled(&self.session) {
+                        out.push(command.clone());
+                    }
                 }
             }
         }
@@ -293,8 +303,8 @@ impl Window {
     }
 }
 
-/// Whether the keys of a command, or other keys that mean the same, were pressed; they are used up.
-fn pressed(ui: &Ui, command: &Command, shortcut: Shortcut) -> bool {
+/// How often the keys of a command, or other keys that mean the same, were pressed; they are used up.
+fn pressed(ui: &Ui, command: &Command, shortcut: Shortcut) -> usize {
     let mut keys = vec![shortcut];
     match command {
         Command::Redo => keys.push(ctrl("Y")),
@@ -303,9 +313,9 @@ fn pressed(ui: &Ui, command: &Command, shortcut: Shortcut) -> bool {
         Command::Nearer => keys.push(ctrl("Equals")),
         _ => {}
     }
-    keys.into_iter().any(|s| {
+    let count = |s: Shortcut| {
         let Some(key) = Key::from_name(s.key) else {
-            return false;
+            return 0;
         };
         // the modifiers of the event count: those of the frame may be released already
         let meant = |m: Modifiers| {
@@ -318,9 +328,10 @@ fn pressed(ui: &Ui, command: &Command, shortcut: Shortcut) -> bool {
                 !matches!(e, Event::Key { key: k, pressed: true, modifiers, .. }
                     if *k == key && meant(*modifiers))
             });
-            i.events.len() < before
+            before - i.events.len()
         })
-    })
+    };
+    keys.into_iter().map(count).sum()
 }
 
 impl eframe::App for Window {

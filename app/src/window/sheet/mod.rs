@@ -12,7 +12,7 @@ use crate::command::Command;
 use crate::figure;
 use crate::session::{Selection, Session};
 use chem::drawing::Drawing;
-use chem::ink::{self, Caption, Ink, POINTS_PER_MM, Part, STYLES, Style, Tone};
+use chem::ink::{self, Caption, Ink, POINTS_PER_MM, Part, Style, Tone};
 use chem::pipeline::{Report, Verdict};
 use egui::{
     CornerRadius, EventFilter, Rect, Response, Role, Sense, Stroke, StrokeKind, Ui, WidgetInfo,
@@ -23,6 +23,7 @@ use gesture::Gesture;
 #[derive(Debug)]
 struct Composed {
     revision: u64,
+    style: &'static str,
     /// Box of the figure as it is printed, without locants and descriptors, in points.
     page: kurbo::Rect,
     /// Boxes of labels and captions, in points.
@@ -78,16 +79,12 @@ impl Sheet {
         focused.is_none() || focused == self.id
     }
 
-    /// Style of the figure.
-    pub(super) fn style() -> &'static Style {
-        &STYLES[0]
-    }
-
-    /// The same with captions for the screen, where the drawing stands enlarged.
-    fn on_sheet() -> Style {
+    /// The measures of the figure, with captions for the screen, where the drawing stands enlarged.
+    fn on_sheet(session: &Session) -> Style {
+        let style = session.figure().style;
         Style {
-            caption_size: 0.55 * Self::style().font_size,
-            ..Self::style().clone()
+            caption_size: 0.55 * style.font_size,
+            ..style.clone()
         }
     }
 
@@ -139,16 +136,17 @@ impl Sheet {
         if self
             .composed
             .as_ref()
-            .is_some_and(|c| c.revision == revision)
+            .is_some_and(|c| c.revision == revision && c.style == session.figure().style.name)
         {
             return;
         }
         let captions = captions(session.report());
-        let style = Self::on_sheet();
+        let style = Self::on_sheet(session);
         let ink = ink::compose(session.drawing(), &style, &captions, None);
         let bare = ink::compose(session.drawing(), &style, &[], None).bounds;
         self.composed = Some(Composed {
             revision,
+            style: session.figure().style.name,
             page: bare.inflate(style.page_margin, style.page_margin),
             words: word_boxes(&ink),
             triangles: Triangles::of(&ink),
@@ -193,7 +191,12 @@ impl Sheet {
     /// A drawing as it would be: what is new or other than before in the accent.
     fn paint_ghost(&self, painter: &egui::Painter, session: &Session, after: &Drawing) {
         let before = session.drawing();
-        let ink = ink::compose(after, &Self::on_sheet(), &captions(session.report()), None);
+        let ink = ink::compose(
+            after,
+            &Self::on_sheet(session),
+            &captions(session.report()),
+            None,
+        );
         let accent = theme::LIGHT.accent.gamma_multiply(0.6);
         let triangles = Triangles::of(&ink);
         let mesh = triangles.mesh(self.view.of_ink(&ink), |part, tone| {

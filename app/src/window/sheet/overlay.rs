@@ -92,7 +92,7 @@ impl Sheet {
     }
 
     fn ring(&self, drawing: &Drawing) -> f32 {
-        (0.24 * drawing.bond_length() as f32 * self.view.scale()).clamp(6.0, 16.0)
+        (0.24 * drawing.bond_length() as f32 * self.view.scale()).clamp(6.0, 11.0)
     }
 
     /// The letters a, b, c, d beside the ligands of the selected place.
@@ -174,7 +174,7 @@ impl Sheet {
                 let stroke = self.stroke(*start, at, session, modifiers);
                 let ends = stroke.ends.map(|p| self.view.to_screen(p));
                 if !stroke.edits.is_empty() {
-                    let width = self.line_width(drawing);
+                    let width = self.line_width(session);
                     bond(painter, ends, stroke.order, Stroke::new(width, accent));
                     painter.circle_stroke(ends[1], 4.0, Stroke::new(1.0, accent));
                 }
@@ -189,8 +189,8 @@ impl Sheet {
         }
     }
 
-    fn line_width(&self, drawing: &Drawing) -> f32 {
-        let style = Sheet::style();
+    fn line_width(&self, session: &Session) -> f32 {
+        let (style, drawing) = (session.figure().style, session.drawing());
         let bond = drawing.bond_length() as f32 * self.view.scale();
         (style.line_width / style.bond_length) as f32 * bond
     }

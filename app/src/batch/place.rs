@@ -201,7 +201,7 @@ fn written(record: &Record, carries: &str, options: &WriteOptions) -> Result<Str
     let block = molfile::write(record, options).map_err(|e| e.to_string())?;
     let again =
         molfile::read(&block, 1).map_err(|e| format!("the new molfile cannot be read: {e}"))?;
-    if pipeline::labels_line(&again.drawing) == carries {
+    if pipeline::carried(&again.drawing).labels == carries {
         Ok(block)
     } else {
         Err("the new drawing reads otherwise once its coordinates are rounded to the four decimals of a molfile; scale it up".to_owned())

@@ -13,6 +13,8 @@ mod context;
 mod digraph;
 mod engine;
 mod rules;
+#[cfg(test)]
+mod tests;
 mod unit;
 mod why;
 

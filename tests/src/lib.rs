@@ -36,31 +36,50 @@ pub struct Known {
     pub drawing: Drawing,
 }
 
-/// All worked examples.
+/// All worked examples: those by name and those by clause.
 ///
 /// # Panics
-/// If the corpus cannot be read, lacks a field or has fewer than 60 records: a runner that had
-/// nothing to run must fail.
+/// See [`by_name`] and [`by_clause`].
 pub fn worked() -> Vec<Known> {
-    let all: Vec<Known> = records("tests/corpus/worked.sdf")
-        .into_iter()
-        .map(|record| {
-            let line = record.field("LABELS").expect("LABELS");
-            assert!(
-                record.field("NAME").is_some_and(|name| !name.is_empty())
-                    && record.field("SOURCE").is_some_and(|s| !s.is_empty()),
-                "{}: NAME or SOURCE is missing",
-                record.title
-            );
-            Known {
-                labels: Labels::parse(line),
-                title: record.title,
-                drawing: record.drawing,
-            }
-        })
-        .collect();
-    assert!(all.len() >= 60, "only {} worked examples", all.len());
+    by_name().into_iter().chain(by_clause()).collect()
+}
+
+/// Published names with a drawing of each compound.
+///
+/// # Panics
+/// If the records cannot be read, lack a field or are fewer than 200: a runner that had nothing to run
+/// must fail.
+pub fn by_name() -> Vec<Known> {
+    read_known("tests/corpus/worked.sdf", 200)
+}
+
+/// Drawings for single clauses of the recommendations, derived by hand.
+///
+/// # Panics
+/// If the records cannot be read, lack a field or are fewer than 80.
+pub fn by_clause() -> Vec<Known> {
+    read_known("tests/corpus/clauses.sdf", 80)
+}
+
+fn read_known(path: &str, fewest: usize) -> Vec<Known> {
+    let all: Vec<Known> = records(path).into_iter().map(known).collect();
+    assert!(all.len() >= fewest, "{path} has only {}", all.len());
     all
+}
+
+fn known(record: Record) -> Known {
+    let line = record.field("LABELS").expect("LABELS");
+    let is_full = |name| record.field(name).is_some_and(|text| !text.is_empty());
+    assert!(
+        is_full("NAME") && is_full("SOURCE"),
+        "{}: NAME or SOURCE is missing",
+        record.title
+    );
+    Known {
+        labels: Labels::parse(line),
+        title: record.title,
+        drawing: record.drawing,
+    }
 }
 
 /// The worked example with this title.

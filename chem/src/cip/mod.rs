@@ -15,6 +15,8 @@ mod digraph;
 mod engine;
 mod near;
 mod rules;
+#[cfg(test)]
+mod tests;
 mod unit;
 mod why;
 

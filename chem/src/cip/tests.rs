@@ -298,9 +298,11 @@ fn duplicates_at(molecule: &Molecule, root: usize) -> Vec<Ratio> {
     let mut tree = Digraph::new(&context, AtomIx::new(root), 1000);
     tree.grow_all().unwrap();
     nodes(&tree)
-        .map(|ix| tree.node(ix))
-        .filter(|n| n.kind == NodeKind::BondDuplicate && n.sphere == 1)
-        .map(|n| n.number)
+        .filter(|ix| {
+            let node = tree.node(*ix);
+            node.kind == NodeKind::BondDuplicate && node.sphere == 1
+        })
+        .map(|ix| tree.number(ix))
         .collect()
 }
 
@@ -350,7 +352,7 @@ fn duplicates_end_the_path() {
     tree.grow_all().unwrap();
     for ix in nodes(&tree) {
         let node = tree.node(ix);
-        let (kind, massless) = (node.kind, node.mass < 0.5);
+        let (kind, massless) = (node.kind, tree.mass(ix) < 0.5);
         let children = tree.children(ix).unwrap();
         let ends = matches!(
             kind,

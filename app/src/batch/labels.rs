@@ -4,6 +4,7 @@ use super::records::{self, FAULT};
 use super::{Failure, Status, say};
 use crate::args::Labels;
 use crate::files::{FileError, Piece, Source, Target};
+use chem::cip::{Compared, Tie};
 use chem::format::{Notice, ReadError};
 use chem::pipeline::{self, Place};
 use chem::solve::require::Requirement;
@@ -125,7 +126,11 @@ fn in_json(piece: &Piece, file: Option<&str>) -> Answer {
     let (units, faults, error, notices) = match piece.read() {
         Ok(record) => {
             let report = pipeline::report(&record.drawing, &Requirement::default());
-            let units = report.places.iter().map(UnitJson::new).collect();
+            let whys = pipeline::explain(&record.drawing, &report.places);
+            let units = report.places.iter().zip(whys);
+            let units = units
+                .map(|(place, why)| UnitJson::new(place, why))
+                .collect();
             (units, report.faults(), None, record.notices)
         }
         Err(error) => (Vec::new(), Vec::new(), Some(error), Vec::new()),
@@ -196,6 +201,9 @@ struct UnitJson {
     verdict: &'static str,
     rule: Option<&'static str>,
     ranking: Vec<LigandJson>,
+    /// For each two neighbors in the ranking (of a pair, one for each end) what parts them.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    why: Vec<Option<TieJson>>,
     #[serde(skip_serializing_if = "String::is_empty")]
     note: String,
 }
@@ -208,8 +216,45 @@ enum LigandJson {
     Word(&'static str),
 }
 
+#[derive(Serialize)]
+struct TieJson {
+    rule: &'static str,
+    sphere: u32,
+    higher: Vec<ComparedJson>,
+    lower: Vec<ComparedJson>,
+}
+
+/// A member of a set that was compared: its atom, and what the rule sees in it.
+#[derive(Serialize)]
+struct ComparedJson {
+    atom: usize,
+    #[serde(skip_serializing_if = "std::ops::Not::not")]
+    duplicate: bool,
+    sees: String,
+}
+
+impl TieJson {
+    fn new(tie: Tie) -> TieJson {
+        let compared = |set: Vec<Compared>| {
+            set.into_iter()
+                .map(|c| ComparedJson {
+                    atom: c.atom.index() + 1,
+                    duplicate: c.is_duplicate,
+                    sees: c.text,
+                })
+                .collect()
+        };
+        TieJson {
+            rule: tie.rule.name(),
+            sphere: tie.sphere,
+            higher: compared(tie.higher),
+            lower: compared(tie.lower),
+        }
+    }
+}
+
 impl UnitJson {
-    fn new(place: &Place) -> UnitJson {
+    fn new(place: &Place, why: Vec<Option<Tie>>) -> UnitJson {
         let ligand = |ligand: &Ligand| match ligand {
             Ligand::Atom(a) => LigandJson::Atom(a.index() + 1),
             Ligand::Hydrogen => LigandJson::Word("H"),
@@ -223,6 +268,7 @@ impl UnitJson {
             verdict: place.verdict.name(),
             rule: place.rule.map(chem::cip::Rule::name),
             ranking: place.ranking.iter().map(ligand).collect(),
+            why: why.into_iter().map(|tie| tie.map(TieJson::new)).collect(),
             note: place.note.clone(),
         }
     }

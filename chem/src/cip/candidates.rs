@@ -13,6 +13,8 @@ const FEW: usize = 6;
 /// Combinations tried where there are more: a unit that needs two others to differ is missed with a
 /// chance of one in 2^24.
 const ROUNDS: u64 = 24;
+/// Comparisons that all combinations together may take.
+const MOST_WORK: u64 = 1_000_000;
 
 impl Ranker<'_> {
     /// For each unit whether it carries a descriptor or, being open, could carry one while the units that
@@ -58,7 +60,7 @@ impl Ranker<'_> {
     ) {
         let few = open.len() <= FEW;
         let rounds = if few { 1 << open.len() } else { ROUNDS };
-        let before = self.nodes_grown.get();
+        let end = self.work.get() + MOST_WORK;
         for round in 0..rounds {
             let mut tried = configurations.to_vec();
             for (k, ix) in open.iter().enumerate() {
@@ -69,29 +71,21 @@ impl Ranker<'_> {
                 };
                 tried[ix.index()] = Configuration::Defined(Parity::from_even(even));
             }
-            let labels = self.label_defined(&tried);
+            let left = end.saturating_sub(self.work.get());
+            let labels = self.label_within(&tried, left);
             for ix in dependent {
-                let i = ix.index();
-                match labels[i].as_ref().map(|l| l.descriptor) {
-                    Some(Ok(_)) => could[i] = Ok(true),
-                    Some(Err(Missing::Stopped(stop))) => could[i] = Err(stop),
-                    Some(Err(_)) | None => {}
+                let found = &mut could[ix.index()];
+                let label = labels.as_ref().and_then(|l| l[ix.index()].as_ref());
+                match label.map(|l| l.descriptor) {
+                    Some(Ok(_)) => *found = Ok(true),
+                    Some(Err(Missing::Stopped(stop))) if *found == Ok(false) => *found = Err(stop),
+                    Some(Err(_)) => {}
+                    // too much work: whole rounds only count, or the order of atoms would have a say
+                    None if *found == Ok(false) => *found = Err(Stop::Combinations),
+                    None => {}
                 }
             }
-            let unsettled: Vec<UnitIx> = dependent
-                .iter()
-                .copied()
-                .filter(|ix| could[ix.index()] == Ok(false))
-                .collect();
-            if unsettled.is_empty() {
-                return;
-            }
-            // only between rounds, so that the order of atoms has no say in where it stops
-            let grown = self.nodes_grown.get() - before;
-            if grown > 3 * self.limits.nodes && round + 1 < rounds {
-                for ix in unsettled {
-                    could[ix.index()] = Err(Stop::Nodes(grown));
-                }
+            if dependent.iter().all(|ix| could[ix.index()] != Ok(false)) {
                 return;
             }
         }

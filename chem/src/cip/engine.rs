@@ -76,7 +76,8 @@ impl Orders {
     fn set(&mut self, node: NodeIx, ranked: Ranked) {
         let node = node as usize;
         if self.at.len() <= node {
-            self.at.resize(2 * node + 1, 0);
+            self.at.resize((2 * node).max(63) + 1, 0);
+            self.list.reserve(16);
         }
         self.list.push(ranked);
         self.at[node] = u32::try_from(self.list.len()).unwrap_or(0);
@@ -98,6 +99,8 @@ pub(super) struct Engine<'a> {
     reference: Option<AtomIx>,
     work: u64,
     max_work: u64,
+    /// Whether ligands of a focus are compared only once, so that nothing is gained by remembering.
+    pub(super) forgetful: bool,
     /// Ligands of a focus that were compared, by both nodes and the step; the second map holds what
     /// rests on auxiliary descriptors.
     compared: [FxHashMap<u64, Ordering>; 2],
@@ -114,10 +117,16 @@ impl<'a> Engine<'a> {
             reference: None,
             work: 0,
             max_work,
+            forgetful: false,
             compared: Default::default(),
             below: Default::default(),
             across: Default::default(),
         }
+    }
+
+    /// Comparisons made so far.
+    pub(super) fn work(&self) -> u64 {
+        self.work
     }
 
     /// Forgets what rested on auxiliary descriptors: some have changed.
@@ -245,6 +254,9 @@ impl<'a> Engine<'a> {
     /// Compares two branches by one rule; `Greater`: the first ranks higher. Remembered: the ligands of a
     /// focus are compared again for each rule and reference.
     pub(super) fn walk(&mut self, a: Branch, b: Branch, step: Step) -> Result<Ordering, Stop> {
+        if self.forgetful {
+            return self.walk_afresh(a, b, step);
+        }
         let swap = a.node > b.node;
         let (low, high) = if swap { (b, a) } else { (a, b) };
         let key = key(low.node, high.node, step);

@@ -103,6 +103,8 @@ pub enum Stop {
     Nodes(usize),
     /// The rank of a placeholder, or of what hangs on a bond without a stated order, would be needed.
     Placeholder,
+    /// Too many combinations of open units would have to be tried.
+    Combinations,
 }
 
 /// Why a unit has no descriptor.
@@ -122,6 +124,10 @@ impl fmt::Display for Missing {
             Missing::Alike => write!(f, "no rule tells its ligands apart"),
             Missing::Undefined => write!(f, "no configuration is drawn"),
             Missing::Stopped(Stop::Nodes(n)) => write!(f, "not decided: {n} nodes"),
+            Missing::Stopped(Stop::Combinations) => write!(
+                f,
+                "not decided: too many combinations of open places would have to be tried"
+            ),
             Missing::Stopped(Stop::Placeholder) => {
                 write!(
                     f,
@@ -162,8 +168,8 @@ pub struct Ranker<'a> {
     outside_rings: Vec<bool>,
     /// Atoms that hold the ligands of a unit.
     is_focus: Vec<bool>,
-    /// Nodes of all digraphs that later rules needed.
-    nodes_grown: Cell<usize>,
+    /// Comparisons that later rules took so far.
+    work: Cell<u64>,
     by_constitution: Vec<OnceCell<Result<Option<Ranking>, Stop>>>,
 }
 
@@ -179,7 +185,7 @@ impl<'a> Ranker<'a> {
         Ranker {
             units,
             is_focus,
-            nodes_grown: Cell::new(0),
+            work: Cell::new(0),
             context: Context::new(molecule, rings),
             limits,
             outside_rings: units
@@ -258,9 +264,21 @@ impl<'a> Ranker<'a> {
     /// other unit either, or two branches that are the same in space could get different letters. (In a
     /// ring such a place still holds others in their geometry.)
     pub fn label_defined(&self, configurations: &[Configuration]) -> Vec<Option<UnitLabel>> {
+        self.label_within(configurations, u64::MAX)
+            .unwrap_or_default()
+    }
+
+    /// The same, unless the units that depend on others take more than so many comparisons in all: then
+    /// `None`. Which unit comes first has no say in that.
+    fn label_within(
+        &self,
+        configurations: &[Configuration],
+        most_work: u64,
+    ) -> Option<Vec<Option<UnitLabel>>> {
+        let end = self.work.get().saturating_add(most_work);
         let mut counted = configurations.to_vec();
         loop {
-            let labels = self.label_once(configurations, &counted);
+            let labels = self.label_once(configurations, &counted, end)?;
             let mut changed = false;
             for (i, label) in labels.iter().enumerate() {
                 let alike = label
@@ -273,7 +291,7 @@ impl<'a> Ranker<'a> {
             }
             // each round takes a unit out, so this ends
             if !changed || !self.any_dependent(&counted) {
-                return labels;
+                return Some(labels);
             }
         }
     }
@@ -290,7 +308,8 @@ impl<'a> Ranker<'a> {
         &self,
         configurations: &[Configuration],
         counted: &[Configuration],
-    ) -> Vec<Option<UnitLabel>> {
+        most_work: u64,
+    ) -> Option<Vec<Option<UnitLabel>>> {
         let foci = OnceCell::new();
         configurations
             .iter()
@@ -298,9 +317,10 @@ impl<'a> Ranker<'a> {
             .map(|(i, configuration)| match configuration {
                 Configuration::Defined(parity) => {
                     let foci = || foci.get_or_init(|| Foci::of(self.units, counted));
-                    Some(self.label(UnitIx::new(i), *parity, foci))
+                    let label = self.label(UnitIx::new(i), *parity, foci);
+                    (self.work.get() <= most_work).then_some(Some(label))
                 }
-                Configuration::Open | Configuration::Either => None,
+                Configuration::Open | Configuration::Either => Some(None),
             })
             .collect()
     }
@@ -328,7 +348,7 @@ impl<'a> Ranker<'a> {
         let found = match self.by_constitution(unit) {
             Ok(Some(ranking)) => Ok(Some((ranking.clone(), true))),
             Ok(None) => {
-                let counted = &self.nodes_grown;
+                let counted = &self.work;
                 unit::rank_by_all(
                     &self.context,
                     self.units,

@@ -81,7 +81,11 @@ pub(super) fn rank_by_digraph(
     unit: &Unit,
     limits: Limits,
 ) -> Result<Option<Ranking>, Stop> {
-    Sites::rooted(context, unit, limits).rank(unit, Reach::Constitution)
+    let mut sites = Sites::rooted(context, unit, limits);
+    for engine in sites.engines() {
+        engine.forgetful = true;
+    }
+    sites.rank(unit, Reach::Constitution)
 }
 
 /// Ranking by all rules, and whether reflection changes the sense.
@@ -91,17 +95,19 @@ pub(super) fn rank_by_all(
     ix: UnitIx,
     foci: &Foci,
     limits: Limits,
-    counted: &Cell<usize>,
+    counted: &Cell<u64>,
 ) -> Result<Option<(Ranking, bool)>, Stop> {
     let unit = units.get(ix);
     let mut sites = Sites::rooted(context, unit, limits);
     let mut filled = Ok(());
     for engine in sites.engines() {
         filled = filled.and_then(|()| auxiliary::fill(engine, units, ix, foci));
-        counted.set(counted.get() + engine.tree.len());
     }
-    filled?;
-    sites.rank_both_ways(unit)
+    let ranked = filled.and_then(|()| sites.rank_both_ways(unit));
+    for engine in sites.engines() {
+        counted.set(counted.get() + engine.work() + engine.tree.len() as u64);
+    }
+    ranked
 }
 
 /// Ligands of a unit that Rules 1a, 1b and 2 leave tied, group by group.

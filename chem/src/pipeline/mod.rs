@@ -5,7 +5,7 @@ mod carry;
 mod report;
 
 pub use carry::carry;
-pub use report::{Carried, carried, report, why};
+pub use report::{Carried, carried, explain, report, why};
 
 use crate::cip::Rule;
 use crate::drawing::{Drawing, Edit};

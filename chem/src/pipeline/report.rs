@@ -46,23 +46,42 @@ fn reported(
 /// Why the ligands of a place stand in their order: one entry for each two neighbors in it (of a pair,
 /// one for each end); empty where nothing is ranked. See [`Ranker::why`].
 pub fn why(drawing: &Drawing, place: &Place) -> Vec<Option<Tie>> {
+    let mut whys = explain(drawing, std::slice::from_ref(place));
+    whys.pop().unwrap_or_default()
+}
+
+/// [`why`] for several places of one drawing.
+pub fn explain(drawing: &Drawing, places: &[Place]) -> Vec<Vec<Option<Tie>>> {
     let molecule = drawing.molecule();
     let (rings, units) = perceived(drawing);
     let ranker = Ranker::new(molecule, &rings, &units, Limits::default());
     let reading = wedge::read(drawing, &units);
-    let unit = units
+    let configurations = reading.configurations();
+    let dependent = |p: &Place| p.rule.is_some_and(|rule| !rule.is_constitutional());
+    // the letters of other units matter to Rules 3 and later alone
+    let labels = places
         .iter()
-        .find(|(_, u)| u.kind == place.kind && u.atoms().as_slice() == place.atoms.as_slice());
-    let Some((ix, _)) = unit else {
-        return Vec::new();
-    };
-    let labels = ranker.label_all(reading.configurations());
-    let Some(ranking) = &labels[ix.index()].ranking else {
-        return Vec::new();
-    };
-    ranker
-        .why(molecule, reading.configurations(), ix, ranking)
-        .unwrap_or_default()
+        .any(dependent)
+        .then(|| ranker.label_defined(configurations));
+    places
+        .iter()
+        .map(|place| {
+            let unit = units.iter().find(|(_, u)| {
+                u.kind == place.kind && u.atoms().as_slice() == place.atoms.as_slice()
+            });
+            let Some((ix, _)) = unit else {
+                return Vec::new();
+            };
+            let known = labels.as_ref().and_then(|l| l[ix.index()].as_ref());
+            let ranking = match known.and_then(|label| label.ranking.as_ref()) {
+                Some(ranking) => Some(ranking),
+                None => ranker.by_constitution(ix).unwrap_or_default(),
+            };
+            ranking
+                .and_then(|r| ranker.why(molecule, configurations, ix, r).ok())
+                .unwrap_or_default()
+        })
+        .collect()
 }
 
 /// Wedges from whose narrow end no reader learns anything: no unit there, or one whose ligands are alike.

@@ -201,11 +201,7 @@ impl fmt::Display for Reason {
             Reason::CountsEntry {
                 said: Some(said),
                 found,
-            } => write!(
-                f,
-                "the line COUNTS says {} atoms and {} bonds, but there are {} lines of atoms and {} of bonds",
-                said.0, said.1, found.0, found.1
-            ),
+            } => miscounted(f, "the line COUNTS", *said, *found),
             Reason::CountsEntry { said: None, .. } => write!(
                 f,
                 "the line COUNTS (numbers of atoms and bonds) is missing behind BEGIN CTAB"
@@ -220,11 +216,7 @@ impl fmt::Display for Reason {
             Reason::NeedsV3000 => {
                 write!(f, "more than 999 atoms or bonds do not fit a V2000 molfile")
             }
-            Reason::Counts { said, found } => write!(
-                f,
-                "the counts line says {} atoms and {} bonds, but there are {} lines of atoms and {} of bonds",
-                said.0, said.1, found.0, found.1
-            ),
+            Reason::Counts { said, found } => miscounted(f, "the counts line", *said, *found),
             Reason::EndsEarly(what) => write!(f, "the record ends before {what}"),
             Reason::Number { field, text } if text.is_empty() => {
                 write!(f, "{field} is missing")
@@ -252,18 +244,29 @@ impl fmt::Display for Reason {
                 "the aromatic bonds allow no alternating single and double bonds (atom {atom} is left over)"
             ),
             Reason::SeveralPatterns(atoms) => {
+                let list: Vec<String> = atoms.iter().map(usize::to_string).collect();
                 write!(
                     f,
-                    "the aromatic bonds leave open which atom bears hydrogen (of "
-                )?;
-                for (i, a) in atoms.iter().enumerate() {
-                    write!(f, "{}{a}", if i > 0 { ", " } else { "" })?;
-                }
-                write!(f, ")")
+                    "the aromatic bonds leave open which atom bears hydrogen (of {})",
+                    list.join(", ")
+                )
             }
             Reason::NoDrawing(why) => f.write_str(why),
         }
     }
+}
+
+fn miscounted(
+    f: &mut fmt::Formatter<'_>,
+    line: &str,
+    said: (usize, usize),
+    found: (usize, usize),
+) -> fmt::Result {
+    write!(
+        f,
+        "{line} says {} atoms and {} bonds, but there are {} lines of atoms and {} of bonds",
+        said.0, said.1, found.0, found.1
+    )
 }
 
 impl Reason {

@@ -75,7 +75,10 @@ fn repairs_of_v3000_leave_a_notice() {
         let body = |t: &str| t.lines().skip(3).collect::<Vec<_>>().join("\n");
         assert_eq!(body(&written(&record)), body(&plain), "{name}");
     }
-    // blocks that nobody closes; what is in them is kept
+}
+
+#[test]
+fn what_stands_in_a_block_that_nobody_closes_is_kept() {
     let open = ["BEGIN SGROUP", "1 DAT 0 ATOMS=(1 2) FIELDNAME=a"];
     let record = good(&threonine(&open));
     assert_eq!(codes(&record), ["block-end", "sgroup-count"]);
@@ -175,20 +178,31 @@ fn a_table_that_breaks_off_is_refused() {
     }
 }
 
-#[test]
-fn bad_entries_are_refused_at_their_columns() {
-    let atom = |to: &str, columns, reason: &Reason| {
-        let text = changed("5 O 2.5980 -1.5000 0 0", to);
-        refused(&text, 12, Some(columns), reason);
-    };
-    let number = |field, text: &str| Reason::Number {
-        field,
-        text: text.to_owned(),
-    };
-    let range = |field, value, allowed| Reason::OutOfRange {
+fn number(field: &'static str, text: &str) -> Reason {
+    let text = text.to_owned();
+    Reason::Number { field, text }
+}
+
+fn range(field: &'static str, value: i64, allowed: &'static str) -> Reason {
+    Reason::OutOfRange {
         field,
         value,
         allowed,
+    }
+}
+
+fn keyword(found: &str) -> Reason {
+    Reason::Misplaced {
+        found: found.to_owned(),
+        expected: "a keyword with its value (CHG=1)",
+    }
+}
+
+#[test]
+fn bad_atoms_of_v3000_are_refused_at_their_columns() {
+    let atom = |to: &str, columns, reason: &Reason| {
+        let text = changed("5 O 2.5980 -1.5000 0 0", to);
+        refused(&text, 12, Some(columns), reason);
     };
     atom(
         "5 O 2.598 -1.5o 0 0",
@@ -232,10 +246,6 @@ fn bad_entries_are_refused_at_their_columns() {
         (25, 28),
         &range("a mass number", 1000, "0 to 999"),
     );
-    let keyword = |found: &str| Reason::Misplaced {
-        found: found.to_owned(),
-        expected: "a keyword with its value (CHG=1)",
-    };
     atom("5 O 2 1 0 0 CHG", (20, 22), &keyword("CHG"));
     let unknown = |symbol: &str, perhaps| Reason::UnknownElement {
         symbol: symbol.to_owned(),
@@ -248,7 +258,10 @@ fn bad_entries_are_refused_at_their_columns() {
         first: 11,
     };
     atom("4 O 2 1 0 0", (8, 8), &twice);
+}
 
+#[test]
+fn bad_bonds_of_v3000_are_refused_at_their_columns() {
     let bond = |to: &str, columns, reason: &Reason| {
         refused(&changed("5 1 4 6", to), 22, columns, reason);
     };

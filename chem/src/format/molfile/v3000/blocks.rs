@@ -22,7 +22,7 @@ pub(super) struct Table<'a> {
     pub(super) others: Vec<Block<'a>>,
     /// Lines behind the table, as they stand.
     pub(super) behind: Vec<&'a str>,
-    /// The block that was open when the text ended.
+    /// Where the table was when the text ended, if it had not come to its end.
     cut: Option<Cut>,
     /// Line at which the text ended.
     last_line: usize,
@@ -32,8 +32,7 @@ pub(super) struct Table<'a> {
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 enum Cut {
     Atoms,
-    Bonds,
-    Other,
+    Elsewhere,
 }
 
 /// A block other than those of atoms and bonds, or an entry that stands by itself.
@@ -66,6 +65,14 @@ enum Place {
     Behind,
 }
 
+/// What an entry does: names and words in capitals.
+enum Step {
+    Begins(String),
+    Ends(String),
+    /// Neither; its first word.
+    Holds(String),
+}
+
 /// Parts a table; `number` is the line of the counts line before it.
 pub(super) fn part<'a>(
     mut lines: Lines<'a>,
@@ -79,7 +86,7 @@ pub(super) fn part<'a>(
     };
     walk.begin(&mut lines, number)?;
     walk.table.counts_line = lines.number();
-    let ended = walk.to_the_end(&mut lines)?;
+    let ended = walk.walk_on(&mut lines)?;
     let line = lines.number();
     walk.close(ended, line);
     Ok(walk.table)
@@ -112,7 +119,7 @@ impl<'a> Walk<'a, '_> {
     }
 
     /// Goes to the line that ends the molfile; false if there is none.
-    fn to_the_end(&mut self, lines: &mut Lines<'a>) -> Result<bool, ReadError> {
+    fn walk_on(&mut self, lines: &mut Lines<'a>) -> Result<bool, ReadError> {
         loop {
             let number = lines.number();
             if let Place::Behind = self.place {
@@ -162,78 +169,103 @@ impl<'a> Walk<'a, '_> {
 
     fn take(&mut self, entry: Entry<'a>) -> Result<(), ReadError> {
         let [first, second] = entry.head();
-        let (begins, ends) = (first == "BEGIN", first == "END");
+        let step = match first.as_str() {
+            "" => return Ok(()),
+            "BEGIN" => Step::Begins(second),
+            "END" => Step::Ends(second),
+            _ => Step::Holds(first),
+        };
         match &mut self.place {
-            Place::Table if begins => match second.as_str() {
-                "ATOM" => self.place = Place::Atoms,
-                "BOND" => self.place = Place::Bonds,
-                _ => {
-                    self.table.others.push(Block {
-                        name: second,
-                        begin: Some(entry),
-                        entries: Vec::new(),
-                    });
-                    self.place = Place::Other(Vec::new());
-                }
+            Place::Table => return self.in_table(entry, step),
+            Place::Atoms => match step {
+                Step::Ends(name) if name == "ATOM" => self.place = Place::Table,
+                Step::Holds(_) => self.table.atoms.push(entry),
+                Step::Begins(_) | Step::Ends(_) => return self.leave("ATOM", entry),
             },
-            Place::Table if ends && second == "CTAB" => self.place = Place::Behind,
-            Place::Table if ends => {
-                let text = format!("END {second} ends no block and was left out");
+            Place::Bonds => match step {
+                Step::Ends(name) if name == "BOND" => self.place = Place::Table,
+                Step::Holds(_) => self.table.bonds.push(entry),
+                Step::Begins(_) | Step::Ends(_) => return self.leave("BOND", entry),
+            },
+            Place::Other(_) => return self.in_other(entry, step),
+            Place::Behind => {}
+        }
+        Ok(())
+    }
+
+    /// An entry of the table itself.
+    fn in_table(&mut self, entry: Entry<'a>, step: Step) -> Result<(), ReadError> {
+        match step {
+            Step::Begins(name) if name == "ATOM" => self.place = Place::Atoms,
+            Step::Begins(name) if name == "BOND" => self.place = Place::Bonds,
+            Step::Begins(name) => {
+                self.table.others.push(Block {
+                    name,
+                    begin: Some(entry),
+                    entries: Vec::new(),
+                });
+                self.place = Place::Other(Vec::new());
+            }
+            Step::Ends(name) if name == "CTAB" => self.place = Place::Behind,
+            Step::Ends(name) => {
+                let text = format!("END {name} ends no block and was left out");
                 self.notice(entry.line, "block-end", text);
             }
-            Place::Table if first == "COUNTS" && self.table.counts.is_none() => {
+            Step::Holds(word) if word == "COUNTS" && self.table.counts.is_none() => {
                 self.table.counts = Some(entry);
             }
-            Place::Table if first.starts_with(|c: char| c.is_ascii_alphabetic()) => {
+            Step::Holds(word) if word.starts_with(|c: char| c.is_ascii_alphabetic()) => {
                 self.table.others.push(Block {
                     name: String::new(),
                     begin: None,
                     entries: vec![entry],
                 });
             }
-            Place::Table if first.is_empty() => {}
             // an atom or a bond outside of its block
-            Place::Table => {
+            Step::Holds(_) => {
                 let reason = misplaced(&entry, "the beginning of a block");
                 return Err(entry.error(0, entry.len(), reason));
             }
-            Place::Atoms if ends && second == "ATOM" => self.place = Place::Table,
-            Place::Bonds if ends && second == "BOND" => self.place = Place::Table,
-            Place::Atoms | Place::Bonds if begins || ends => {
-                let text = "the end of the block before is missing".to_owned();
-                self.notice(entry.line, "block-end", text);
-                self.place = Place::Table;
-                return self.take(entry);
-            }
-            Place::Atoms if !first.is_empty() => self.table.atoms.push(entry),
-            Place::Bonds if !first.is_empty() => self.table.bonds.push(entry),
-            Place::Atoms | Place::Bonds | Place::Behind => {}
-            Place::Other(open) => {
-                let Some(block) = self.table.others.last_mut() else {
-                    return Ok(());
-                };
-                let cuts = begins && OWN.contains(&second.as_str()) && open.is_empty();
-                if ends && open.is_empty() && second == block.name {
-                    self.place = Place::Table;
-                } else if cuts || (ends && second == "CTAB" && !open.contains(&second)) {
-                    let text = format!("the end of the block {} is missing", block.name);
-                    self.notice(entry.line, "block-end", text);
-                    self.place = Place::Table;
-                    return self.take(entry);
-                } else {
-                    if begins {
-                        open.push(second);
-                    } else if ends && let Some(i) = open.iter().rposition(|name| *name == second) {
-                        open.truncate(i);
-                    } else if ends && second == block.name {
-                        self.place = Place::Table;
-                        return Ok(());
-                    }
-                    block.entries.push(entry);
-                }
-            }
         }
         Ok(())
+    }
+
+    /// An entry of a block that is kept as it stands, or of a block inside of it.
+    fn in_other(&mut self, entry: Entry<'a>, step: Step) -> Result<(), ReadError> {
+        let (Place::Other(open), Some(block)) = (&mut self.place, self.table.others.last_mut())
+        else {
+            return Ok(());
+        };
+        match step {
+            Step::Begins(name) if open.is_empty() && OWN.contains(&name.as_str()) => {
+                let name = block.name.clone();
+                return self.leave(&name, entry);
+            }
+            Step::Begins(name) => open.push(name),
+            Step::Ends(name) => match open.iter().rposition(|other| *other == name) {
+                Some(i) => open.truncate(i),
+                None if name == block.name => {
+                    self.place = Place::Table;
+                    return Ok(());
+                }
+                None if name == "CTAB" => {
+                    let name = block.name.clone();
+                    return self.leave(&name, entry);
+                }
+                None => {}
+            },
+            Step::Holds(_) => {}
+        }
+        block.entries.push(entry);
+        Ok(())
+    }
+
+    /// Leaves a block that does not end before an entry that cannot stand in it.
+    fn leave(&mut self, name: &str, entry: Entry<'a>) -> Result<(), ReadError> {
+        let text = format!("the end of the block {name} is missing");
+        self.notice(entry.line, "block-end", text);
+        self.place = Place::Table;
+        self.take(entry)
     }
 
     fn close(&mut self, ended: bool, line: usize) {
@@ -241,8 +273,7 @@ impl<'a> Walk<'a, '_> {
         self.table.cut = match self.place {
             Place::Behind => None,
             Place::Atoms => Some(Cut::Atoms),
-            Place::Bonds => Some(Cut::Bonds),
-            Place::Table | Place::Other(_) => Some(Cut::Other),
+            Place::Bonds | Place::Table | Place::Other(_) => Some(Cut::Elsewhere),
         };
         if ended && self.table.cut.is_some() {
             let text = "the line END CTAB is missing".to_owned();
@@ -279,24 +310,12 @@ impl Table<'_> {
             Some(word) => whole(entry, word, field),
             None => Err(missing(entry, field)),
         };
-        let atoms = number(0, "the number of atoms")?;
-        let bonds = number(1, "the number of bonds")?;
         let size = |n: i32| usize::try_from(n).unwrap_or(usize::MAX);
-        let said = (size(atoms), size(bonds));
-        if said != found {
-            return Err(match self.cut {
-                Some(Cut::Atoms) if found.0 < said.0 => {
-                    ReadError::line(self.last_line, Reason::EndsEarly("its last atom"))
-                }
-                Some(_) if found.0 == said.0 && found.1 < said.1 => {
-                    ReadError::line(self.last_line, Reason::EndsEarly("its last bond"))
-                }
-                _ => {
-                    let end = words.get(1).map_or(entry.len(), |w| w.at + w.text.len());
-                    let said = Some(said);
-                    entry.error(0, end, Reason::CountsEntry { said, found })
-                }
-            });
+        let atoms = size(number(0, "the number of atoms")?);
+        let bonds = size(number(1, "the number of bonds")?);
+        if (atoms, bonds) != found {
+            let end = words.get(1).map_or(entry.len(), |w| w.at + w.text.len());
+            return Err(self.miscounted(entry, end, (atoms, bonds)));
         }
         // the rest of the entry names nothing that is drawn
         let optional = |i: usize| number(i, "").unwrap_or(0);
@@ -311,5 +330,19 @@ impl Table<'_> {
             chiral: optional(4) == 1,
             line: entry.line,
         })
+    }
+
+    /// Why other numbers are said than found: the text broke off, or a line is lost or one too many.
+    fn miscounted(&self, entry: &Entry<'_>, end: usize, said: (usize, usize)) -> ReadError {
+        let found = (self.atoms.len(), self.bonds.len());
+        let early = |what| ReadError::line(self.last_line, Reason::EndsEarly(what));
+        match self.cut {
+            Some(Cut::Atoms) if found.0 < said.0 => early("its last atom"),
+            Some(_) if found.0 == said.0 && found.1 < said.1 => early("its last bond"),
+            _ => {
+                let said = Some(said);
+                entry.error(0, end, Reason::CountsEntry { said, found })
+            }
+        }
     }
 }

@@ -253,11 +253,9 @@ fn bad_atoms_of_v3000_are_refused_at_their_columns() {
     };
     atom("5 cl 2 1 0 0", (10, 11), &unknown("cl", Some("Cl")));
     atom("5 Me 2 1 0 0", (10, 11), &unknown("Me", None));
-    let twice = Reason::IndexTwice {
-        index: 4,
-        first: 11,
-    };
-    atom("4 O 2 1 0 0", (8, 8), &twice);
+    let twice = Reason::IndexTwice { index: 7, first: 9 };
+    let text = changed("2 C 1.2990 0.7500", "7 C 1.2990 0.7500");
+    refused(&text, 14, Some((8, 8)), &twice);
 }
 
 #[test]
@@ -336,6 +334,25 @@ fn lines_out_of_place_are_refused() {
         Some((8, 23)),
         &misplaced("COUNTS 8", "BEGIN CTAB"),
     );
+}
+
+/// The slip that a real file shows: the index before, where the next one should stand.
+#[test]
+fn an_index_twice_is_a_slip_where_nothing_else_can_be_meant() {
+    let last = &["1 C 0 0 0 0", "2 C 1.5 0 0 0", "2 O 9 0 0 0"];
+    let bonds = &["1 1 1 2"];
+    let record = good(&table(last, bonds, &[]));
+    assert_eq!(codes(&record), ["index-twice"]);
+    let ends = record.drawing.molecule().bond(BondIx::new(0)).ends;
+    assert_eq!(ends.map(AtomIx::index), [0, 1]);
+    // elsewhere it is open which of the two is meant
+    for atoms in [
+        ["10 C 0 0 0 0", "20 C 1.5 0 0 0", "20 O 9 0 0 0"],
+        ["1 C 0 0 0 0", "1 C 1.5 0 0 0", "2 O 9 0 0 0"],
+    ] {
+        let error = bad(&table(&atoms, bonds, &[]));
+        assert!(matches!(error.reason, Reason::IndexTwice { .. }));
+    }
 }
 
 #[test]

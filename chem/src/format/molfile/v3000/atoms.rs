@@ -38,6 +38,50 @@ impl Indices {
         at.ok().and_then(|i| self.list.get(i)).map(|entry| entry.1)
     }
 
+    /// Sorts the list and sees to indices that occur twice. Where the first of two atoms stands at its own
+    /// number and the second at a number that no atom has, the second is a slip for that number; else it
+    /// is open which of them is meant by the index.
+    fn settle(
+        &mut self,
+        entries: &[Entry<'_>],
+        notices: &mut Vec<Notice>,
+    ) -> Result<(), ReadError> {
+        let at_home = |(index, place, _): &(u32, usize, usize)| *index as usize == place + 1;
+        self.list.sort_unstable();
+        let mut slips = Vec::new();
+        for (i, w) in self
+            .list
+            .windows(2)
+            .enumerate()
+            .filter(|(_, w)| w[0].0 == w[1].0)
+        {
+            let (index, place, line) = w[1];
+            let own = u32::try_from(place + 1).unwrap_or(u32::MAX);
+            let free = self
+                .list
+                .binary_search_by_key(&own, |entry| entry.0)
+                .is_err();
+            if !at_home(&w[0]) || !free {
+                let entry = &entries[place];
+                let end = entry.words().next().map_or(0, |w| w.at + w.text.len());
+                let first = w[0].2;
+                return Err(entry.error(0, end, Reason::IndexTwice { index, first }));
+            }
+            slips.push((i + 1, own));
+            notices.push(Notice::new(
+                line,
+                "index-twice",
+                format!("a second atom with the index {index} was read as atom {own}, which it is in the order of the file and no other is"),
+            ));
+        }
+        for (i, own) in slips {
+            self.list[i].0 = own;
+        }
+        self.list.sort_unstable();
+        self.in_order = self.list.iter().all(at_home);
+        Ok(())
+    }
+
     /// Why an index is refused that no atom has.
     pub(super) fn none(&self, index: i32) -> Reason {
         let number = i64::from(index);
@@ -70,7 +114,6 @@ pub(super) fn read(
     };
     for (i, entry) in entries.iter().enumerate() {
         let index = block.atom(entry, tables)?;
-        indices.in_order &= index as usize == i + 1;
         indices.list.push((index, i, entry.line));
     }
     let Block {
@@ -84,15 +127,7 @@ pub(super) fn read(
         ));
     }
     left_out.tell("atoms", notices);
-    if !indices.in_order {
-        indices.list.sort_unstable();
-        if let Some(w) = indices.list.windows(2).find(|w| w[0].0 == w[1].0) {
-            let (index, first) = (w[0].0, w[0].2);
-            let entry = &entries[w[1].1];
-            let end = entry.words().next().map_or(0, |w| w.at + w.text.len());
-            return Err(entry.error(0, end, Reason::IndexTwice { index, first }));
-        }
-    }
+    indices.settle(entries, notices)?;
     Ok(indices)
 }
 

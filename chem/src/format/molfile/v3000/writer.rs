@@ -174,9 +174,13 @@ fn type_of(atom: &Atom) -> String {
     }
 }
 
-/// Whether a placeholder's text can stand as its type.
+/// Whether a placeholder's text can stand as its type. `L` is a list of V2000, whose elements stood
+/// elsewhere; rests with names such as `R1A` are of neither version.
 fn names_type(alias: &str) -> bool {
-    symbol::is_placeholder(alias) || is_list(alias) || is_generic(alias)
+    let usual = symbol::is_placeholder(alias) && alias != "L";
+    let numbered = symbol::rest_number(alias).is_some();
+    let rest = alias.starts_with('R') && !matches!(alias, "R" | "R#") && !numbered;
+    (usual && !rest) || is_list(alias) || is_generic(alias)
 }
 
 /// The text shown in place of an atom that its type does not say.

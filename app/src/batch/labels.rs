@@ -107,11 +107,16 @@ fn in_table(piece: &Piece) -> Answer {
             };
         }
     };
-    let labels = pipeline::labels_line(&record.drawing);
+    let carried = pipeline::carried(&record.drawing);
     Answer {
-        line: Some(format!("{}\t{}\t{labels}", piece.number, piece.title())),
+        line: Some(format!(
+            "{}\t{}\t{}",
+            piece.number,
+            piece.title(),
+            carried.labels
+        )),
         error: None,
-        faults: pipeline::faults(&record.drawing),
+        faults: carried.faults,
         notices: record.notices,
     }
 }

@@ -204,7 +204,7 @@ fn written(record: &Record, carries: &str, options: &WriteOptions) -> Result<Str
     if again.stereo_groups != record.stereo_groups {
         return Err("the stereo groups of the new molfile read otherwise".to_owned());
     }
-    if pipeline::labels_line(&again.drawing) == carries {
+    if pipeline::carried(&again.drawing).labels == carries {
         Ok(block)
     } else {
         Err("the new drawing reads otherwise once its coordinates are rounded to the four decimals of a molfile; scale it up".to_owned())

@@ -9,10 +9,14 @@
 //! Inf. Model. 2018, 58, 1755; checked against the drawings of the public CIP Validation Suite.
 
 mod auxiliary;
+mod candidates;
 mod context;
 mod digraph;
 mod engine;
+mod near;
 mod rules;
+#[cfg(test)]
+mod tests;
 mod unit;
 mod why;
 
@@ -24,7 +28,7 @@ use crate::stereo::{Configuration, Descriptor, Ligand, Parity, UnitIx, Units};
 use auxiliary::Foci;
 use context::Context;
 use smallvec::SmallVec;
-use std::cell::OnceCell;
+use std::cell::{Cell, OnceCell};
 use std::fmt;
 
 /// A sequence rule.
@@ -97,7 +101,7 @@ impl Default for Limits {
 pub enum Stop {
     /// The bound was reached, at this many nodes.
     Nodes(usize),
-    /// A placeholder's rank would be needed.
+    /// The rank of a placeholder, or of what hangs on a bond without a stated order, would be needed.
     Placeholder,
 }
 
@@ -121,7 +125,7 @@ impl fmt::Display for Missing {
             Missing::Stopped(Stop::Placeholder) => {
                 write!(
                     f,
-                    "not decided: it depends on what a placeholder stands for"
+                    "not decided: it depends on a placeholder or on a bond whose order is not stated"
                 )
             }
         }
@@ -156,14 +160,26 @@ pub struct Ranker<'a> {
     context: Context,
     limits: Limits,
     outside_rings: Vec<bool>,
+    /// Atoms that hold the ligands of a unit.
+    is_focus: Vec<bool>,
+    /// Nodes of all digraphs that later rules needed.
+    nodes_grown: Cell<usize>,
     by_constitution: Vec<OnceCell<Result<Option<Ranking>, Stop>>>,
 }
 
 impl<'a> Ranker<'a> {
     /// Prepares a molecule; nothing is ranked yet.
     pub fn new(molecule: &Molecule, rings: &Rings, units: &'a Units, limits: Limits) -> Ranker<'a> {
+        let mut is_focus = vec![false; molecule.n_atoms()];
+        for (_, unit) in units.iter() {
+            for atom in unit.atoms() {
+                is_focus[atom.index()] = true;
+            }
+        }
         Ranker {
             units,
+            is_focus,
+            nodes_grown: Cell::new(0),
             context: Context::new(molecule, rings),
             limits,
             outside_rings: units
@@ -221,13 +237,18 @@ impl<'a> Ranker<'a> {
         )
     }
 
-    /// The labels of all units in a molecule whose units have these configurations.
+    /// The labels of all units in a molecule whose units have these configurations. A unit without one is
+    /// [`Missing::Undefined`] if it could carry a descriptor, else [`Missing::Alike`].
     pub fn label_all(&self, configurations: &[Configuration]) -> Vec<UnitLabel> {
         let defined = self.label_defined(configurations);
+        let could = self.could_carry(configurations);
         defined
             .into_iter()
+            .zip(could)
             .enumerate()
-            .map(|(i, label)| label.unwrap_or_else(|| self.undefined(UnitIx::new(i))))
+            .map(|(i, (label, could))| {
+                label.unwrap_or_else(|| self.undefined(UnitIx::new(i), could))
+            })
             .collect()
     }
 
@@ -284,10 +305,12 @@ impl<'a> Ranker<'a> {
             .collect()
     }
 
-    fn undefined(&self, unit: UnitIx) -> UnitLabel {
-        let (missing, ranking) = match self.by_constitution(unit) {
-            Ok(ranking) => (Missing::Undefined, ranking.cloned()),
-            Err(stop) => (Missing::Stopped(stop), None),
+    fn undefined(&self, unit: UnitIx, could: Result<bool, Stop>) -> UnitLabel {
+        let (missing, ranking) = match (self.by_constitution(unit), could) {
+            (Err(stop), _) | (Ok(None), Err(stop)) => (Missing::Stopped(stop), None),
+            (Ok(Some(ranking)), _) => (Missing::Undefined, Some(ranking.clone())),
+            (Ok(None), Ok(true)) => (Missing::Undefined, None),
+            (Ok(None), Ok(false)) => (Missing::Alike, None),
         };
         UnitLabel {
             descriptor: Err(missing),
@@ -304,7 +327,17 @@ impl<'a> Ranker<'a> {
         let kind = self.units.get(unit).kind;
         let found = match self.by_constitution(unit) {
             Ok(Some(ranking)) => Ok(Some((ranking.clone(), true))),
-            Ok(None) => unit::rank_by_all(&self.context, self.units, unit, foci(), self.limits),
+            Ok(None) => {
+                let counted = &self.nodes_grown;
+                unit::rank_by_all(
+                    &self.context,
+                    self.units,
+                    unit,
+                    foci(),
+                    self.limits,
+                    counted,
+                )
+            }
             Err(stop) => Err(stop),
         };
         match found {

@@ -8,6 +8,7 @@ use super::auxiliary::{self, Foci};
 use super::context::Context;
 use super::digraph::{Digraph, NodeIx, NodeKind, Nodes, ROOT};
 use super::engine::{Engine, Ranked};
+use super::near;
 use super::rules::Step;
 use super::why::{self, Tie};
 use super::{Limits, Ranking, Rule, Stop};
@@ -16,6 +17,7 @@ use crate::stereo::{
     Descriptor, Focus, Kind, Ligand, Parity, Unit, UnitIx, Units, odd_permutation,
 };
 use smallvec::SmallVec;
+use std::cell::Cell;
 
 /// Which rules may be used.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -67,8 +69,19 @@ pub(super) fn rank_by_constitution(
             odd: false,
         }));
     }
-    let mut sites = Sites::rooted(context, unit, limits);
-    sites.rank(unit, Reach::Constitution)
+    if let Some(ranking) = near::rank(context, unit) {
+        return Ok(Some(ranking));
+    }
+    rank_by_digraph(context, unit, limits)
+}
+
+/// The same on the digraph, whose first two spheres are not looked at beforehand.
+pub(super) fn rank_by_digraph(
+    context: &Context,
+    unit: &Unit,
+    limits: Limits,
+) -> Result<Option<Ranking>, Stop> {
+    Sites::rooted(context, unit, limits).rank(unit, Reach::Constitution)
 }
 
 /// Ranking by all rules, and whether reflection changes the sense.
@@ -78,13 +91,36 @@ pub(super) fn rank_by_all(
     ix: UnitIx,
     foci: &Foci,
     limits: Limits,
+    counted: &Cell<usize>,
 ) -> Result<Option<(Ranking, bool)>, Stop> {
     let unit = units.get(ix);
     let mut sites = Sites::rooted(context, unit, limits);
+    let mut filled = Ok(());
     for engine in sites.engines() {
-        auxiliary::fill(engine, units, ix, foci)?;
+        filled = filled.and_then(|()| auxiliary::fill(engine, units, ix, foci));
+        counted.set(counted.get() + engine.tree.len());
     }
+    filled?;
     sites.rank_both_ways(unit)
+}
+
+/// Ligands of a unit that Rules 1a, 1b and 2 leave tied, group by group.
+pub(super) fn tied_ligands(
+    context: &Context,
+    unit: &Unit,
+    limits: Limits,
+) -> Result<Vec<Vec<Ligand>>, Stop> {
+    let mut sites = Sites::rooted(context, unit, limits);
+    let toward = unit.toward_each_other();
+    let is_pair = matches!(unit.focus, Focus::Pair(_));
+    let mut tied = Vec::new();
+    for (k, engine) in sites.engines().into_iter().enumerate() {
+        let nodes = ligand_nodes(engine, ROOT, is_pair.then_some(toward[k]))?;
+        let (ranked, _) = rank_nodes(engine, ROOT, nodes, Reach::Constitution)?;
+        let groups = ranked.groups().filter(|g| g.len() > 1);
+        tied.extend(groups.map(|g| g.iter().map(|n| ligand(engine, *n)).collect::<Vec<_>>()));
+    }
+    Ok(tied)
 }
 
 /// Descriptor of a unit at a node of a digraph that is about another unit; `far` is the node of the

@@ -5,7 +5,7 @@ mod carry;
 mod report;
 
 pub use carry::carry;
-pub use report::{faults, labels_line, report, why};
+pub use report::{Carried, carried, report, why};
 
 use crate::cip::Rule;
 use crate::drawing::{Drawing, Edit};

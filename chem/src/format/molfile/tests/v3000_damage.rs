@@ -278,7 +278,7 @@ fn bad_bonds_of_v3000_are_refused_at_their_columns() {
     bond(
         "5 11 4 6",
         Some((10, 11)),
-        &range("the type of the bond", 11, "1 to 10"),
+        &range("the type of the bond", 11, "0 to 10"),
     );
     bond(
         "5 1 4",

@@ -66,7 +66,7 @@ impl Block<'_> {
         let kind = u8::try_from(kind)
             .ok()
             .filter(|kind| *kind <= 10)
-            .ok_or_else(|| out_of_range(entry, &word, field, kind, "1 to 10"))?;
+            .ok_or_else(|| out_of_range(entry, &word, field, kind, "0 to 10"))?;
         let mut end = |field| {
             let (index, word) = number(field)?;
             let place = self.atoms.find(index);

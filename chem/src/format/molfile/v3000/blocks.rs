@@ -8,6 +8,10 @@ use super::{missing, whole};
 /// Blocks that stand in a table itself, never in another of its blocks.
 const OWN: [&str; 5] = ["ATOM", "BOND", "SGROUP", "COLLECTION", "OBJ3D"];
 
+/// Blocks inside of each other that are told apart; deeper ones are lines like others, so that the work
+/// stays in bounds.
+pub(super) const DEEPEST: usize = 32;
+
 /// A table, not understood yet.
 #[derive(Debug, Default)]
 pub(super) struct Table<'a> {
@@ -241,7 +245,8 @@ impl<'a> Walk<'a, '_> {
                 let name = block.name.clone();
                 return self.leave(&name, entry);
             }
-            Step::Begins(name) => open.push(name),
+            Step::Begins(name) if open.len() < DEEPEST => open.push(name),
+            Step::Begins(_) => {}
             Step::Ends(name) => match open.iter().rposition(|other| *other == name) {
                 Some(i) => open.truncate(i),
                 None if name == block.name => {

@@ -20,6 +20,7 @@ pub(super) fn read(
     notices: &mut Vec<Notice>,
 ) -> Vec<StereoGroup> {
     let mut groups: Vec<StereoGroup> = Vec::new();
+    let mut places: BTreeMap<GroupKind, usize> = BTreeMap::new();
     let mut first_line = None;
     for entry in blocks
         .iter()
@@ -32,7 +33,8 @@ pub(super) fn read(
             continue;
         }
         first_line = first_line.or(Some(entry.line));
-        match groups.iter_mut().find(|group| group.kind == kind) {
+        let place = *places.entry(kind).or_insert(groups.len());
+        match groups.get_mut(place) {
             None => groups.push(StereoGroup {
                 kind,
                 atoms: members,

@@ -6,6 +6,7 @@ use super::super::columns::integer;
 use super::super::symbol;
 use super::super::writer::{one_line, put};
 use super::atoms::{is_generic, is_list};
+use super::blocks::DEEPEST;
 use super::extra::{END_TABLE, is_default};
 use super::lines::{self, Item};
 use crate::drawing::{Drawing, End, Mark};
@@ -279,7 +280,10 @@ fn parted(extra: &[String]) -> (&[String], &[String]) {
         let mut words = line.split_ascii_whitespace().skip(2);
         let (first, name) = (words.next().unwrap_or(""), words.next().unwrap_or(""));
         if first.eq_ignore_ascii_case("BEGIN") {
-            open.push(name);
+            // as the reader does; the block itself is one more
+            if open.len() <= DEEPEST {
+                open.push(name);
+            }
         } else if first.eq_ignore_ascii_case("END")
             && let Some(i) = open.iter().rposition(|o| o.eq_ignore_ascii_case(name))
         {

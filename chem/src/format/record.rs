@@ -72,15 +72,12 @@ impl Record {
     pub fn with_drawing(mut self, drawing: Drawing) -> Record {
         let mut groups = std::mem::take(&mut self.stereo_groups);
         if !groups.is_empty() && !begins_with(drawing.molecule(), self.drawing.molecule()) {
-            let names: Vec<String> = groups.iter().map(ToString::to_string).collect();
-            self.notices.push(Notice::new(
-                0,
-                "stereo-groups-dropped",
-                format!(
-                    "atoms or bonds have other numbers now; stereo groups left out: {}",
-                    names.join(", ")
-                ),
-            ));
+            let text = format!(
+                "atoms or bonds have other numbers now; stereo groups left out: {}",
+                StereoGroup::list(&groups)
+            );
+            self.notices
+                .push(Notice::new(0, "stereo-groups-dropped", text));
             groups.clear();
         }
         self.with_drawing_and_groups(drawing, groups)

@@ -44,7 +44,20 @@ pub struct StereoGroup {
     pub atoms: Vec<AtomIx>,
 }
 
+/// Atoms and groups that a message names; it counts the others.
+const SHOWN: usize = 12;
+
 impl StereoGroup {
+    /// Groups for a message.
+    pub(super) fn list(groups: &[StereoGroup]) -> String {
+        let shown: Vec<String> = groups.iter().take(SHOWN).map(ToString::to_string).collect();
+        let more = match groups.len().checked_sub(SHOWN) {
+            Some(more @ 1..) => format!(" and {more} more"),
+            _ => String::new(),
+        };
+        shown.join(", ") + &more
+    }
+
     /// The group after its drawing was changed; `None` if no atom of it is left.
     pub fn renumbered(&self, map: &Renumbering) -> Option<StereoGroup> {
         let atoms: Vec<AtomIx> = self.atoms.iter().filter_map(|a| map.atom(*a)).collect();
@@ -58,7 +71,6 @@ impl StereoGroup {
 /// `&1 (atoms 3, 7)`: the kind as chemists write it, atoms from 1.
 impl fmt::Display for StereoGroup {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
-        const SHOWN: usize = 12;
         let word = if self.atoms.len() == 1 {
             "atom"
         } else {
@@ -108,5 +120,9 @@ mod tests {
         assert_eq!(text(GroupKind::And(1), &[2, 6]), "&1 (atoms 3, 7)");
         let many: Vec<usize> = (0..15).collect();
         assert!(text(GroupKind::Or(3), &many).ends_with("12 and 3 more)"));
+        let groups: Vec<StereoGroup> = (1..=14)
+            .map(|n| group(GroupKind::And(n), &[n as usize]))
+            .collect();
+        assert!(StereoGroup::list(&groups).ends_with("&12 (atom 13) and 2 more"));
     }
 }

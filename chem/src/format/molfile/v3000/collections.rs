@@ -54,13 +54,12 @@ pub(super) fn read(
         group.atoms.retain(|a| seen.insert(*a));
     }
     contradictions(&groups, line, notices);
-    let names: Vec<String> = groups.iter().map(ToString::to_string).collect();
     notices.push(Notice::new(
         line,
         "stereo-groups",
         format!(
             "stereo groups are present and kept: {}. Labels tell the isomer that is drawn",
-            names.join(", ")
+            StereoGroup::list(&groups)
         ),
     ));
     groups

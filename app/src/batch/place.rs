@@ -201,6 +201,9 @@ fn written(record: &Record, carries: &str, options: &WriteOptions) -> Result<Str
     let block = molfile::write(record, options).map_err(|e| e.to_string())?;
     let again =
         molfile::read(&block, 1).map_err(|e| format!("the new molfile cannot be read: {e}"))?;
+    if again.stereo_groups != record.stereo_groups {
+        return Err("the stereo groups of the new molfile read otherwise".to_owned());
+    }
     if pipeline::carried(&again.drawing).labels == carries {
         Ok(block)
     } else {

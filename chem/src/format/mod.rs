@@ -9,7 +9,9 @@ mod lines;
 pub mod molfile;
 mod record;
 pub mod sdf;
+mod stereo_group;
 pub mod text;
 
 pub use error::{Notice, ReadError, Reason, WriteError};
-pub use record::{Field, Record, WriteOptions};
+pub use record::{Field, Record, Version, WriteOptions};
+pub use stereo_group::{GroupKind, StereoGroup};

@@ -174,7 +174,7 @@ fn row(
 }
 
 /// Refuses a second bond between the same two atoms.
-fn twice(tables: &Tables) -> Result<(), ReadError> {
+pub(in super::super) fn twice(tables: &Tables) -> Result<(), ReadError> {
     let mut pairs: Vec<(usize, usize, usize)> = tables
         .bonds
         .iter()

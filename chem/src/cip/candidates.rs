@@ -91,20 +91,23 @@ impl Ranker<'_> {
         }
     }
 
-    /// Whether other units could break the ties of a unit: not if two ligands that are alike each hang on
-    /// it alone and hold no unit.
+    /// Whether other units could break the ties of a unit.
     fn may_be_parted(&self, ix: UnitIx) -> bool {
+        match unit::tied_ligands(&self.context, self.units.get(ix), self.limits) {
+            Ok(groups) => !groups.iter().any(|group| self.is_hopeless(ix, group)),
+            Err(_) => true,
+        }
+    }
+
+    /// Whether nothing can part some of these ligands, which are alike by constitution: two of them each
+    /// hang on the unit alone and hold no unit.
+    pub(super) fn is_hopeless(&self, ix: UnitIx, tied: &[Ligand]) -> bool {
         let unit = self.units.get(ix);
-        let Ok(groups) = unit::tied_ligands(&self.context, unit, self.limits) else {
-            return true;
-        };
-        let is_inert = |ligand: &Ligand| match ligand.atom() {
+        let is_inert = |ligand: &&Ligand| match ligand.atom() {
             Some(atom) => self.hangs_inert(unit, atom),
             None => true,
         };
-        !groups
-            .iter()
-            .any(|group| group.iter().filter(|l| is_inert(l)).count() > 1)
+        tied.iter().filter(is_inert).nth(1).is_some()
     }
 
     /// Whether what hangs on a unit by this ligand holds no other unit and leads back to no other ligand.

@@ -347,17 +347,15 @@ impl<'a> Ranker<'a> {
         let kind = self.units.get(unit).kind;
         let found = match self.by_constitution(unit) {
             Ok(Some(ranking)) => Ok(Some((ranking.clone(), true))),
-            Ok(None) => {
-                let counted = &self.work;
-                unit::rank_by_all(
-                    &self.context,
-                    self.units,
-                    unit,
-                    foci(),
-                    self.limits,
-                    counted,
-                )
-            }
+            Ok(None) => unit::rank_by_all(
+                &self.context,
+                self.units,
+                unit,
+                foci(),
+                self.limits,
+                |tied| self.is_hopeless(unit, tied),
+                &self.work,
+            ),
             Err(stop) => Err(stop),
         };
         match found {

@@ -88,26 +88,37 @@ pub(super) fn rank_by_digraph(
     sites.rank(unit, Reach::Constitution)
 }
 
-/// Ranking by all rules, and whether reflection changes the sense.
+/// Ranking by all rules, and whether reflection changes the sense. `is_hopeless` tells of ligands that the
+/// constitution leaves tied whether no other unit can part them, which spares growing the digraph.
 pub(super) fn rank_by_all(
     context: &Context,
     units: &Units,
     ix: UnitIx,
     foci: &Foci,
     limits: Limits,
-    counted: &Cell<u64>,
+    is_hopeless: impl Fn(&[Ligand]) -> bool,
+    work: &Cell<u64>,
 ) -> Result<Option<(Ranking, bool)>, Stop> {
     let unit = units.get(ix);
     let mut sites = Sites::rooted(context, unit, limits);
-    let mut filled = Ok(());
+    let filled = sites.tied_ligands(unit).and_then(|tied| {
+        if tied.iter().any(|group| is_hopeless(group)) {
+            return Ok(false);
+        }
+        for engine in sites.engines() {
+            auxiliary::fill(engine, units, ix, foci)?;
+        }
+        Ok(true)
+    });
+    let found = match filled {
+        Ok(true) => sites.rank_both_ways(unit),
+        Ok(false) => Ok(None),
+        Err(stop) => Err(stop),
+    };
     for engine in sites.engines() {
-        filled = filled.and_then(|()| auxiliary::fill(engine, units, ix, foci));
+        work.set(work.get() + engine.work() + engine.tree.len() as u64);
     }
-    let ranked = filled.and_then(|()| sites.rank_both_ways(unit));
-    for engine in sites.engines() {
-        counted.set(counted.get() + engine.work() + engine.tree.len() as u64);
-    }
-    ranked
+    found
 }
 
 /// Ligands of a unit that Rules 1a, 1b and 2 leave tied, group by group.
@@ -116,17 +127,7 @@ pub(super) fn tied_ligands(
     unit: &Unit,
     limits: Limits,
 ) -> Result<Vec<Vec<Ligand>>, Stop> {
-    let mut sites = Sites::rooted(context, unit, limits);
-    let toward = unit.toward_each_other();
-    let is_pair = matches!(unit.focus, Focus::Pair(_));
-    let mut tied = Vec::new();
-    for (k, engine) in sites.engines().into_iter().enumerate() {
-        let nodes = ligand_nodes(engine, ROOT, is_pair.then_some(toward[k]))?;
-        let (ranked, _) = rank_nodes(engine, ROOT, nodes, Reach::Constitution)?;
-        let groups = ranked.groups().filter(|g| g.len() > 1);
-        tied.extend(groups.map(|g| g.iter().map(|n| ligand(engine, *n)).collect::<Vec<_>>()));
-    }
-    Ok(tied)
+    Sites::rooted(context, unit, limits).tied_ligands(unit)
 }
 
 /// Descriptor of a unit at a node of a digraph that is about another unit; `far` is the node of the
@@ -232,6 +233,20 @@ impl<'e, 'a> Sites<'e, 'a> {
             Sites::Ends(engines) => engines.iter_mut().collect(),
             Sites::Inner(engine, ..) => SmallVec::from_iter([&mut **engine]),
         }
+    }
+
+    /// Ligands at the roots that the constitution leaves tied.
+    fn tied_ligands(&mut self, unit: &Unit) -> Result<Vec<Vec<Ligand>>, Stop> {
+        let toward = unit.toward_each_other();
+        let is_pair = matches!(unit.focus, Focus::Pair(_));
+        let mut tied = Vec::new();
+        for (k, engine) in self.engines().into_iter().enumerate() {
+            let nodes = ligand_nodes(engine, ROOT, is_pair.then_some(toward[k]))?;
+            let (ranked, _) = rank_nodes(engine, ROOT, nodes, Reach::Constitution)?;
+            let groups = ranked.groups().filter(|g| g.len() > 1);
+            tied.extend(groups.map(|g| g.iter().map(|n| ligand(engine, *n)).collect::<Vec<_>>()));
+        }
+        Ok(tied)
     }
 
     fn rank_both_ways(&mut self, unit: &Unit) -> Result<Option<(Ranking, bool)>, Stop> {

@@ -153,6 +153,19 @@ impl Search {
         latest_first.any(|cycle| cycle.len() == other.len() && cycle.iter().all(is_in))
     }
 
+    /// The way by which the search came from one atom to another.
+    fn way(&self, start: AtomIx, goal: AtomIx) -> Vec<AtomIx> {
+        let mut path = Vec::with_capacity(8);
+        path.push(goal);
+        let mut at = goal;
+        while at != start {
+            at = self.from[at.index()];
+            path.push(at);
+        }
+        path.reverse();
+        path
+    }
+
     /// Atoms of a shortest path over ring bonds other than those cut, both ends included.
     fn shortest(
         &mut self,
@@ -169,26 +182,19 @@ impl Search {
         let mut next = 0;
         while let Some(atom) = self.queue.get(next).copied() {
             next += 1;
-            if atom == goal {
-                let mut path = Vec::with_capacity(8);
-                path.push(goal);
-                let mut at = goal;
-                while at != start {
-                    at = self.from[at.index()];
-                    path.push(at);
-                }
-                path.reverse();
-                return Some(path);
-            }
             for n in molecule.neighbors(atom) {
-                if in_ring[n.bond.index()]
-                    && !cut.contains(&n.bond)
-                    && self.seen[n.atom.index()] != self.round
+                if !in_ring[n.bond.index()]
+                    || self.seen[n.atom.index()] == self.round
+                    || cut.contains(&n.bond)
                 {
-                    self.seen[n.atom.index()] = self.round;
-                    self.from[n.atom.index()] = atom;
-                    self.queue.push(n.atom);
+                    continue;
                 }
+                self.seen[n.atom.index()] = self.round;
+                self.from[n.atom.index()] = atom;
+                if n.atom == goal {
+                    return Some(self.way(start, goal));
+                }
+                self.queue.push(n.atom);
             }
         }
         None

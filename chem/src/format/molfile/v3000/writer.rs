@@ -8,7 +8,7 @@ use super::super::writer::{one_line, put};
 use super::atoms::{is_generic, is_list};
 use super::blocks::DEEPEST;
 use super::extra::{END_TABLE, is_default};
-use super::lines::{self, Item};
+use super::lines::{self, Entry, Item};
 use crate::drawing::{Drawing, End, Mark};
 use crate::element::Element;
 use crate::molecule::{Atom, AtomIx, Molecule, Order, Radical};
@@ -26,8 +26,8 @@ const ROOM: usize = 79 - PREFIX.len();
 /// If something stated of an atom does not fit the format.
 pub(in super::super) fn write(record: &Record, out: &mut String) -> Result<(), WriteError> {
     let m = record.drawing.molecule();
-    let (inside, behind) = parted(&record.extra);
-    let others = Others::of(inside);
+    let extra: Vec<String> = record.extra.iter().map(|line| one_line(line)).collect();
+    let others = Others::of(&extra);
     let labels: Vec<String> = m
         .atoms()
         .filter_map(|a| Some((a.index() + 1, label_of(m.atom(a))?)))
@@ -53,11 +53,11 @@ pub(in super::super) fn write(record: &Record, out: &mut String) -> Result<(), W
     }
     entry(out, "END ATOM");
     bonds(out, &record.drawing);
-    kept(out, inside, &labels, &groups);
+    kept(out, &extra, &others, &labels, &groups);
     out.push_str(END_TABLE);
     out.push('\n');
-    for line in behind {
-        out.push_str(&one_line(line));
+    for line in extra.iter().skip(others.n_inside + 1) {
+        out.push_str(line);
         out.push('\n');
     }
     out.push_str("M  END\n");
@@ -244,85 +244,103 @@ fn collection(group: &StereoGroup) -> Option<String> {
 
 /// The extra lines of the table, with our own entries in their blocks: there should be one block of each
 /// name. Collections come last, since they name what stands before.
-fn kept(out: &mut String, inside: &[String], labels: &[String], groups: &[String]) {
-    let has = |begin: &str| inside.iter().any(|line| line == begin);
+fn kept(out: &mut String, extra: &[String], others: &Others, labels: &[String], groups: &[String]) {
     let block = |out: &mut String, name: &str, entries: &[String]| {
-        if entries.is_empty() || has(&format!("{PREFIX}BEGIN {name}")) {
-            return;
+        if !entries.is_empty() {
+            entry(out, &format!("BEGIN {name}"));
+            entries.iter().for_each(|text| entry(out, text));
+            entry(out, &format!("END {name}"));
         }
-        entry(out, &format!("BEGIN {name}"));
-        entries.iter().for_each(|text| entry(out, text));
-        entry(out, &format!("END {name}"));
     };
-    block(out, "SGROUP", labels);
-    let (mut labels_left, mut groups_left) = (labels, groups);
-    for line in inside {
-        out.push_str(&one_line(line));
+    if others.sgroups_at.is_none() {
+        block(out, "SGROUP", labels);
+    }
+    for (i, line) in extra.iter().enumerate().take(others.n_inside) {
+        if others.sgroups_at == Some(i) {
+            labels.iter().for_each(|text| entry(out, text));
+        }
+        if others.collections_at == Some(i) {
+            groups.iter().for_each(|text| entry(out, text));
+        }
+        out.push_str(line);
         out.push('\n');
-        let ours = match line.strip_prefix(PREFIX) {
-            Some("BEGIN SGROUP") => std::mem::take(&mut labels_left),
-            Some("BEGIN COLLECTION") => std::mem::take(&mut groups_left),
-            _ => continue,
-        };
-        ours.iter().for_each(|text| entry(out, text));
     }
-    block(out, "COLLECTION", groups);
+    if others.collections_at.is_none() {
+        block(out, "COLLECTION", groups);
+    }
 }
 
-/// Extra lines in the table, and those behind it.
-fn parted(extra: &[String]) -> (&[String], &[String]) {
-    let mut open: Vec<&str> = Vec::new();
-    for (i, line) in extra.iter().enumerate() {
-        if open.is_empty() && line == END_TABLE {
-            let (inside, behind) = extra.split_at(i);
-            return (inside, behind.get(1..).unwrap_or_default());
-        }
-        let mut words = line.split_ascii_whitespace().skip(2);
-        let (first, name) = (words.next().unwrap_or(""), words.next().unwrap_or(""));
-        if first.eq_ignore_ascii_case("BEGIN") {
-            // as the reader does; the block itself is one more
-            if open.len() <= DEEPEST {
-                open.push(name);
-            }
-        } else if first.eq_ignore_ascii_case("END")
-            && let Some(i) = open.iter().rposition(|o| o.eq_ignore_ascii_case(name))
-        {
-            open.truncate(i);
-        }
-    }
-    (extra, &[])
-}
-
-/// What the extra lines of a table hold, as COUNTS must say it.
-#[derive(Clone, Copy, Debug, Default)]
+/// What the extra lines of a record hold, as COUNTS must say it, and where our own entries can join them.
+#[derive(Debug, Default)]
 struct Others {
+    /// Lines of the table; one that ends it may follow, and lines behind it.
+    n_inside: usize,
     sgroups: usize,
     objects: usize,
     /// The greatest index of an S-group.
     last_sgroup: usize,
+    /// The line behind the beginning of the first block of S-groups.
+    sgroups_at: Option<usize>,
+    /// The line behind the beginning of the first block of collections.
+    collections_at: Option<usize>,
+    /// Names of the blocks that are open.
+    open: Vec<String>,
 }
 
 impl Others {
-    fn of(lines: &[String]) -> Others {
-        let text = lines.join("\n");
-        let mut lines = Lines::new(&text, 1);
-        let mut others = Others::default();
-        let mut block = String::new();
+    /// Looks through the entries: a line that another goes on with may look like the beginning of a block.
+    fn of(extra: &[String]) -> Others {
+        let text = extra.join("\n");
+        let mut lines = Lines::new(&text, 0);
+        let mut others = Others {
+            n_inside: extra.len(),
+            ..Others::default()
+        };
         while let Some(item) = lines::next(&mut lines, &mut Vec::new()) {
             let Item::Entry(entry) = item else { continue };
             let [first, second] = entry.head();
-            match (first.as_str(), block.as_str()) {
-                ("BEGIN", "") => block = second,
-                ("END", name) if name == second => block.clear(),
-                (index, "SGROUP") if !is_default(&entry) => {
-                    let index = integer(index.as_bytes()).unwrap_or(0);
-                    others.sgroups += 1;
-                    others.last_sgroup = others.last_sgroup.max(index.unsigned_abs() as usize);
-                }
-                (_, "OBJ3D") if !is_default(&entry) => others.objects += 1,
-                _ => {}
+            if others.open.is_empty() && first == "END" && second == "CTAB" {
+                others.n_inside = entry.line;
+                break;
             }
+            others.take(&entry, &first, second, lines.number());
         }
+        let n_inside = others.n_inside;
+        let inside = |at: &usize| *at < n_inside;
+        others.sgroups_at = others.sgroups_at.filter(inside);
+        others.collections_at = others.collections_at.filter(inside);
         others
+    }
+
+    fn take(&mut self, entry: &Entry<'_>, first: &str, second: String, behind: usize) {
+        let ends = |open: &[String]| open.iter().rposition(|name| *name == second);
+        match first {
+            "BEGIN" if self.open.is_empty() => {
+                match second.as_str() {
+                    "SGROUP" => self.sgroups_at = self.sgroups_at.or(Some(behind)),
+                    "COLLECTION" => self.collections_at = self.collections_at.or(Some(behind)),
+                    _ => {}
+                }
+                self.open.push(second);
+                return;
+            }
+            // as the reader does; the block itself is one more
+            "BEGIN" if self.open.len() <= DEEPEST => self.open.push(second),
+            "END" => {
+                if let Some(i) = ends(&self.open) {
+                    self.open.truncate(i);
+                }
+            }
+            _ => {}
+        }
+        match self.open.first().map(String::as_str) {
+            Some("SGROUP") if !is_default(entry) => {
+                let index = integer(first.as_bytes()).unwrap_or(0);
+                self.sgroups += 1;
+                self.last_sgroup = self.last_sgroup.max(index.unsigned_abs() as usize);
+            }
+            Some("OBJ3D") if !is_default(entry) => self.objects += 1,
+            _ => {}
+        }
     }
 }

@@ -106,7 +106,7 @@ fn one(piece: &Piece, wish: Wish<'_>, json: bool, file: Option<&str>) -> Answer 
             return answer;
         }
     };
-    let found = audit::audit(&record.drawing, &requirement);
+    let found = audit::audit_record(&record, &requirement);
     let faulty = found
         .iter()
         .any(|f| matches!(f.grade, Grade::Wrong | Grade::Unclear));

@@ -4,7 +4,7 @@ use crate::cip::{Limits, Missing, Ranker, UnitLabel};
 use crate::drawing::{Drawing, Mark};
 use crate::element::Element;
 use crate::molecule::{AtomIx, BondIx, Molecule, Order};
-use crate::perceive::Rings;
+use crate::perceive::{Rings, Symmetry};
 use crate::solve::require::Requirement;
 use crate::solve::search::{Goal, search};
 use crate::stereo::{Configuration, Descriptor, Focus, Kind, Ligand, Unit, UnitIx, Units};
@@ -49,6 +49,7 @@ pub(super) struct Case<'a> {
     pub(super) projections: Vec<(AtomIx, Projection)>,
     center_at: Vec<Option<UnitIx>>,
     solved: OnceCell<Option<Vec<Configuration>>>,
+    symmetry: OnceCell<Symmetry>,
 }
 
 /// Makes a case and gives it to `then`. Labels that are known from a drawing that means the same are not
@@ -96,6 +97,7 @@ impl<'a> Case<'a> {
             labels,
             center_at,
             solved: OnceCell::new(),
+            symmetry: OnceCell::new(),
         }
     }
 
@@ -152,12 +154,53 @@ impl<'a> Case<'a> {
         self.center(atom).is_some_and(|ix| self.is_capable(ix))
     }
 
-    /// Whether marks at a centre can mean something: it is one, and not just two like ligands outside a
-    /// ring. In a ring such an atom may hold others in their geometry.
+    /// Whether marks at a unit can mean something: its ligands differ, or it stands in a ring where it may
+    /// hold another marked place in its geometry.
     pub(super) fn is_readable(&self, ix: UnitIx) -> bool {
-        let alike = self.labels[ix.index()].descriptor == Err(Missing::Alike);
-        let in_ring = |a: AtomIx| self.rings().has_atom(self.molecule(), a);
-        !alike || self.units().get(ix).atoms().into_iter().any(in_ring)
+        if self.labels[ix.index()].descriptor != Err(Missing::Alike) {
+            return true;
+        }
+        match self.units().get(ix).focus {
+            Focus::Center(a) => self.holds_others(a),
+            Focus::Pair(ends) => ends
+                .iter()
+                .any(|a| self.rings().has_atom(self.molecule(), *a)),
+        }
+    }
+
+    /// Whether a ring atom whose ligands are alike may hold others in their geometry: the alike ones are
+    /// its ring bonds, and something else is marked in the same system of rings.
+    fn holds_others(&self, center: AtomIx) -> bool {
+        let molecule = self.molecule();
+        let outside: Vec<u32> = molecule
+            .neighbors(center)
+            .iter()
+            .filter(|n| !self.rings().has_bond(n.bond))
+            .map(|n| self.symmetry().class(n.atom))
+            .collect();
+        if matches!(outside.as_slice(), [a, b] if a == b) {
+            return false;
+        }
+        let mut system = vec![center];
+        let mut seen = vec![false; molecule.n_atoms()];
+        seen[center.index()] = true;
+        let mut next = 0;
+        while let Some(atom) = system.get(next).copied() {
+            next += 1;
+            for n in molecule.neighbors(atom) {
+                if self.rings().has_bond(n.bond) && !seen[n.atom.index()] {
+                    seen[n.atom.index()] = true;
+                    system.push(n.atom);
+                }
+            }
+        }
+        system.iter().skip(1).any(|a| self.has_own_mark(*a))
+    }
+
+    /// Which atoms are alike by the graph alone.
+    pub(super) fn symmetry(&self) -> &Symmetry {
+        self.symmetry
+            .get_or_init(|| Symmetry::find(self.molecule()))
     }
 
     /// Whether anything is narrow at an atom.

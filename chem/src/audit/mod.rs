@@ -18,6 +18,7 @@ pub use clause::{Clause, Source};
 pub use mend::{Mended, Step, Trait, mend};
 
 use crate::drawing::{Drawing, Edit};
+use crate::format::Record;
 use crate::molecule::{AtomIx, BondIx};
 use crate::solve::require::Requirement;
 use case::{Graph, with_case};
@@ -219,7 +220,16 @@ pub fn audit(drawing: &Drawing, requirement: &Requirement) -> Vec<Finding> {
     })
 }
 
-/// The same without the ways to mend, which take the most time.
+/// Everything in a record, as [`audit`], and the marks that reading it left out because they stand where
+/// none can mean anything.
+pub fn audit_record(record: &Record, requirement: &Requirement) -> Vec<Finding> {
+    let mut found = audit(&record.drawing, requirement);
+    found.extend(findings::left_out(record));
+    found.sort_by_key(|f| f.grade);
+    found
+}
+
+/// As [`audit`], without the ways to mend, which take the most time.
 pub fn findings(drawing: &Drawing, requirement: &Requirement) -> Vec<Finding> {
     findings::all_of(drawing, requirement)
 }

@@ -11,7 +11,7 @@ use crate::element::Element;
 use crate::geom::{self, Point, Vec2};
 use crate::molecule::{AtomIx, Order};
 use crate::perceive::Rings;
-use crate::stereo::{Focus, Ligand, Unit, Units};
+use crate::stereo::{Focus, Unit, Units};
 use std::f64::consts::{FRAC_PI_2, PI};
 
 /// Two lines within 10 degrees of each other count as parallel.
@@ -23,7 +23,7 @@ const SLANTED: f64 = 0.81;
 /// A convention of perspective.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
 pub enum Projection {
-    /// An upright cross: chain in one line, its ligands across.
+    /// A cross: chain in one line, its ligands across.
     Fischer,
     /// A ring seen from its edge, its ligands straight up and down.
     Haworth,
@@ -115,36 +115,36 @@ fn tilt(v: Vec2, axis: Vec2) -> f64 {
     angle.min(PI - angle)
 }
 
-/// Four plain bonds as an upright cross, carbon in one line and at least one hydrogen or heteroatom across.
+/// Four plain bonds as a cross, carbon in one line and at least one hydrogen or heteroatom across. The
+/// cross may be turned: the convention wants it upright, but who draws it so means it so.
 fn is_cross(drawing: &Drawing, rings: &Rings, unit: &Unit, center: AtomIx) -> bool {
     let molecule = drawing.molecule();
-    if unit.ligands.iter().any(|l| l.atom().is_none())
-        || molecule.element(center) != Element::C
+    if molecule.element(center) != Element::C
         || rings.has_atom(molecule, center)
         || !is_unmarked(drawing, center)
     {
         return false;
     }
-    [Vec2::new(0.0, 1.0), Vec2::new(1.0, 0.0)]
+    let mut arms: Vec<(AtomIx, Vec2)> = Vec::new();
+    for ligand in &unit.ligands {
+        let arm = |a: AtomIx| Some((a, drawing.direction(center, a)?));
+        let Some(arm) = ligand.atom().and_then(arm) else {
+            return false;
+        };
+        arms.push(arm);
+    }
+    let carbon = |(a, _): &(AtomIx, Vec2)| molecule.element(*a) == Element::C;
+    let opposite = |p: &(AtomIx, Vec2), q: &(AtomIx, Vec2)| geom::between(p.1, q.1) > PI - PARALLEL;
+    [(0, 1, 2, 3), (0, 2, 1, 3), (0, 3, 1, 2), (1, 2, 0, 3), (1, 3, 0, 2), (2, 3, 0, 1)]
         .iter()
-        .any(|chain| {
-            let (mut along, mut across) = (Vec::new(), Vec::new());
-            for atom in unit.ligands.iter().filter_map(|l: &Ligand| l.atom()) {
-                let Some(v) = drawing.direction(center, atom) else {
-                    return false;
-                };
-                if tilt(v, *chain) < PARALLEL {
-                    along.push((atom, v));
-                } else if tilt(v, *chain) > FRAC_PI_2 - PARALLEL {
-                    across.push((atom, v));
-                }
-            }
-            let opposite = |pair: &[(AtomIx, Vec2)]| matches!(pair, [a, b] if a.1.dot(b.1) < -0.9);
-            let carbon = |(a, _): &(AtomIx, Vec2)| molecule.element(*a) == Element::C;
-            opposite(&along)
-                && opposite(&across)
-                && along.iter().all(carbon)
-                && !across.iter().all(carbon)
+        .any(|(p, q, r, s)| {
+            let [p, q, r, s] = [p, q, r, s].map(|i| &arms[*i]);
+            opposite(p, q)
+                && opposite(r, s)
+                && tilt(p.1, r.1) > FRAC_PI_2 - PARALLEL
+                && carbon(p)
+                && carbon(q)
+                && !(carbon(r) && carbon(s))
         })
 }
 

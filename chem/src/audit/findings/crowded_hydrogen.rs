@@ -10,6 +10,10 @@ use crate::molecule::AtomIx;
 
 /// Nearer than this part of a bond length to another bond, the letter lies on it.
 const ON_BOND: f64 = 0.2;
+/// Nearer than this to an atom the letters touch.
+const NEAR_ATOM: f64 = 0.4;
+/// Length of the bond to a hydrogen, in bond lengths.
+const LENGTH: f64 = 0.75;
 /// Rings up to this size have no room for a letter.
 const SMALL_RING: usize = 7;
 
@@ -23,6 +27,10 @@ pub(super) fn find(case: &Case<'_>, out: &mut Vec<Finding>) {
             let Some(what) = crowd(case, a, case.drawing.point(spoke.atom)) else {
                 continue;
             };
+            // where rings meet all round a centre its hydrogen stands in one of them
+            if free_spots(case, a, spoke.atom).is_empty() {
+                continue;
+            }
             let text = format!(
                 "the hydrogen, atom {}, at atom {} is drawn {what}",
                 n(spoke.atom),
@@ -39,6 +47,45 @@ pub(super) fn find(case: &Case<'_>, out: &mut Vec<Finding>) {
             ));
         }
     }
+}
+
+/// Places for a drawn hydrogen in the gaps between the other bonds of its centre, the widest gap first,
+/// clear of rings, bonds and atoms.
+pub(in super::super) fn free_spots(
+    case: &Case<'_>,
+    center: AtomIx,
+    hydrogen: AtomIx,
+) -> Vec<Point> {
+    let drawing = case.drawing;
+    let directions: Vec<_> = case
+        .molecule()
+        .neighbors(center)
+        .iter()
+        .filter(|m| m.atom != hydrogen)
+        .filter_map(|m| drawing.direction(center, m.atom))
+        .collect();
+    let mut gaps = geom::gaps(&directions);
+    gaps.sort_by(|a, b| b.1.total_cmp(&a.1));
+    let near = NEAR_ATOM * drawing.bond_length();
+    let is_taken = |spot: Point| {
+        let others = case.molecule().atoms();
+        others
+            .filter(|a| *a != center && *a != hydrogen)
+            .any(|a| drawing.point(a).distance(spot) < near)
+    };
+    let mut spots = Vec::new();
+    for (middle, wide) in gaps {
+        // as far from the middle as leaves 30 degrees on the nearer side
+        let turn = (wide / 2.0 - 0.52).clamp(0.0, 0.35);
+        for shift in [0.0, turn, -turn] {
+            let length = LENGTH * drawing.bond_length();
+            let spot = drawing.point(center) + geom::unit(middle + shift) * length;
+            if !is_crowded(case, center, spot) && !is_taken(spot) {
+                spots.push(spot);
+            }
+        }
+    }
+    spots
 }
 
 /// Whether a hydrogen of `center` at `spot` would stand in the way of something.

@@ -7,9 +7,9 @@ use super::super::clause;
 use super::super::words::{mark, n};
 use super::super::{Finding, Grade, Kind};
 use super::finding;
+use crate::format::Record;
 use crate::molecule::{AtomIx, Order};
-use crate::perceive::Symmetry;
-use crate::stereo::{Ligand, Unit};
+use crate::stereo::{Focus, Ligand, Unit};
 
 pub(super) fn find(case: &Case<'_>, out: &mut Vec<Finding>) {
     for w in case.wedges() {
@@ -43,6 +43,34 @@ pub(super) fn find(case: &Case<'_>, out: &mut Vec<Finding>) {
     wavy(case, out);
 }
 
+/// Marks that stood in a record on multiple bonds and were left out when it was read.
+pub(in super::super) fn left_out(record: &Record) -> Vec<Finding> {
+    let molecule = record.drawing.molecule();
+    let mut found = Vec::new();
+    for notice in &record.notices {
+        let ("mark-on-multiple-bond", [a, b]) = (notice.code, notice.atoms.as_slice()) else {
+            continue;
+        };
+        let Some(bond) = molecule.bond_between(*a, *b) else {
+            continue;
+        };
+        let text = format!(
+            "the file has a mark on the multiple bond from atom {} to atom {}, where none can mean anything: it was left out",
+            n(*a),
+            n(*b)
+        );
+        found.push(finding(
+            Kind::IdleMark,
+            Grade::Unclear,
+            &[*a],
+            &[bond],
+            text,
+            clause::IDLE,
+        ));
+    }
+    found
+}
+
 fn reason(case: &Case<'_>, w: Wedge) -> String {
     let a = n(w.narrow);
     if w.order != Order::Single {
@@ -66,14 +94,12 @@ fn reason(case: &Case<'_>, w: Wedge) -> String {
 
 /// Wavy bonds at which nothing can be unknown.
 fn wavy(case: &Case<'_>, out: &mut Vec<Finding>) {
-    let mut symmetry = None;
     for w in case.wavy() {
         let units = case.units();
         let mut here = units
             .iter()
             .filter(|(_, u)| u.atoms().contains(&w.narrow) || u.atoms().contains(&w.wide));
-        let known = symmetry.get_or_insert_with(|| Symmetry::find(case.molecule()));
-        if here.any(|(_, u)| can_be_unknown(case, known, u)) {
+        if here.any(|(_, u)| can_be_unknown(case, u)) {
             continue;
         }
         let text = format!(
@@ -92,17 +118,17 @@ fn wavy(case: &Case<'_>, out: &mut Vec<Finding>) {
     }
 }
 
-/// Whether an unit may have a configuration. Outside rings two ligands of one class are alike, unless
+/// Whether a unit may have a configuration. Outside rings two ligands of one class are alike, unless
 /// some unit with a configuration tells them apart.
-fn can_be_unknown(case: &Case<'_>, symmetry: &Symmetry, unit: &Unit) -> bool {
+fn can_be_unknown(case: &Case<'_>, unit: &Unit) -> bool {
     let in_ring = |a: AtomIx| case.rings().has_atom(case.molecule(), a);
     if unit.atoms().into_iter().any(in_ring) {
         return true;
     }
-    let class = |l: &Ligand| l.atom().map(|a| symmetry.class(a));
+    let class = |l: &Ligand| l.atom().map(|a| case.symmetry().class(a));
     let pairs: &[(usize, usize)] = match unit.focus {
-        crate::stereo::Focus::Center(_) => &[(0, 1), (0, 2), (0, 3), (1, 2), (1, 3), (2, 3)],
-        crate::stereo::Focus::Pair(_) => &[(0, 1), (2, 3)],
+        Focus::Center(_) => &[(0, 1), (0, 2), (0, 3), (1, 2), (1, 3), (2, 3)],
+        Focus::Pair(_) => &[(0, 1), (2, 3)],
     };
     let alike = pairs.iter().any(|(i, j)| {
         let (a, b) = (class(&unit.ligands[*i]), class(&unit.ligands[*j]));

@@ -31,7 +31,8 @@ pub(super) fn find(case: &Case<'_>, out: &mut Vec<Finding>) {
         let (Some(s), Some(t)) = (clockwise(case, p, &first), clockwise(case, q, &last)) else {
             continue;
         };
-        if s != t {
+        // marks at bridgeheads that carry nothing are idle, whatever they say
+        if s != t || !(case.is_stereocenter(a) || case.is_stereocenter(b)) {
             continue;
         }
         let text = format!(

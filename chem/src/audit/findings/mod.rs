@@ -36,7 +36,8 @@ use crate::drawing::Drawing;
 use crate::molecule::{AtomIx, BondIx};
 use crate::solve::require::Requirement;
 
-pub(super) use crowded_hydrogen::is_crowded;
+pub(super) use crowded_hydrogen::{free_spots, is_crowded};
+pub(super) use idle_mark::left_out;
 
 /// How each kind is found.
 fn finder(kind: Kind) -> fn(&Case<'_>, &mut Vec<Finding>) {

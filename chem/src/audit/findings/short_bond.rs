@@ -7,7 +7,7 @@ use super::super::{Finding, Grade, Kind};
 use super::finding;
 
 /// Bonds shorter than this part of the usual length; hydrogens may be drawn closer.
-const SHORT: f64 = 0.5;
+const SHORT: f64 = 0.45;
 const SHORT_TO_HYDROGEN: f64 = 0.3;
 
 pub(super) fn find(case: &Case<'_>, out: &mut Vec<Finding>) {

@@ -59,8 +59,13 @@ impl Check<'_, '_> {
 
     fn is_better(&self, after: &[Finding]) -> bool {
         let place = |f: &Finding| (f.kind, f.atoms.clone());
-        let gone = after.iter().all(|f| place(f) != place(self.finding));
+        // of two marks that are idle at one atom, one may stay for the next mend
+        let here = |list: &[Finding]| {
+            let same = |f: &&Finding| place(f) == place(self.finding);
+            list.iter().filter(same).count()
+        };
         let before = self.before;
+        let gone = here(after) < here(before);
         let no_graver = after
             .iter()
             .all(|f| f.grade >= self.finding.grade || before.iter().any(|b| place(b) == place(f)));

@@ -21,7 +21,7 @@ use super::case::{Graph, with_case};
 use super::{Finding, Grade, Kind, Mend, findings};
 use crate::cip::UnitLabel;
 use crate::drawing::{Drawing, Edit};
-use crate::molecule::AtomIx;
+use crate::molecule::{AtomIx, BondIx};
 use crate::pipeline;
 use crate::solve::require::Requirement;
 
@@ -54,13 +54,16 @@ pub fn mend(drawing: &Drawing, requirement: &Requirement) -> Mended {
     }
 }
 
+/// What a finding is known by from one drawing to the next.
+type Place = (Kind, Vec<AtomIx>, Vec<BondIx>);
+
 /// A drawing on its way.
 struct Work {
     drawing: Drawing,
     graph: Graph,
     /// Labels, while they are those of the drawing.
     labels: Option<Vec<UnitLabel>>,
-    given_up: Vec<(Kind, Vec<AtomIx>)>,
+    given_up: Vec<Place>,
     steps: Vec<Step>,
 }
 
@@ -72,7 +75,7 @@ impl Work {
         let found = with_case(&self.drawing, requirement, &self.graph, known, |case| {
             let all = findings::all(case);
             for i in 0..all.len() {
-                let place = (all[i].kind, all[i].atoms.clone());
+                let place = (all[i].kind, all[i].atoms.clone(), all[i].bonds.clone());
                 if !is_due(&all[i], requirement) || given_up.contains(&place) {
                     continue;
                 }

@@ -1,14 +1,13 @@
 //! The mends of one finding, by its kind.
 
 use super::super::case::Case;
-use super::super::findings::is_crowded;
+use super::super::findings::free_spots;
 use super::super::words::{self, n};
 use super::super::{Finding, Grade, Kind, Mend};
 use super::centre::{self, REACHES};
 use super::check::Check;
 use super::double;
 use crate::drawing::{Edit, Mark};
-use crate::geom;
 use crate::molecule::{AtomIx, BondIx};
 use crate::stereo::{Configuration, Focus, Kind as UnitKind, Parity, UnitIx};
 use crate::wedge;
@@ -283,41 +282,16 @@ impl Proposer<'_, '_> {
             return Vec::new();
         };
         let hydrogen = case.molecule().bond(bond).other(center);
-        let others: Vec<_> = case
-            .molecule()
-            .neighbors(center)
-            .iter()
-            .filter(|m| m.atom != hydrogen)
-            .filter_map(|m| case.drawing.direction(center, m.atom))
-            .collect();
-        let mut gaps = geom::gaps(&others);
-        gaps.sort_by(|a, b| b.1.total_cmp(&a.1));
-        let mut ways = Vec::new();
-        for (middle, _) in gaps {
-            for shift in [0.0, 0.35, -0.35] {
-                let length = 0.75 * case.drawing.bond_length();
-                let spot = case.drawing.point(center) + geom::unit(middle + shift) * length;
-                if is_crowded(case, center, spot) || is_taken(case, center, hydrogen, spot) {
-                    continue;
-                }
+        let ways = free_spots(case, center, hydrogen)
+            .into_iter()
+            .flat_map(|spot| {
                 let moved = Edit::Move(hydrogen, spot);
-                ways.push(vec![moved.clone()]);
-                ways.push(vec![
-                    moved,
-                    Edit::Mark(bond, exchanged(case.drawing.mark(bond))),
-                ]);
-            }
-        }
+                let other = Edit::Mark(bond, exchanged(case.drawing.mark(bond)));
+                [vec![moved.clone()], vec![moved, other]]
+            })
+            .collect();
         self.keeping(ways)
     }
-}
-
-fn is_taken(case: &Case<'_>, center: AtomIx, hydrogen: AtomIx, spot: geom::Point) -> bool {
-    let near = 0.4 * case.drawing.bond_length();
-    case.molecule()
-        .atoms()
-        .filter(|a| *a != center && *a != hydrogen)
-        .any(|a| case.drawing.point(a).distance(spot) < near)
 }
 
 fn exchanged(mark: Mark) -> Mark {

@@ -135,17 +135,24 @@ fn is_cross(drawing: &Drawing, rings: &Rings, unit: &Unit, center: AtomIx) -> bo
     }
     let carbon = |(a, _): &(AtomIx, Vec2)| molecule.element(*a) == Element::C;
     let opposite = |p: &(AtomIx, Vec2), q: &(AtomIx, Vec2)| geom::between(p.1, q.1) > PI - PARALLEL;
-    [(0, 1, 2, 3), (0, 2, 1, 3), (0, 3, 1, 2), (1, 2, 0, 3), (1, 3, 0, 2), (2, 3, 0, 1)]
-        .iter()
-        .any(|(p, q, r, s)| {
-            let [p, q, r, s] = [p, q, r, s].map(|i| &arms[*i]);
-            opposite(p, q)
-                && opposite(r, s)
-                && tilt(p.1, r.1) > FRAC_PI_2 - PARALLEL
-                && carbon(p)
-                && carbon(q)
-                && !(carbon(r) && carbon(s))
-        })
+    [
+        (0, 1, 2, 3),
+        (0, 2, 1, 3),
+        (0, 3, 1, 2),
+        (1, 2, 0, 3),
+        (1, 3, 0, 2),
+        (2, 3, 0, 1),
+    ]
+    .iter()
+    .any(|(p, q, r, s)| {
+        let [p, q, r, s] = [p, q, r, s].map(|i| &arms[*i]);
+        opposite(p, q)
+            && opposite(r, s)
+            && tilt(p.1, r.1) > FRAC_PI_2 - PARALLEL
+            && carbon(p)
+            && carbon(q)
+            && !(carbon(r) && carbon(s))
+    })
 }
 
 /// Two neighbouring centres with four drawn bonds each, whose other ligands stand all round them in the

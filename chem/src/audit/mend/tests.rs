@@ -61,7 +61,12 @@ fn surplus_marks_go_and_atoms_stay() {
 
 #[test]
 fn the_requirement_decides_between_possibilities() {
-    for marks in [[' ', ' ', ' '], ['w', 'h', ' '], ['w', ' ', ' '], ['~', ' ', ' ']] {
+    for marks in [
+        [' ', ' ', ' '],
+        ['w', 'h', ' '],
+        ['w', ' ', ' '],
+        ['~', ' ', ' '],
+    ] {
         for d in [Descriptor::R, Descriptor::S] {
             let drawing = centre([90.0, 210.0, 330.0], marks);
             let mended = mend(&drawing, &asked(0, d));
@@ -93,7 +98,12 @@ fn without_requirement_a_contradiction_is_left_for_a_person() {
 #[test]
 fn a_wedge_with_its_wide_end_at_the_centre_is_turned_round() {
     let drawing = draw(
-        &[("C", 0.0, 0.0), ("N", 0.0, 1.0), ("O", -0.87, -0.5), ("C", 0.87, -0.5)],
+        &[
+            ("C", 0.0, 0.0),
+            ("N", 0.0, 1.0),
+            ("O", -0.87, -0.5),
+            ("C", 0.87, -0.5),
+        ],
         &[(0, 1, 1, ' '), (0, 2, 1, ' '), (3, 0, 1, 'w')],
     );
     let mended = mend(&drawing, &asked(0, Descriptor::R));
@@ -106,11 +116,20 @@ fn a_wedge_with_its_wide_end_at_the_centre_is_turned_round() {
 #[test]
 fn a_crossed_double_bond_becomes_a_wavy_one_or_takes_its_geometry() {
     let drawing = draw(
-        &[("C", -0.5, 0.87), ("C", 0.0, 0.0), ("C", 1.0, 0.0), ("N", 1.5, -0.87)],
+        &[
+            ("C", -0.5, 0.87),
+            ("C", 0.0, 0.0),
+            ("C", 1.0, 0.0),
+            ("N", 1.5, -0.87),
+        ],
         &[(0, 1, 1, ' '), (1, 2, 2, 'x'), (2, 3, 1, ' ')],
     );
     let mended = mend(&drawing, &Requirement::default());
-    let wavy = mended.drawing.marks().iter().filter(|m| matches!(m, Mark::Wavy(_)));
+    let wavy = mended
+        .drawing
+        .marks()
+        .iter()
+        .filter(|m| matches!(m, Mark::Wavy(_)));
     assert_eq!(wavy.count(), 1);
     assert_eq!(labels(&mended.drawing), "");
     for (d, label) in [(Descriptor::E, "2E 3E"), (Descriptor::Z, "2Z 3Z")] {
@@ -145,7 +164,11 @@ fn several_findings_are_mended_one_after_the_other() {
     assert!(before.len() >= 3, "{before:?}");
     let mended = mend(&drawing, &none);
     assert_eq!(labels(&mended.drawing), labels(&drawing));
-    assert!(mended.left.iter().all(|f| f.grade == Grade::Open), "{:?}", mended.left);
+    assert!(
+        mended.left.iter().all(|f| f.grade == Grade::Open),
+        "{:?}",
+        mended.left
+    );
     assert!(mended.steps.len() >= 3);
     assert_eq!(mended.drawing.points(), drawing.points());
 }

@@ -17,7 +17,7 @@ pub(super) fn find(case: &Case<'_>, out: &mut Vec<Finding>) {
         let in_perspective = case.reading.doubt(ix) == Some(Doubt::Perspective);
         let open = case.reading.configuration(ix) == Configuration::Open
             && case.reading.doubt(ix).is_none();
-        if !in_perspective && !(open && is_a_place(case, *a)) {
+        if !(in_perspective || open && is_a_place(case, *a)) {
             continue;
         }
         let clause = match projection {

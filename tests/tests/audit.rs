@@ -1,5 +1,10 @@
 //! Findings against a table of small drawings with sources; findings and mends as properties of all
 //! worked examples.
+#![allow(
+    clippy::expect_used,
+    clippy::panic,
+    reason = "a check that cannot be set up has failed"
+)]
 
 use checks::change::{self, Dice};
 use checks::labels::Labels;

@@ -1,5 +1,6 @@
 //! Why a record could not be read or written, and what was noticed on the way.
 
+use crate::molecule::AtomIx;
 use std::fmt;
 
 /// Something in a file that was repaired or that the reader should know of.
@@ -11,12 +12,26 @@ pub struct Notice {
     pub code: &'static str,
     /// What it is, in a sentence.
     pub text: String,
+    /// The atoms that it is about, where a finding is made of it.
+    pub atoms: Vec<AtomIx>,
 }
 
 impl Notice {
     /// A notice at a line of the file.
     pub fn new(line: usize, code: &'static str, text: String) -> Notice {
-        Notice { line, code, text }
+        Notice {
+            line,
+            code,
+            text,
+            atoms: Vec::new(),
+        }
+    }
+
+    /// The same, about these atoms.
+    #[must_use]
+    pub fn about(mut self, atoms: &[AtomIx]) -> Notice {
+        self.atoms = atoms.to_vec();
+        self
     }
 }
 

@@ -149,7 +149,8 @@ fn mark(row: &BondRow, order: Order, notices: &mut Vec<Notice>) -> Mark {
                     row.ends[0] + 1,
                     row.ends[1] + 1
                 ),
-            ));
+            )
+            .about(&row.ends.map(AtomIx::new)));
             Mark::Plain
         }
     }

@@ -20,6 +20,8 @@ struct Answer {
     notices: Vec<Notice>,
     /// What the labels alone do not show: contradictions, wedges that say nothing.
     faults: Vec<String>,
+    /// Letters that rest on open places.
+    notes: Vec<String>,
 }
 
 pub(super) fn run(args: &Labels) -> Result<Status, Failure> {
@@ -66,11 +68,12 @@ fn one_file(path: &Path, many: bool, args: &Labels, out: &mut Target) -> Result<
                 error: Some(FAULT.to_owned()),
                 notices: Vec::new(),
                 faults: Vec::new(),
+                notes: Vec::new(),
             });
             for notice in &answer.notices {
                 say(&format!("{name}: record {number}, {notice}"));
             }
-            for fault in &answer.faults {
+            for fault in answer.faults.iter().chain(&answer.notes) {
                 say(&format!("{name}: record {number}, {fault}"));
             }
             faulty += usize::from(!answer.faults.is_empty());
@@ -105,6 +108,7 @@ fn in_table(piece: &Piece) -> Answer {
                 error: Some(error.to_string()),
                 notices: Vec::new(),
                 faults: Vec::new(),
+                notes: Vec::new(),
             };
         }
     };
@@ -118,6 +122,7 @@ fn in_table(piece: &Piece) -> Answer {
         )),
         error: None,
         faults: carried.faults,
+        notes: carried.notes,
         notices: record.notices,
     }
 }
@@ -147,6 +152,7 @@ fn in_json(piece: &Piece, file: Option<&str>) -> Answer {
         error: error.map(|e| e.to_string()),
         notices,
         faults,
+        notes: Vec::new(),
     }
 }
 
@@ -197,6 +203,8 @@ struct UnitJson {
     kind: &'static str,
     atoms: Vec<usize>,
     carries: Option<String>,
+    #[serde(skip_serializing_if = "std::ops::Not::not")]
+    provisional: bool,
     sense: &'static str,
     verdict: &'static str,
     rule: Option<&'static str>,
@@ -264,6 +272,7 @@ impl UnitJson {
             kind: place.kind.name(),
             atoms: place.atoms.iter().map(|a| a.index() + 1).collect(),
             carries: place.carries.map(|d| d.to_string()),
+            provisional: place.is_provisional,
             sense: place.sense.name(),
             verdict: place.verdict.name(),
             rule: place.rule.map(chem::cip::Rule::name),

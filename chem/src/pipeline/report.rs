@@ -10,6 +10,9 @@ use crate::solve::require::Requirement;
 use crate::stereo::{Configuration, Descriptor, Focus, Kind, Ligand, Unit, UnitIx, Units};
 use crate::wedge::{self, Reading};
 
+/// What is said of a letter that rests on open places.
+const PROVISIONAL: &str = "provisional: the letter rests on places that are open, and may be another or none once they are drawn";
+
 /// What a drawing carries, and how that stands to a requirement (an empty one asks nothing).
 pub fn report(drawing: &Drawing, requirement: &Requirement) -> Report {
     let (rings, units) = perceived(drawing);
@@ -157,6 +160,8 @@ pub struct Carried {
     pub labels: String,
     /// Contradictions and wedges that say nothing, as [`Report::faults`] gives them.
     pub faults: Vec<String>,
+    /// Letters that are provisional, as [`Report::notes`] gives them.
+    pub notes: Vec<String>,
 }
 
 /// The labels of a drawing alone, and its faults: quicker than a [`report`], since units that the drawing
@@ -178,12 +183,26 @@ pub fn carried(drawing: &Drawing) -> Carried {
         return Carried {
             labels: report.labels_line(),
             faults: report.faults(),
+            notes: report.notes(),
         };
     }
     if !reading.configurations().iter().any(defined) {
         return Carried::default();
     }
-    let labels = ranker().label_defined(reading.configurations());
+    let ranker = ranker();
+    let labels = ranker.label_defined(reading.configurations());
+    let outlook = may_be_provisional(&reading, &labels)
+        .then(|| ranker.outlook(reading.configurations(), &labels));
+    let notes = outlook
+        .map(|outlook| {
+            let concerned = units
+                .iter()
+                .filter(|(ix, _)| outlook.is_provisional[ix.index()]);
+            concerned
+                .map(|(_, unit)| about(&unit.atoms(), PROVISIONAL))
+                .collect()
+        })
+        .unwrap_or_default();
     let list = units
         .iter()
         .zip(labels)
@@ -193,7 +212,24 @@ pub fn carried(drawing: &Drawing) -> Carried {
     Carried {
         labels: spell(list),
         faults: Vec::new(),
+        notes,
     }
+}
+
+/// Whether a letter rests on other units while some unit is open.
+fn may_be_provisional(reading: &Reading, labels: &[Option<UnitLabel>]) -> bool {
+    let rests = |label: &UnitLabel| {
+        let rule = label.ranking.as_ref().map(|r| r.rule);
+        label.descriptor.is_ok() && rule.is_some_and(|r| !r.is_constitutional())
+    };
+    let is_open = |c: &Configuration| !matches!(c, Configuration::Defined(_));
+    labels.iter().flatten().any(rests) && reading.configurations().iter().any(is_open)
+}
+
+/// A sentence about a unit: `atom 3: ...`.
+pub(super) fn about(atoms: &[AtomIx], text: &str) -> String {
+    let numbers: Vec<String> = atoms.iter().map(|a| (a.index() + 1).to_string()).collect();
+    format!("atom {}: {text}", numbers.join(" and "))
 }
 
 /// Whether some mark may have to be spoken of: a unit that cannot be read, or a wedge that does not start
@@ -323,6 +359,7 @@ fn place(
                 .to_owned()
         }
         (None, Err(missing)) => missing.to_string(),
+        (None, Ok(_)) if label.is_provisional => PROVISIONAL.to_owned(),
         (None, Ok(_)) => String::new(),
     };
     Place {
@@ -330,6 +367,7 @@ fn place(
         atoms: unit.atoms().to_vec(),
         must,
         carries,
+        is_provisional: label.is_provisional,
         sense,
         verdict,
         rule: label.ranking.as_ref().map(|r| r.rule),

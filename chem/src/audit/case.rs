@@ -247,7 +247,9 @@ impl<'a> Case<'a> {
         self.units().iter().any(|(_, unit)| match unit.kind {
             Kind::Tetrahedral | Kind::DoubleBond => false,
             Kind::CumulatedAxis | Kind::HinderedAxis => {
-                unit.atoms().contains(&narrow) && unit.ligands.contains(&Ligand::Atom(wide))
+                let speaking = unit.atoms().into_iter().zip(unit.mute);
+                speaking.filter(|(_, mute)| !mute).any(|(a, _)| a == narrow)
+                    && unit.ligands.contains(&Ligand::Atom(wide))
             }
             Kind::Helix => {
                 unit.toward_each_other().contains(&narrow) && unit.atoms().contains(&wide)

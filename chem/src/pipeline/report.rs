@@ -147,7 +147,9 @@ fn speaks_at(unit: &Unit, narrow: AtomIx, wide: AtomIx) -> bool {
         Kind::Tetrahedral => unit.atoms().contains(&narrow),
         Kind::DoubleBond => false,
         Kind::CumulatedAxis | Kind::HinderedAxis => {
-            unit.atoms().contains(&narrow) && unit.ligands.contains(&Ligand::Atom(wide))
+            let speaking = unit.atoms().into_iter().zip(unit.mute);
+            speaking.filter(|(_, mute)| !mute).any(|(a, _)| a == narrow)
+                && unit.ligands.contains(&Ligand::Atom(wide))
         }
         Kind::Helix => unit.toward_each_other().contains(&narrow) && unit.atoms().contains(&wide),
     }

@@ -25,6 +25,7 @@ impl Chain {
             focus: Focus::Pair([self.atoms[0], self.atoms[n - 1]]),
             ligands,
             inner: self.atoms[1..n - 1].iter().copied().collect(),
+            mute: [false; 2],
         }
     }
 }

@@ -36,6 +36,7 @@ pub(super) fn find(molecule: &Molecule, rings: &Rings, list: &mut Vec<Unit>) {
                     focus: Focus::Pair(ends),
                     ligands: [ends[0], ends[0], ends[1], ends[1]].map(Ligand::Atom),
                     inner: path[1..n - 1].iter().copied().collect::<SmallVec<_>>(),
+                    mute: [false; 2],
                 });
             }
         }

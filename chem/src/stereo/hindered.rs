@@ -1,8 +1,10 @@
-//! Hindered axes: a single bond between two flat rings (biaryls, also bridged).
+//! Hindered axes: a single bond between two flat rings (biaryls, also bridged), or between a flat ring and
+//! a flat group (styrenes, anilides, benzamides, vinyl lactams).
 //!
-//! The graph cannot tell whether rotation is hindered, so every such bond is a unit and only a mark at
-//! one of its ends makes it speak. Both ends must lie in unsaturated rings of three to seven atoms:
-//! bold ring bonds of cyclophanes, drawn in perspective, are no axes.
+//! The graph cannot tell whether rotation is hindered, so every such bond is a unit and only a mark on a
+//! ring bond of one of its ends makes it speak. A ring end lies in unsaturated rings of three to seven
+//! atoms: bold ring bonds of cyclophanes, drawn in perspective, are no axes. A wedge that is narrow at a
+//! flat atom outside rings is a slip far more often than an axis, and says nothing.
 
 use super::{Focus, Kind, Ligand, Unit};
 use crate::element::Element;
@@ -33,18 +35,49 @@ fn unit(molecule: &Molecule, rings: &Rings, bond: BondIx) -> Option<Unit> {
     }
     let mut ends = b.ends;
     ends.sort_unstable();
-    let [a, c] = ortho(molecule, rings, ends[0], ends[1])?;
-    let [d, e] = ortho(molecule, rings, ends[1], ends[0])?;
+    let first = ortho(molecule, rings, ends[0], ends[1]);
+    let second = ortho(molecule, rings, ends[1], ends[0]);
+    let (first, second, mute) = match (first, second) {
+        (Some(first), Some(second)) => (first, second, [false; 2]),
+        (Some(first), None) if !rings.has_bond(bond) => (
+            first,
+            group(molecule, rings, ends[1], ends[0])?,
+            [false, true],
+        ),
+        (None, Some(second)) if !rings.has_bond(bond) => (
+            group(molecule, rings, ends[0], ends[1])?,
+            second,
+            [true, false],
+        ),
+        _ => return None,
+    };
     Some(Unit {
         kind: Kind::HinderedAxis,
         focus: Focus::Pair(ends),
-        ligands: [a, c, d, e],
+        ligands: [first[0], first[1], second[0], second[1]],
         inner: SmallVec::new(),
+        mute,
     })
+}
+
+/// The two ligands of a flat atom outside rings at the far end of an axis, the lower one first.
+fn group(molecule: &Molecule, rings: &Rings, end: AtomIx, partner: AtomIx) -> Option<[Ligand; 2]> {
+    let others = flat_neighbors(molecule, end, partner)?;
+    (!rings.has_atom(molecule, end)).then(|| others.map(Ligand::Atom))
 }
 
 /// The two ring neighbors of an axis atom, the lower one first.
 fn ortho(molecule: &Molecule, rings: &Rings, end: AtomIx, partner: AtomIx) -> Option<[Ligand; 2]> {
+    let atoms = flat_neighbors(molecule, end, partner)?;
+    let small = |b: BondIx| rings.smallest_through(b).is_some_and(|n| n <= LARGEST_RING);
+    let near = molecule.neighbors(end).iter();
+    near.filter(|n| n.atom != partner)
+        .all(|n| small(n.bond))
+        .then(|| atoms.map(Ligand::Atom))
+}
+
+/// The two neighbors of a flat atom but the partner, the lower one first.
+fn flat_neighbors(molecule: &Molecule, end: AtomIx, partner: AtomIx) -> Option<[AtomIx; 2]> {
     if molecule.degree(end) != 3 || molecule.hydrogens(end) > 0 {
         return None;
     }
@@ -61,14 +94,13 @@ fn ortho(molecule: &Molecule, rings: &Rings, end: AtomIx, partner: AtomIx) -> Op
         }),
         _ => false,
     };
-    let small = |b: BondIx| rings.smallest_through(b).is_some_and(|n| n <= LARGEST_RING);
-    if !flat || !others().all(|n| small(n.bond)) {
+    if !flat {
         return None;
     }
     let mut atoms: SmallVec<[AtomIx; 2]> = others().map(|n| n.atom).collect();
     atoms.sort_unstable();
     match atoms.as_slice() {
-        [a, b] => Some([Ligand::Atom(*a), Ligand::Atom(*b)]),
+        [a, b] => Some([*a, *b]),
         _ => None,
     }
 }

@@ -122,6 +122,8 @@ pub struct Unit {
     pub ligands: [Ligand; 4],
     /// Atoms of a pair between its ends, from the first to the second.
     pub inner: SmallVec<[AtomIx; 2]>,
+    /// Ends of a pair at which marks say nothing of it: of a hindered axis, one outside rings.
+    pub mute: [bool; 2],
 }
 
 impl Unit {

@@ -14,6 +14,7 @@ pub(super) fn find(molecule: &Molecule, rings: &Rings, list: &mut Vec<Unit>) {
                 focus: Focus::Center(atom),
                 ligands,
                 inner: SmallVec::new(),
+                mute: [false; 2],
             });
         }
     }

@@ -22,7 +22,7 @@ pub(super) fn read(
     unit: &Unit,
 ) -> Result<Configuration, Doubt> {
     let mut seen = None;
-    for k in 0..2 {
+    for k in (0..2).filter(|k| !unit.mute[*k]) {
         let lifts = match lifts(drawing, ends[k], &unit.ligands[2 * k..2 * k + 2])? {
             Lifts::None => continue,
             Lifts::Either => return Ok(Configuration::Either),

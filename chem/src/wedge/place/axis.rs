@@ -26,6 +26,7 @@ pub fn place_axis(
         Kind::CumulatedAxis | Kind::HinderedAxis => {
             let best = [0, 1]
                 .into_iter()
+                .filter(|k| !unit.mute[*k])
                 .filter_map(|k| end(drawing, units, rings, unit, ends, k, parity))
                 .min_by_key(|(cost, _)| *cost);
             best.map(|(_, marks)| marks)

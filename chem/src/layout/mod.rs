@@ -1,12 +1,33 @@
 //! Places for new atoms. Plain geometry: regular polygons, 120-degree turns, the widest gap.
 
+mod assemble;
+mod chains;
+mod cycles;
+mod field;
+mod fit;
+mod frame;
+mod fuse;
 mod graft;
+mod graph;
 mod grow;
+mod judge;
+mod lattice;
+mod lay;
+mod macrocycle;
+mod orient;
+mod overlap;
+mod parts;
+mod planar;
+mod relax;
 mod ring;
+mod rings;
+mod space;
+mod tree;
 mod word;
 
 pub use graft::{Graft, graft};
 pub use grow::atom_at;
+pub use lay::{Layout, Wish, lay_out};
 pub use word::{Word, read};
 
 use crate::molecule::AtomIx;

@@ -16,14 +16,22 @@ pub(super) struct Shapes {
     pub(super) points: Vec<Vec<Point>>,
     /// Blocks of each atom.
     pub(super) of_atom: Vec<Vec<usize>>,
+    /// Rings of each block.
+    pub(super) rings: Vec<Vec<Vec<usize>>>,
 }
+
+/// Nothing is drawn inside rings up to this size.
+const LARGEST_FULL: usize = 9;
 
 impl Shapes {
     pub(super) fn new(graph: &Graph, blocks: Vec<Block>) -> Shapes {
-        let points = blocks
-            .iter()
-            .map(|b| super::rings::lay_block(&Frame::new(graph, b)))
-            .collect();
+        let (mut points, mut rings) = (Vec::new(), Vec::new());
+        for b in &blocks {
+            let frame = Frame::new(graph, b);
+            points.push(super::rings::lay_block(&frame));
+            let named = |r: &Vec<usize>| r.iter().map(|a| frame.atoms[*a]).collect();
+            rings.push(frame.rings.iter().map(named).collect());
+        }
         let mut of_atom = vec![Vec::new(); graph.len()];
         for (i, b) in blocks.iter().enumerate() {
             for a in &b.atoms {
@@ -34,7 +42,16 @@ impl Shapes {
             blocks,
             points,
             of_atom,
+            rings,
         }
+    }
+
+    /// Whether three atoms lie in a small ring.
+    fn in_small_ring(&self, atoms: [usize; 3]) -> bool {
+        self.of_atom[atoms[0]]
+            .iter()
+            .flat_map(|b| &self.rings[*b])
+            .any(|r| r.len() <= LARGEST_FULL && atoms.iter().all(|a| r.contains(a)))
     }
 
     /// Where the block's own layout has an atom of the block.
@@ -165,7 +182,7 @@ impl Assembly<'_> {
                     chains::round_one_bond(self.graph, self.tree, atom, back, side, &items);
                 (items, angles)
             }
-            _ => self.in_gap(at, &bonds, items),
+            _ => self.in_gap(atom, &there, &bonds, items),
         };
         for (item, angle) in items.iter().zip(&angles) {
             if self.tree.is_block(item.node) {
@@ -286,13 +303,37 @@ impl Assembly<'_> {
     }
 
     /// Items in the best gap between bonds, in the best order.
-    fn in_gap(&self, at: Point, bonds: &[Vec2], items: Vec<Item>) -> (Vec<Item>, Vec<f64>) {
+    fn in_gap(
+        &self,
+        atom: usize,
+        there: &[usize],
+        bonds: &[Vec2],
+        items: Vec<Item>,
+    ) -> (Vec<Item>, Vec<f64>) {
+        let at = self.at(atom);
+        let mut gaps = chains::gaps_for(bonds, &items);
+        // the bonds on both sides of a gap
+        let beside = |angle: f64| {
+            (0..bonds.len()).find(|i| {
+                let off = geom::turn(0.0, geom::angle(bonds[*i]) - angle);
+                off < 1e-6 || off > TAU - 1e-6
+            })
+        };
+        let is_open = |gap: &(f64, f64)| match (beside(gap.0), beside(gap.0 + gap.1)) {
+            (Some(i), Some(j)) => {
+                gap.1 > PI || !self.shapes.in_small_ring([atom, there[i], there[j]])
+            }
+            _ => true,
+        };
+        if gaps.iter().any(is_open) {
+            gaps.retain(is_open);
+        }
         let mut orders = vec![items.clone()];
         if items.len() > 1 {
             orders.push(items.iter().rev().copied().collect());
         }
         let mut best: Option<(f64, Vec<Item>, Vec<f64>)> = None;
-        for (start, wide) in chains::gaps_for(bonds, &items) {
+        for (start, wide) in gaps {
             for order in &orders {
                 let angles = chains::shared_out(start, wide, order);
                 let cost: f64 = order
@@ -403,10 +444,9 @@ impl Assembly<'_> {
 
 /// Heaviest first.
 fn heavier(a: Reach, b: Reach) -> std::cmp::Ordering {
-    let far = if (a.far - b.far).abs() < 1e-9 {
-        std::cmp::Ordering::Equal
-    } else {
+    if (a.weight() - b.weight()).abs() < 1e-9 {
         b.far.total_cmp(&a.far)
-    };
-    far.then(b.atoms.total_cmp(&a.atoms))
+    } else {
+        b.weight().total_cmp(&a.weight())
+    }
 }

@@ -62,7 +62,7 @@ impl Frame {
                 .map(|a| leaves(*a).any(|l| graph.near[l.to].len() > 1))
                 .collect(),
             linear: block.atoms.iter().map(|a| graph.is_linear(*a)).collect(),
-            pairs: ring_pairs(graph, &near, local),
+            pairs: ring_pairs(graph, block, &near),
             atoms: block.atoms.clone(),
             bonds,
             near,
@@ -104,21 +104,19 @@ pub(super) fn together(ends: [Point; 2], ligands: [Point; 2]) -> Option<bool> {
     (a.abs() > 0.05 && b.abs() > 0.05).then_some((a > 0.0) == (b > 0.0))
 }
 
-fn ring_pairs(
-    graph: &Graph,
-    near: &[SmallVec<[usize; 4]>],
-    local: impl Fn(usize) -> Option<usize>,
-) -> Vec<RingPair> {
+fn ring_pairs(graph: &Graph, block: &Block, near: &[SmallVec<[usize; 4]>]) -> Vec<RingPair> {
+    let local = |a: usize| block.atoms.binary_search(&a).ok();
+    let is_linear = |a: usize| graph.is_linear(block.atoms[a]);
     let mut pairs = Vec::new();
     for pair in &graph.pairs {
-        let ends = pair.ends.map(&local);
+        let ends = pair.ends.map(local);
         let [Some(p), Some(q)] = ends else { continue };
         let ends = [p, q];
         let mut together = pair.together;
         let mut ligands = [0; 2];
         let mut complete = true;
         for k in 0..2 {
-            let way = toward(near, ends, k);
+            let way = toward(near, &is_linear, ends, k);
             let inside = local(pair.ligands[k]).filter(|l| near[ends[k]].contains(l));
             let other = near[ends[k]].iter().copied().find(|x| Some(*x) != way);
             match (inside, other, way) {
@@ -142,27 +140,31 @@ fn ring_pairs(
 }
 
 /// The neighbour of an end on the way to the other end: that end, or the first of the atoms between.
-fn toward(near: &[SmallVec<[usize; 4]>], ends: [usize; 2], k: usize) -> Option<usize> {
+fn toward(
+    near: &[SmallVec<[usize; 4]>],
+    is_linear: &dyn Fn(usize) -> bool,
+    ends: [usize; 2],
+    k: usize,
+) -> Option<usize> {
     let (start, goal) = (ends[k], ends[1 - k]);
-    // chains of cumulated double bonds are short and do not branch
-    near[start]
-        .iter()
-        .copied()
-        .find(|first| {
-            let (mut last, mut at) = (start, *first);
-            for _ in 0..8 {
-                if at == goal {
-                    return true;
-                }
-                let [a, b] = near[at].as_slice() else {
-                    return false;
-                };
-                let next = if *a == last { *b } else { *a };
-                (last, at) = (at, next);
+    if near[start].contains(&goal) {
+        return Some(goal);
+    }
+    near[start].iter().copied().find(|first| {
+        let (mut last, mut at) = (start, *first);
+        // chains of cumulated double bonds are short
+        for _ in 0..8 {
+            if at == goal {
+                return true;
             }
-            false
-        })
-        .filter(|first| near[start].contains(&goal) == (*first == goal))
+            let next = near[at].iter().copied().find(|x| *x != last);
+            match next {
+                Some(next) if is_linear(at) => (last, at) = (at, next),
+                _ => return false,
+            }
+        }
+        false
+    })
 }
 
 /// Directions for `count` more bonds at an atom whose bonds are `bonds`: the widest gap in equal shares.

@@ -12,6 +12,8 @@ const ON_BOND: f64 = 4.0;
 const NARROW: f64 = 1.6;
 const RING: f64 = 0.9;
 const STUB: f64 = 1.2;
+/// A corner that cannot be seen, because its two bonds are in line.
+const STRAIGHT: f64 = 0.35;
 const WISH: f64 = 60.0;
 /// Atoms that are not joined should keep this distance.
 const APART: f64 = 0.8;
@@ -131,7 +133,11 @@ fn angles(frame: &Frame, points: &[Point]) -> f64 {
                 && geom::gaps(&bonds)
                     .iter()
                     .any(|(_, wide)| (wide - std::f64::consts::PI).abs() < 0.12);
-            narrow + if tee { 0.25 } else { 0.0 }
+            let hidden = bonds.len() == 2
+                && frame.outside[a] == 0
+                && !frame.linear[a]
+                && geom::between(bonds[0], bonds[1]) > 2.85;
+            narrow + if tee { 0.25 } else { 0.0 } + if hidden { STRAIGHT } else { 0.0 }
         })
         .sum()
 }
@@ -171,14 +177,14 @@ fn stubs(frame: &Frame, points: &[Point]) -> f64 {
             let d = p.distance(*end);
             if b != *a && d < APART {
                 let lack = (APART - d) / APART;
-                sum += weight(*a) * lack * lack * 1.5;
+                sum += weight(*a) * lack * lack * 4.0;
             }
         }
         for (b, other) in &ends[k + 1..] {
             let d = other.distance(*end);
             if b != a && d < APART {
                 let lack = (APART - d) / APART;
-                sum += weight(*a) * lack * lack;
+                sum += weight(*a) * lack * lack * 2.5;
             }
         }
         for [p, q] in &frame.bonds {

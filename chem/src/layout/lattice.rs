@@ -205,7 +205,7 @@ fn pull(state: State, circle: Circle, ideal: f64, is_last: bool) -> Option<f64> 
     let turn = geom::turn(ideal, geom::angle(at));
     let ahead = if turn > PI { turn - TAU } else { turn };
     let slack = 0.5 + 1.4 / circle.radius;
-    (off.abs() < 1.45 && ahead.abs() < slack).then_some(PULL * off * off)
+    (off.abs() < 1.9 && ahead.abs() < slack).then_some(PULL * off * off)
 }
 
 /// Whether no two corners share a place.

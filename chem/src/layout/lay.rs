@@ -4,7 +4,7 @@ use super::assemble::{Shapes, assemble};
 use super::frame::together;
 use super::graph::{self, Graph};
 use super::tree::Tree;
-use super::{cycles, orient, overlap, parts};
+use super::{cycles, orient, overlap, parts, settle};
 use crate::geom::Point;
 use crate::molecule::{AtomIx, Molecule};
 use crate::perceive::Rings;
@@ -65,7 +65,8 @@ fn part(graph: &Graph) -> Vec<Point> {
     let shapes = Shapes::new(graph, blocks);
     let mut points = assemble(graph, &tree, &shapes);
     overlap::relieve(graph, &tree, &shapes, &mut points);
-    orient::turn(graph, &shapes, &mut points);
+    settle::settle(graph, &shapes, &mut points);
+    orient::turn(graph, &mut points);
     points
 }
 

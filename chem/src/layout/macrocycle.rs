@@ -7,7 +7,7 @@ use super::judge;
 use super::lattice::{self, Corner, Relation, Way};
 use super::relax::{Spring, Springs, across};
 use crate::geom::{self, Point};
-use std::f64::consts::{FRAC_PI_3, PI, TAU};
+use std::f64::consts::{FRAC_PI_3, TAU};
 
 /// Rings up to this size are regular polygons unless a wished geometry forbids it.
 pub(super) const LARGEST_POLYGON: usize = 8;
@@ -42,7 +42,7 @@ pub(super) fn shapes(frame: &Frame, lay: &dyn Fn(&Frame) -> Vec<Point>) -> Vec<V
     let corners = corners(frame, ring, &clusters);
     let mut shapes = Vec::new();
     for points in closed(&corners, &relations) {
-        shapes.push(settled(frame, ring, &clusters, points));
+        shapes.push(settled(frame, ring, &clusters, &relations, points));
     }
     shapes
 }
@@ -319,7 +319,13 @@ fn crooked(corners: &[Corner], relations: &[Relation]) -> Option<Vec<Point>> {
 }
 
 /// The whole block: clusters set on the large ring, then let go.
-fn settled(frame: &Frame, ring: &[usize], clusters: &[Cluster], way: Vec<Point>) -> Vec<Point> {
+fn settled(
+    frame: &Frame,
+    ring: &[usize],
+    clusters: &[Cluster],
+    relations: &[Relation],
+    way: Vec<Point>,
+) -> Vec<Point> {
     let n = ring.len();
     let mut points = vec![Point::ORIGIN; frame.len()];
     for (a, p) in ring.iter().zip(&way) {
@@ -355,6 +361,7 @@ fn settled(frame: &Frame, ring: &[usize], clusters: &[Cluster], way: Vec<Point>)
             }
         }
     }
+    let crooked = relations.contains(&Relation::Unlike);
     let in_cluster = |a: usize, b: usize| {
         clusters
             .iter()
@@ -372,13 +379,34 @@ fn settled(frame: &Frame, ring: &[usize], clusters: &[Cluster], way: Vec<Point>)
         if !in_cluster(a, c) {
             springs.list.push(Spring {
                 ends: [a, c],
-                length: if frame.linear[b] {
-                    2.0
-                } else {
-                    corner_width(n)
+                length: match frame.linear[b] {
+                    true => 2.0,
+                    false if crooked => 3.0f64.sqrt(),
+                    false => corner_width(n),
                 },
                 force: 0.7,
             });
+        }
+        if relations[i] != Relation::Free {
+            let is_alike = relations[i] == Relation::Alike;
+            springs.list.push(Spring {
+                ends: [ring[(i + n - 1) % n], c],
+                length: if is_alike { 2.0 } else { 7.0f64.sqrt() },
+                force: 0.7,
+            });
+        }
+    }
+    if crooked && n < 10 {
+        // no lattice way closes so small a ring: what keeps its inward corner is memory
+        for i in 0..n {
+            for j in i + 2..n {
+                let ends = [ring[i], ring[j]];
+                springs.list.push(Spring {
+                    ends,
+                    length: points[ends[0]].distance(points[ends[1]]),
+                    force: 0.3,
+                });
+            }
         }
     }
     springs.relax(&mut points, 600);
@@ -405,6 +433,5 @@ pub(super) fn objections(frame: &Frame, points: &[Point]) -> f64 {
             }
         }
     }
-    debug_assert!(PI > 3.0);
     sum
 }

@@ -37,6 +37,7 @@ impl Move {
     /// What a drawing loses by it.
     fn price(self) -> f64 {
         match self {
+            // more where it breaks a chain, see `breaks`
             Move::Flip => 0.03,
             Move::Swing(by) => 0.15 + 0.5 * by.abs(),
             Move::Stretch(by) => 0.4 + 2.0 * by,
@@ -169,7 +170,8 @@ impl Relief<'_> {
                 let Some(motion) = self.motion(*node, *kind) else {
                     continue;
                 };
-                let gain = self.gain(field, *node, motion) - kind.price();
+                let price = kind.price() + self.breaks(*node, *kind);
+                let gain = self.gain(field, *node, motion) - price;
                 let is_best = best.as_ref().is_none_or(|b| gain > b.gain + 1e-9);
                 if gain > WORTH && is_best && self.is_allowed(*node, motion, *kind) {
                     best = Some(Trial {
@@ -193,7 +195,8 @@ impl Relief<'_> {
             if !self.is_allowed(*first, motion, Move::Flip) {
                 continue;
             }
-            let loss = self.gain(field, *first, motion) - Move::Flip.price();
+            let price = Move::Flip.price() + self.breaks(*first, Move::Flip);
+            let loss = self.gain(field, *first, motion) - price;
             let before = self.points.clone();
             self.make(*first, motion);
             let field = Field::new(self.graph, &self.points);
@@ -208,6 +211,35 @@ impl Relief<'_> {
             self.points = before;
         }
         false
+    }
+
+    /// What a flip costs because a long chain then no longer goes on in a zigzag; less than nothing where
+    /// it does so only then.
+    fn breaks(&self, node: usize, kind: Move) -> f64 {
+        let holder = self.tree.parent[node];
+        if kind != Move::Flip || self.tree.is_block(node) {
+            return 0.0;
+        }
+        let heaviest = |atom: usize, but: usize| {
+            self.tree.near[atom]
+                .iter()
+                .filter(|x| **x != but)
+                .map(|x| (self.tree.branch(atom, *x).weight(), *x))
+                .max_by(|a, b| a.0.total_cmp(&b.0).then(b.1.cmp(&a.1)))
+        };
+        let (Some((w, a)), Some((v, b))) = (heaviest(holder, node), heaviest(node, holder)) else {
+            return 0.0;
+        };
+        if self.tree.is_block(a) || self.tree.is_block(b) {
+            return 0.0;
+        }
+        let at = |x: usize| self.points[x];
+        let share = (0.012 * f64::min(w, v)).min(0.5);
+        match together([at(holder), at(node)], [at(a), at(b)]) {
+            Some(true) => -0.5 * share,
+            Some(false) => share,
+            None => 0.0,
+        }
     }
 
     /// The motion of what hangs on a node; `None` if it would change nothing.

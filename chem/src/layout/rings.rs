@@ -4,8 +4,8 @@ use super::frame::Frame;
 use super::judge::objections;
 use super::macrocycle::{self, LARGEST_POLYGON};
 use super::relax::{Spring, Springs, across};
-use super::{fuse, planar, space};
-use crate::geom::Point;
+use super::{fuse, invert, planar, space};
+use crate::geom::{self, Point};
 use std::f64::consts::PI;
 
 /// A block drawn this well is not tried in other ways.
@@ -18,7 +18,12 @@ pub(super) fn lay_block(frame: &Frame) -> Vec<Point> {
     let mut best = Best::default();
     let largest = frame.rings.last().map_or(0, Vec::len);
     if largest <= LARGEST_POLYGON {
-        if let Some(points) = fuse::fused(frame, &frame.rings) {
+        if let Some(mut points) = fuse::fused(frame, &frame.rings) {
+            best.offer(frame, points.clone());
+            if best.cost < GOOD {
+                return best.points;
+            }
+            ring_springs(frame, &frame.rings).relax(&mut points, 500);
             best.offer(frame, points);
         }
         if best.cost < GOOD {
@@ -85,9 +90,27 @@ impl Best {
         order.sort_by_key(|f| (std::cmp::Reverse(faces[*f].len()), *f));
         for outer in order.into_iter().take(OUTER) {
             let mut points = planar::points(frame, &faces, outer);
-            face_springs(frame, &faces, outer).relax(&mut points, 900);
-            self.offer(frame, points);
+            let inner: Vec<Vec<usize>> = (0..faces.len())
+                .filter(|f| *f != outer)
+                .map(|f| faces[f].clone())
+                .collect();
+            let springs = ring_springs(frame, &inner);
+            springs.relax(&mut points, 900);
+            if frame.pairs.iter().any(|p| !frame.meets(&points, p)) {
+                invert::meet(frame, &springs, &mut points);
+            }
+            self.offer_kinked(frame, points);
         }
+    }
+
+    /// A layout as it is, and with the corners that lie in line with their neighbours pushed aside.
+    fn offer_kinked(&mut self, frame: &Frame, points: Vec<Point>) {
+        for side in [1.0, -1.0] {
+            if let Some(kinked) = kinked(frame, &points, side) {
+                self.offer(frame, kinked);
+            }
+        }
+        self.offer(frame, points);
     }
 
     /// The best views, let go a little so that no bond is too short.
@@ -100,13 +123,54 @@ impl Best {
         for (_, mut points) in views.into_iter().take(4) {
             self.offer(frame, points.clone());
             view_springs(frame, &points).relax(&mut points, 60);
-            self.offer(frame, points);
+            self.offer_kinked(frame, points);
         }
     }
 }
 
-/// Springs that make each inner face a regular polygon as far as that goes.
-fn face_springs(frame: &Frame, faces: &[Vec<usize>], outer: usize) -> Springs {
+/// How far a corner is pushed out of the line of its neighbours.
+const KINK: f64 = 0.32;
+
+/// The layout with each run of corners that lie in line pushed to one side of its line; `None` if there
+/// is no such run.
+fn kinked(frame: &Frame, points: &[Point], side: f64) -> Option<Vec<Point>> {
+    let is_hidden = |a: usize| match frame.near[a].as_slice() {
+        [b, c] => {
+            let angle = geom::between(points[*b] - points[a], points[*c] - points[a]);
+            !frame.linear[a] && angle > 2.8
+        }
+        _ => false,
+    };
+    let hidden: Vec<usize> = (0..frame.len()).filter(|a| is_hidden(*a)).collect();
+    let mut moved = points.to_vec();
+    let mut done = vec![false; frame.len()];
+    for start in &hidden {
+        if done[*start] {
+            continue;
+        }
+        done[*start] = true;
+        let mut run = vec![*start];
+        let mut at = 0;
+        while let Some(a) = run.get(at).copied() {
+            at += 1;
+            for b in frame.near[a].iter().filter(|b| hidden.contains(b)) {
+                if !done[*b] {
+                    done[*b] = true;
+                    run.push(*b);
+                }
+            }
+        }
+        let near = frame.near[*start].first()?;
+        let across = geom::direction(points[*start], points[*near], 1e-6)?.turn_90();
+        for a in run {
+            moved[a] += across * (side * KINK);
+        }
+    }
+    (!hidden.is_empty()).then_some(moved)
+}
+
+/// Springs that make each of some rings a regular polygon as far as that goes.
+pub(super) fn ring_springs(frame: &Frame, rings: &[Vec<usize>]) -> Springs {
     let mut springs = Springs {
         apart: 0.9,
         push: 1.0,
@@ -119,23 +183,24 @@ fn face_springs(frame: &Frame, faces: &[Vec<usize>], outer: usize) -> Springs {
             force: 4.0,
         });
     }
-    for (_, face) in faces.iter().enumerate().filter(|f| f.0 != outer) {
-        let n = face.len();
+    for ring in rings {
+        let n = ring.len();
         for i in 0..n {
             for k in 2..=n / 2 {
-                let ends = [face[i], face[(i + k) % n]];
+                let ends = [ring[i], ring[(i + k) % n]];
                 if (2 * k == n && i >= k) || frame.joined(ends[0], ends[1]) {
                     continue;
                 }
-                let force = match n {
-                    ..=8 => 0.8,
-                    // large faces only keep open
-                    _ if k == 2 => 0.25,
-                    _ => 0.4 / n as f64,
+                let (length, force) = match n {
+                    ..=8 => (across(n, k), 0.8),
+                    _ if k == 2 && frame.linear[ring[(i + 1) % n]] => (2.0, 2.0),
+                    // large rings only keep open
+                    _ if k == 2 => (across(n, k), 0.25),
+                    _ => (across(n, k), 0.4 / n as f64),
                 };
                 springs.list.push(Spring {
                     ends,
-                    length: across(n, k),
+                    length,
                     force,
                 });
             }

@@ -32,6 +32,13 @@ pub(super) struct Reach {
     pub(super) atoms: f64,
 }
 
+impl Reach {
+    /// One number for both: the main chain is long, but not a thin branch beside a large rest.
+    pub(super) fn weight(self) -> f64 {
+        1.5 * self.far + 0.5 * self.atoms
+    }
+}
+
 /// No parent.
 pub(super) const ROOT: usize = usize::MAX;
 

@@ -312,6 +312,12 @@ impl Assembly<'_> {
     ) -> (Vec<Item>, Vec<f64>) {
         let at = self.at(atom);
         let mut gaps = chains::gaps_for(bonds, &items);
+        if let [i, j] = there
+            && self.shapes.in_small_ring([atom, *i, *j])
+            && gaps.iter().any(|g| g.1 > PI)
+        {
+            gaps.retain(|g| g.1 > PI);
+        }
         // the bonds on both sides of a gap
         let beside = |angle: f64| {
             (0..bonds.len()).find(|i| {
@@ -319,15 +325,12 @@ impl Assembly<'_> {
                 off < 1e-6 || off > TAU - 1e-6
             })
         };
-        let is_open = |gap: &(f64, f64)| match (beside(gap.0), beside(gap.0 + gap.1)) {
+        let is_inside = |gap: (f64, f64)| match (beside(gap.0), beside(gap.0 + gap.1)) {
             (Some(i), Some(j)) => {
-                gap.1 > PI || !self.shapes.in_small_ring([atom, there[i], there[j]])
+                gap.1 < PI && self.shapes.in_small_ring([atom, there[i], there[j]])
             }
-            _ => true,
+            _ => false,
         };
-        if gaps.iter().any(is_open) {
-            gaps.retain(is_open);
-        }
         let mut orders = vec![items.clone()];
         if items.len() > 1 {
             orders.push(items.iter().rev().copied().collect());
@@ -346,6 +349,11 @@ impl Assembly<'_> {
                             + far * self.crowd(at + 2.2 * way, usize::MAX)
                     })
                     .sum();
+                let cost = if is_inside((start, wide)) {
+                    cost + 1.0
+                } else {
+                    cost
+                };
                 if best.as_ref().is_none_or(|b| cost < b.0 - 1e-6) {
                     best = Some((cost, order.clone(), angles));
                 }

@@ -2,7 +2,6 @@
 
 use super::graph::Graph;
 use crate::geom::{self, Point};
-use std::collections::BTreeMap;
 
 /// Atoms that are not joined should keep this distance.
 pub(super) const APART: f64 = 0.85;
@@ -16,11 +15,11 @@ const CELL: f64 = 1.7;
 
 type Cell = (i32, i32);
 
-/// Atoms and bonds in cells.
-pub(super) struct Field<'a> {
-    graph: &'a Graph,
-    atoms: BTreeMap<Cell, Vec<usize>>,
-    bonds: BTreeMap<Cell, Vec<usize>>,
+/// Numbers sorted into cells; cells share buckets by a fixed rule.
+struct Grid {
+    /// Where each bucket begins in `items`.
+    first: Vec<usize>,
+    items: Vec<(Cell, usize)>,
 }
 
 fn cell(p: Point) -> Cell {
@@ -28,29 +27,68 @@ fn cell(p: Point) -> Cell {
     ((p.x / CELL).floor() as i32, (p.y / CELL).floor() as i32)
 }
 
-fn around(map: &BTreeMap<Cell, Vec<usize>>, p: Point) -> impl Iterator<Item = usize> + '_ {
-    let (x, y) = cell(p);
-    (x - 1..=x + 1).flat_map(move |i| {
-        map.range((i, y - 1)..=(i, y + 1))
-            .flat_map(|(_, list)| list.iter().copied())
-    })
+impl Grid {
+    fn new(points: &[Point]) -> Grid {
+        let size = (2 * points.len()).next_power_of_two();
+        let mut grid = Grid {
+            first: vec![0; size + 1],
+            items: vec![((0, 0), 0); points.len()],
+        };
+        let cells: Vec<Cell> = points.iter().map(|p| cell(*p)).collect();
+        let buckets: Vec<usize> = cells.iter().map(|c| grid.bucket(*c)).collect();
+        for b in &buckets {
+            grid.first[b + 1] += 1;
+        }
+        for b in 0..size {
+            grid.first[b + 1] += grid.first[b];
+        }
+        let mut next = grid.first.clone();
+        for (i, b) in buckets.iter().enumerate() {
+            grid.items[next[*b]] = (cells[i], i);
+            next[*b] += 1;
+        }
+        grid
+    }
+
+    fn bucket(&self, (x, y): Cell) -> usize {
+        let mask = self.first.len() - 2;
+        let mixed = (x as u32).wrapping_mul(0x9e37_79b1) ^ (y as u32).wrapping_mul(0x85eb_ca77);
+        (mixed ^ (mixed >> 15)) as usize & mask
+    }
+
+    /// What lies in the cell of a point and the eight round it.
+    fn around(&self, p: Point) -> impl Iterator<Item = usize> + '_ {
+        let (x, y) = cell(p);
+        (0..9).flat_map(move |k| {
+            let here = (x.saturating_add(k % 3 - 1), y.saturating_add(k / 3 - 1));
+            let bucket = self.bucket(here);
+            self.items[self.first[bucket]..self.first[bucket + 1]]
+                .iter()
+                .filter(move |item| item.0 == here)
+                .map(|item| item.1)
+        })
+    }
+}
+
+/// Atoms and bonds in cells.
+pub(super) struct Field<'a> {
+    graph: &'a Graph,
+    atoms: Grid,
+    bonds: Grid,
 }
 
 impl<'a> Field<'a> {
     pub(super) fn new(graph: &'a Graph, points: &[Point]) -> Field<'a> {
-        let mut field = Field {
+        let middles: Vec<Point> = graph
+            .ends
+            .iter()
+            .map(|[p, q]| points[*p].midpoint(points[*q]))
+            .collect();
+        Field {
             graph,
-            atoms: BTreeMap::new(),
-            bonds: BTreeMap::new(),
-        };
-        for (i, p) in points.iter().enumerate() {
-            field.atoms.entry(cell(*p)).or_default().push(i);
+            atoms: Grid::new(points),
+            bonds: Grid::new(&middles),
         }
-        for (b, [p, q]) in graph.ends.iter().enumerate() {
-            let middle = points[*p].midpoint(points[*q]);
-            field.bonds.entry(cell(middle)).or_default().push(b);
-        }
-        field
     }
 
     /// What the nearness of two places costs, for atoms that are not joined.
@@ -73,12 +111,12 @@ impl<'a> Field<'a> {
         let mut sum = 0.0;
         for a in moving {
             let p = now(*a);
-            for b in around(&self.atoms, p) {
+            for b in self.atoms.around(p) {
                 if !moves[b] && self.graph.bond(*a, b).is_none() {
                     sum += Field::nearness(p.distance(now(b)));
                 }
             }
-            for b in around(&self.bonds, p) {
+            for b in self.bonds.around(p) {
                 let [q, r] = self.graph.ends[b];
                 if !moves[q] && !moves[r] {
                     sum += self.off_bond(*a, b, now);
@@ -99,13 +137,13 @@ impl<'a> Field<'a> {
         let [p, q] = self.graph.ends[bond];
         let middle = now(p).midpoint(now(q));
         let mut sum = 0.0;
-        for other in around(&self.bonds, middle) {
+        for other in self.bonds.around(middle) {
             let [r, s] = self.graph.ends[other];
             if !moves[r] && !moves[s] && self.crosses(bond, other, now) {
                 sum += CROSSING;
             }
         }
-        for a in around(&self.atoms, middle) {
+        for a in self.atoms.around(middle) {
             if !moves[a] {
                 sum += self.off_bond(a, bond, now);
             }
@@ -133,7 +171,7 @@ impl<'a> Field<'a> {
         let now = |a: usize| points[a];
         let mut list: Vec<(f64, [usize; 2])> = Vec::new();
         for (a, p) in points.iter().enumerate() {
-            for b in around(&self.atoms, *p) {
+            for b in self.atoms.around(*p) {
                 if b > a && self.graph.bond(a, b).is_none() {
                     let cost = Field::nearness(p.distance(points[b]));
                     if cost > 0.02 {
@@ -144,12 +182,12 @@ impl<'a> Field<'a> {
         }
         for (bond, [p, q]) in self.graph.ends.iter().enumerate() {
             let middle = points[*p].midpoint(points[*q]);
-            for other in around(&self.bonds, middle) {
+            for other in self.bonds.around(middle) {
                 if other > bond && self.crosses(bond, other, &now) {
                     list.push((CROSSING, [*p, self.graph.ends[other][0]]));
                 }
             }
-            for a in around(&self.atoms, middle) {
+            for a in self.atoms.around(middle) {
                 let cost = self.off_bond(a, bond, &now);
                 if cost > 0.1 {
                     list.push((cost, [a, *p]));

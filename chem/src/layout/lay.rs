@@ -66,7 +66,7 @@ fn part(graph: &Graph) -> Vec<Point> {
     let mut points = assemble(graph, &tree, &shapes);
     overlap::relieve(graph, &tree, &shapes, &mut points);
     settle::settle(graph, &shapes, &mut points);
-    orient::turn(graph, &mut points);
+    orient::turn(graph, &shapes, &mut points);
     points
 }
 

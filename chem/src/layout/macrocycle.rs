@@ -184,9 +184,9 @@ fn corners(frame: &Frame, ring: &[usize], clusters: &[Cluster]) -> Vec<Corner> {
             // inward corners are for atoms that carry nothing
             let inward = match (frame.outside[*a], frame.heavy[*a]) {
                 (0, _) => 0.15,
-                (1, false) => 1.2,
-                (1, true) => 2.2,
-                _ => 3.5,
+                (1, false) => 1.5,
+                (1, true) => 4.0,
+                _ => 4.5,
             };
             [inward, NEVER, 0.0]
         })

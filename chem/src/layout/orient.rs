@@ -3,6 +3,7 @@
 //!
 //! common practice, no source: the weights are matters of taste and were set by looking at drawings.
 
+use super::assemble::Shapes;
 use super::fuse::mean;
 use super::graph::Graph;
 use crate::element::Element;
@@ -14,15 +15,28 @@ use std::f64::consts::{FRAC_PI_3, FRAC_PI_6};
 /// What a wide drawing is worth, from -1 (all height) to 1 (all width).
 const WIDE: f64 = 1.0;
 /// What it is worth if all bonds stand at 30, 90 and 150 degrees.
-const UPRIGHT: f64 = 0.45;
+const UPRIGHT: f64 = 0.6;
 const RISING: f64 = 0.06;
 const CHAINS_RIGHT: f64 = 0.08;
 const ACID_RIGHT: f64 = 0.12;
+const FIVE_RIGHT: f64 = 0.06;
 const UP: f64 = 0.02;
+/// What a wide fused ring system is worth, whatever hangs on it.
+const RINGS_WIDE: f64 = 0.5;
+/// Single atoms on fused corners (the methyl groups of steroids) point up.
+const ANGULAR_UP: f64 = 0.05;
 
 /// Turns and perhaps mirrors a part about its middle.
-pub(super) fn turn(graph: &Graph, points: &mut [Point]) {
+pub(super) fn turn(graph: &Graph, shapes: &Shapes, points: &mut [Point]) {
     let middle = mean(points);
+    // the block with most rings, if it is a system of several
+    let main = shapes
+        .blocks
+        .iter()
+        .zip(&shapes.rings)
+        .filter(|(_, rings)| rings.len() > 2)
+        .max_by_key(|(b, rings)| (rings.len(), b.atoms.len(), std::cmp::Reverse(&b.atoms)))
+        .map_or(&[][..], |(b, _)| b.atoms.as_slice());
     let base = FRAC_PI_6 - usual_angle(graph, points);
     let mut best: Option<(f64, Affine)> = None;
     for k in 0..12 {
@@ -30,7 +44,7 @@ pub(super) fn turn(graph: &Graph, points: &mut [Point]) {
             let motion = mirror
                 * Affine::rotate(base + f64::from(k) * FRAC_PI_6)
                 * Affine::translate(-middle.to_vec2());
-            let score = score(graph, points, motion);
+            let score = score((graph, shapes), main, points, motion);
             // equals are settled by the first: rounding must not decide
             if best.is_none_or(|b| score > b.0 + 1e-6) {
                 best = Some((score, motion));
@@ -80,24 +94,26 @@ fn usual_angle(graph: &Graph, points: &[Point]) -> f64 {
     best
 }
 
-fn score(graph: &Graph, points: &[Point], motion: Affine) -> f64 {
+fn score(
+    (graph, shapes): (&Graph, &Shapes),
+    main: &[usize],
+    points: &[Point],
+    motion: Affine,
+) -> f64 {
     let moved: Vec<Point> = points.iter().map(|p| motion * *p).collect();
-    let Some(first) = moved.first() else {
-        return 0.0;
-    };
-    let bounds = moved
-        .iter()
-        .fold(Rect::from_points(*first, *first), |r, p| r.union_pt(*p));
-    let (w, h) = (bounds.width() + 1.0, bounds.height() + 1.0);
-    let upright = graph
-        .ends
-        .iter()
-        .filter(|[a, b]| {
-            let angle = geom::angle(moved[*b] - moved[*a]) % FRAC_PI_3;
-            (angle - FRAC_PI_6).abs() < 0.06
-        })
-        .count() as f64
-        / graph.ends.len().max(1) as f64;
+    let rings: Vec<Point> = main.iter().map(|a| moved[*a]).collect();
+    let (w, h) = extent(&moved);
+    let (ring_w, ring_h) = extent(&rings);
+    let (mut upright, mut all) = (0.0, 1e-9);
+    for ([a, b], in_ring) in graph.ends.iter().zip(&graph.in_ring) {
+        let angle = geom::angle(moved[*b] - moved[*a]) % FRAC_PI_3;
+        let weight = if *in_ring { 2.0 } else { 1.0 };
+        all += weight;
+        if (angle - FRAC_PI_6).abs() < 0.06 {
+            upright += weight;
+        }
+    }
+    let upright = upright / all;
     let (mut along, mut across, mut square) = (0.0, 0.0, 1e-9);
     for p in &moved {
         along += p.x * p.y;
@@ -107,18 +123,48 @@ fn score(graph: &Graph, points: &[Point], motion: Affine) -> f64 {
     let rising = along / (across * square).sqrt().max(1e-9);
     let size = w.max(h);
     let lean = |pull: Vec2, weight: f64| weight * (pull.x / size).clamp(-1.0, 1.0);
-    let (chains, acid, up) = pulls(graph, &moved);
+    let [chains, acid, five, up] = pulls(graph, shapes, &moved);
     WIDE * (w - h) / (w + h)
+        + RINGS_WIDE * (ring_w - ring_h) / (ring_w + ring_h)
+        + ANGULAR_UP * angular(graph, &moved)
         + UPRIGHT * upright
         + RISING * rising.clamp(-1.0, 1.0)
         + lean(chains, CHAINS_RIGHT)
         + lean(acid, ACID_RIGHT)
+        + lean(five, FIVE_RIGHT)
         + UP * (up.y / size).clamp(-1.0, 1.0)
 }
 
-/// Where chains lie as seen from rings, acids and esters as seen from amines, and hetero atoms as seen
-/// from all.
-fn pulls(graph: &Graph, points: &[Point]) -> (Vec2, Vec2, Vec2) {
+/// Width and height of what some points take up, with room for the atoms.
+fn extent(points: &[Point]) -> (f64, f64) {
+    let first = points.first().copied().unwrap_or_default();
+    let bounds = points
+        .iter()
+        .fold(Rect::from_points(first, first), |r, p| r.union_pt(*p));
+    (bounds.width() + 1.0, bounds.height() + 1.0)
+}
+
+/// How far up, from -1 to 1, single atoms on corners of several rings point.
+fn angular(graph: &Graph, points: &[Point]) -> f64 {
+    let ring_bonds = |a: usize| {
+        graph.near[a]
+            .iter()
+            .filter(|l| graph.in_ring[l.bond])
+            .count()
+    };
+    let (mut sum, mut count) = (0.0, 0.0);
+    for a in (0..graph.len()).filter(|a| ring_bonds(*a) > 2) {
+        for l in graph.near[a].iter().filter(|l| graph.near[l.to].len() == 1) {
+            sum += points[l.to].y - points[a].y;
+            count += 1.0;
+        }
+    }
+    if count > 0.0 { sum / count } else { 0.0 }
+}
+
+/// Where chains lie as seen from rings, acids and esters as seen from amines, five-rings as seen from
+/// rings, and hetero atoms as seen from all.
+fn pulls(graph: &Graph, shapes: &Shapes, points: &[Point]) -> [Vec2; 4] {
     let middle = |which: &dyn Fn(usize) -> bool| {
         let some: Vec<Point> = (0..graph.len())
             .filter(|a| which(*a))
@@ -138,13 +184,19 @@ fn pulls(graph: &Graph, points: &[Point]) -> (Vec2, Vec2, Vec2) {
         is(a, Element::C)
             && near(a).any(|l| is(l.to, Element::O) && graph.order[l.bond] == Order::Double)
     };
+    let amine = middle(&|a| is(a, Element::N) && !near(a).any(|l| carbonyl(l.to)));
     let acid = between(
         middle(&|a| carbonyl(a) && near(a).filter(|l| is(l.to, Element::O)).count() > 1),
-        middle(&|a| is(a, Element::N) && !near(a).any(|l| carbonyl(l.to))),
+        amine.or(Some(mean(points))),
     );
+    let in_five = |a: usize| {
+        let rings = shapes.of_atom[a].iter().flat_map(|b| &shapes.rings[*b]);
+        rings.filter(|r| r.len() == 5).any(|r| r.contains(&a))
+    };
+    let five = between(middle(&in_five), middle(&in_ring));
     let hetero = between(
         middle(&|a| !is(a, Element::C) && !is(a, Element::H)),
         Some(mean(points)),
     );
-    (chains, acid, hetero)
+    [chains, acid, five, hetero]
 }

@@ -9,16 +9,17 @@ use super::field::Field;
 use super::frame::together;
 use super::graph::{Graph, Pair};
 use super::tree::{ROOT, Tree};
+use crate::element::Element;
 use crate::geom::{self, Point};
 use kurbo::Affine;
-use std::f64::consts::PI;
+use std::f64::consts::{PI, TAU};
 
 /// Hinges looked at for one conflict.
 const MOST_HINGES: usize = 24;
 /// Hinges tried two at a time.
 const MOST_PAIRED: usize = 9;
 /// Atoms moved in all trials together, so that the work is bounded.
-const MOST_WORK: usize = 6_000_000;
+const MOST_WORK: usize = 1_500_000;
 /// A move must save this much.
 const WORTH: f64 = 0.05;
 
@@ -29,6 +30,8 @@ enum Move {
     Flip,
     /// Turned about the atom that holds it, by radians.
     Swing(f64),
+    /// A single atom on a corner of several rings turned into one of the rings.
+    Inward(f64),
     /// Moved outwards along its bond.
     Stretch(f64),
 }
@@ -40,6 +43,7 @@ impl Move {
             // more where it breaks a chain, see `breaks`
             Move::Flip => 0.03,
             Move::Swing(by) => 0.15 + 0.5 * by.abs(),
+            Move::Inward(_) => 0.3,
             Move::Stretch(by) => 0.4 + 2.0 * by,
         }
     }
@@ -47,6 +51,8 @@ impl Move {
 
 const FLIPS: &[Move] = &[Move::Flip];
 const SWINGS: &[Move] = &[
+    Move::Inward(TAU / 3.0),
+    Move::Inward(-TAU / 3.0),
     Move::Swing(PI / 6.0),
     Move::Swing(-PI / 6.0),
     Move::Swing(PI / 3.0),
@@ -170,7 +176,11 @@ impl Relief<'_> {
                 let Some(motion) = self.motion(*node, *kind) else {
                     continue;
                 };
-                let price = kind.price() + self.breaks(*node, *kind);
+                let mut price = kind.price() + self.breaks(*node, *kind);
+                if matches!(kind, Move::Inward(_)) && self.graph.element[*node] == Element::C {
+                    // rather a halogen than a methyl group
+                    price += 0.05;
+                }
                 let gain = self.gain(field, *node, motion) - price;
                 let is_best = best.as_ref().is_none_or(|b| gain > b.gain + 1e-9);
                 if gain > WORTH && is_best && self.is_allowed(*node, motion, *kind) {
@@ -256,6 +266,13 @@ impl Relief<'_> {
                 let angle = way.y.atan2(way.x);
                 let mirror = Affine::rotate(angle) * Affine::FLIP_Y * Affine::rotate(-angle);
                 (!few).then_some(back * mirror * to_origin)
+            }
+            Move::Inward(by) => {
+                let ring_bonds = self.graph.near[holder]
+                    .iter()
+                    .filter(|l| self.graph.in_ring[l.bond]);
+                let fits = self.tree.below(node).len() == 1 && ring_bonds.count() == 3;
+                fits.then_some(back * Affine::rotate(by) * to_origin)
             }
             Move::Swing(by) => Some(back * Affine::rotate(by) * to_origin),
             Move::Stretch(by) => {

@@ -24,7 +24,8 @@ pub(super) struct Shapes {
 const LARGEST_FULL: usize = 9;
 
 impl Shapes {
-    pub(super) fn new(graph: &Graph, blocks: Vec<Block>) -> Shapes {
+    pub(super) fn new(graph: &Graph) -> Shapes {
+        let blocks = graph.blocks.clone();
         let (mut points, mut rings) = (Vec::new(), Vec::new());
         for b in &blocks {
             let frame = Frame::new(graph, b);
@@ -322,7 +323,7 @@ impl Assembly<'_> {
         let beside = |angle: f64| {
             (0..bonds.len()).find(|i| {
                 let off = geom::turn(0.0, geom::angle(bonds[*i]) - angle);
-                off < 1e-6 || off > TAU - 1e-6
+                !(1e-6..=TAU - 1e-6).contains(&off)
             })
         };
         let is_inside = |gap: (f64, f64)| match (beside(gap.0), beside(gap.0 + gap.1)) {

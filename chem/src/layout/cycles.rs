@@ -15,7 +15,7 @@ pub(super) struct Block {
     pub(super) bonds: Vec<usize>,
 }
 
-/// Blocks of a part, each once.
+/// Blocks of a part, each once; bonds outside rings are in none.
 pub(super) fn blocks(graph: &Graph) -> Vec<Block> {
     let n = graph.len();
     let (mut seen, mut low) = (vec![0usize; n], vec![0usize; n]);
@@ -42,7 +42,7 @@ pub(super) fn blocks(graph: &Graph) -> Vec<Block> {
                 continue;
             };
             *next += 1;
-            if link.bond == by || !graph.in_ring[link.bond] {
+            if link.bond == by {
                 continue;
             }
             if seen[link.to] == 0 {
@@ -64,6 +64,9 @@ pub(super) fn blocks(graph: &Graph) -> Vec<Block> {
 fn close(graph: &Graph, open: &mut Vec<usize>, by: usize) -> Option<Block> {
     let at = open.iter().rposition(|b| *b == by)?;
     let mut bonds = open.split_off(at);
+    if bonds.len() < 3 {
+        return None;
+    }
     bonds.sort_unstable();
     let atoms: BTreeSet<usize> = bonds.iter().flat_map(|b| graph.ends[*b]).collect();
     Some(Block {

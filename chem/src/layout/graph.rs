@@ -4,6 +4,7 @@
 //! on the order of the file, so that a molecule comes out alike however its atoms were numbered.
 
 use super::Wish;
+use super::cycles::{self, Block};
 use crate::element::Element;
 use crate::molecule::{AtomIx, Molecule, Order};
 use crate::perceive::Rings;
@@ -35,12 +36,14 @@ pub(super) struct Graph {
     pub(super) order: Vec<Order>,
     /// Whether a bond lies in a ring.
     pub(super) in_ring: Vec<bool>,
+    pub(super) blocks: Vec<Block>,
     pub(super) element: Vec<Element>,
     pub(super) pairs: Vec<Pair>,
 }
 
 impl Graph {
-    /// The part of a molecule that holds these atoms and the bonds among them.
+    /// These atoms, which hang together, and the bonds among them. Rings are those of the part, even if the
+    /// molecule has more.
     pub(super) fn new(
         molecule: &Molecule,
         rings: &Rings,
@@ -52,18 +55,18 @@ impl Graph {
         for (i, a) in atoms.iter().enumerate() {
             number.insert(*a, i);
         }
-        let mut bonds: Vec<([usize; 2], Order, bool)> = Vec::new();
+        let mut bonds: Vec<([usize; 2], Order)> = Vec::new();
         for (i, a) in atoms.iter().enumerate() {
             for n in molecule.neighbors(*a) {
                 match number.get(&n.atom) {
-                    Some(j) if *j > i => bonds.push(([i, *j], n.order, rings.has_bond(n.bond))),
+                    Some(j) if *j > i => bonds.push(([i, *j], n.order)),
                     _ => {}
                 }
             }
         }
         bonds.sort_by_key(|b| b.0);
         let mut near = vec![SmallVec::new(); atoms.len()];
-        for (b, (ends, _, _)) in bonds.iter().enumerate() {
+        for (b, (ends, _)) in bonds.iter().enumerate() {
             near[ends[0]].push(Link {
                 to: ends[1],
                 bond: b,
@@ -84,15 +87,21 @@ impl Graph {
                 })
             })
             .collect();
-        Graph {
+        let mut graph = Graph {
             element: atoms.iter().map(|a| molecule.element(*a)).collect(),
             near,
             ends: bonds.iter().map(|b| b.0).collect(),
             order: bonds.iter().map(|b| b.1).collect(),
-            in_ring: bonds.iter().map(|b| b.2).collect(),
+            in_ring: vec![false; bonds.len()],
+            blocks: Vec::new(),
             atoms,
             pairs,
+        };
+        graph.blocks = cycles::blocks(&graph);
+        for b in graph.blocks.iter().flat_map(|b| &b.bonds) {
+            graph.in_ring[*b] = true;
         }
+        graph
     }
 
     pub(super) fn len(&self) -> usize {

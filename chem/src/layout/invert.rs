@@ -10,7 +10,7 @@ const SAME_SIDE: f64 = 2.0;
 const OTHER_SIDE: f64 = 2.645_751_311_064_590_7;
 
 /// Pushes ends of double bonds until the wishes are met, as far as that goes.
-pub(super) fn meet(frame: &Frame, springs: &Springs, points: &mut Vec<Point>) {
+pub(super) fn meet(frame: &Frame, springs: &Springs, points: &mut [Point]) {
     let mut springs = springs.clone();
     let touched: Vec<usize> = frame.pairs.iter().flat_map(|p| p.ends).collect();
     // angles of 120 degrees at the double bonds, in place of those of a circle

@@ -4,7 +4,7 @@ use super::assemble::{Shapes, assemble};
 use super::frame::together;
 use super::graph::{self, Graph};
 use super::tree::Tree;
-use super::{cycles, orient, overlap, parts, settle};
+use super::{orient, overlap, parts, settle};
 use crate::geom::Point;
 use crate::molecule::{AtomIx, Molecule};
 use crate::perceive::Rings;
@@ -59,10 +59,9 @@ pub fn lay_out(molecule: &Molecule, rings: &Rings, wishes: &[Wish]) -> Layout {
 }
 
 /// Places of the atoms of one part.
-fn part(graph: &Graph) -> Vec<Point> {
-    let blocks = cycles::blocks(graph);
-    let tree = Tree::new(graph, &blocks);
-    let shapes = Shapes::new(graph, blocks);
+pub(super) fn part(graph: &Graph) -> Vec<Point> {
+    let tree = Tree::new(graph);
+    let shapes = Shapes::new(graph);
     let mut points = assemble(graph, &tree, &shapes);
     overlap::relieve(graph, &tree, &shapes, &mut points);
     settle::settle(graph, &shapes, &mut points);

@@ -331,11 +331,7 @@ fn settled(
     for (a, p) in ring.iter().zip(&way) {
         points[*a] = *p;
     }
-    let mut springs = Springs {
-        apart: 0.95,
-        push: 1.0,
-        ..Springs::default()
-    };
+    let mut list = Vec::new();
     for cluster in clusters {
         let goal: Vec<Point> = (0..cluster.count)
             .map(|k| way[(cluster.start + k) % n])
@@ -353,64 +349,76 @@ fn settled(
         }
         for (i, a) in cluster.atoms.iter().enumerate() {
             for (j, b) in cluster.atoms.iter().enumerate().skip(i + 1) {
-                springs.list.push(Spring {
-                    ends: [*a, *b],
-                    length: cluster.points[i].distance(cluster.points[j]),
-                    force: 3.0,
-                });
+                let length = cluster.points[i].distance(cluster.points[j]);
+                list.push(spring([*a, *b], length, 3.0));
             }
         }
     }
+    list.extend(corner_springs(frame, ring, clusters, relations));
+    if n < 10 && relations.contains(&Relation::Unlike) {
+        // no lattice way closes so small a ring: what keeps its inward corner is memory
+        for i in 0..n {
+            for j in i + 2..n {
+                let length = points[ring[i]].distance(points[ring[j]]);
+                list.push(spring([ring[i], ring[j]], length, 0.3));
+            }
+        }
+    }
+    let springs = Springs {
+        list,
+        apart: 0.95,
+        push: 1.0,
+        fixed: Vec::new(),
+    };
+    springs.relax(&mut points, 600);
+    points
+}
+
+fn spring(ends: [usize; 2], length: f64, force: f64) -> Spring {
+    Spring {
+        ends,
+        length,
+        force,
+    }
+}
+
+/// Springs for bonds, corners and wished geometries of the large ring where no cluster holds them.
+fn corner_springs(
+    frame: &Frame,
+    ring: &[usize],
+    clusters: &[Cluster],
+    relations: &[Relation],
+) -> Vec<Spring> {
+    let n = ring.len();
+    let third = 3.0f64.sqrt();
     let crooked = relations.contains(&Relation::Unlike);
     let in_cluster = |a: usize, b: usize| {
         clusters
             .iter()
             .any(|c| c.atoms.contains(&a) && c.atoms.contains(&b))
     };
+    let mut list = Vec::new();
     for i in 0..n {
         let [a, b, c] = [0, 1, 2].map(|k| ring[(i + k) % n]);
         if !in_cluster(a, b) {
-            springs.list.push(Spring {
-                ends: [a, b],
-                length: 1.0,
-                force: 4.0,
-            });
+            list.push(spring([a, b], 1.0, 4.0));
         }
         if !in_cluster(a, c) {
-            springs.list.push(Spring {
-                ends: [a, c],
-                length: match frame.linear[b] {
-                    true => 2.0,
-                    false if crooked => 3.0f64.sqrt(),
-                    false => corner_width(n),
-                },
-                force: 0.7,
-            });
+            let length = match frame.linear[b] {
+                true => 2.0,
+                false if crooked => third,
+                false => corner_width(n),
+            };
+            list.push(spring([a, c], length, 0.7));
         }
-        if relations[i] != Relation::Free {
-            let is_alike = relations[i] == Relation::Alike;
-            springs.list.push(Spring {
-                ends: [ring[(i + n - 1) % n], c],
-                length: if is_alike { 2.0 } else { 7.0f64.sqrt() },
-                force: 0.7,
-            });
+        let before = ring[(i + n - 1) % n];
+        match relations[i] {
+            Relation::Free => {}
+            Relation::Alike => list.push(spring([before, c], 2.0, 0.7)),
+            Relation::Unlike => list.push(spring([before, c], 7.0f64.sqrt(), 0.7)),
         }
     }
-    if crooked && n < 10 {
-        // no lattice way closes so small a ring: what keeps its inward corner is memory
-        for i in 0..n {
-            for j in i + 2..n {
-                let ends = [ring[i], ring[j]];
-                springs.list.push(Spring {
-                    ends,
-                    length: points[ends[0]].distance(points[ends[1]]),
-                    force: 0.3,
-                });
-            }
-        }
-    }
-    springs.relax(&mut points, 600);
-    points
+    list
 }
 
 /// Distance over a corner: 120 degrees, wider in small rings that cannot be drawn in zigzags.

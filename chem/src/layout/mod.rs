@@ -24,12 +24,14 @@ mod ring;
 mod rings;
 mod settle;
 mod space;
+mod tidy;
 mod tree;
 mod word;
 
 pub use graft::{Graft, graft};
 pub use grow::atom_at;
 pub use lay::{Layout, Wish, lay_out};
+pub use tidy::tidy;
 pub use word::{Word, read};
 
 use crate::molecule::AtomIx;

@@ -43,7 +43,8 @@ impl Reach {
 pub(super) const ROOT: usize = usize::MAX;
 
 impl Tree {
-    pub(super) fn new(graph: &Graph, blocks: &[Block]) -> Tree {
+    pub(super) fn new(graph: &Graph) -> Tree {
+        let blocks = &graph.blocks;
         let n = graph.len();
         let mut near: Vec<Vec<usize>> = (0..n)
             .map(|a| {

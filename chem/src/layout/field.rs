@@ -2,6 +2,7 @@
 
 use super::graph::Graph;
 use crate::geom::{self, Point};
+use std::cell::Cell;
 
 /// Atoms that are not joined should keep this distance.
 pub(super) const APART: f64 = 0.85;
@@ -13,16 +14,16 @@ const CROSSING: f64 = 2.0;
 /// Longer than half of any bond, so that what meets lies in neighbouring cells.
 const CELL: f64 = 1.7;
 
-type Cell = (i32, i32);
+type Square = (i32, i32);
 
 /// Numbers sorted into cells; cells share buckets by a fixed rule.
 struct Grid {
     /// Where each bucket begins in `items`.
     first: Vec<usize>,
-    items: Vec<(Cell, usize)>,
+    items: Vec<(Square, usize)>,
 }
 
-fn cell(p: Point) -> Cell {
+fn cell(p: Point) -> Square {
     // drawings are some thousand bonds wide at most; a cast of more saturates
     ((p.x / CELL).floor() as i32, (p.y / CELL).floor() as i32)
 }
@@ -34,7 +35,7 @@ impl Grid {
             first: vec![0; size + 1],
             items: vec![((0, 0), 0); points.len()],
         };
-        let cells: Vec<Cell> = points.iter().map(|p| cell(*p)).collect();
+        let cells: Vec<Square> = points.iter().map(|p| cell(*p)).collect();
         let buckets: Vec<usize> = cells.iter().map(|c| grid.bucket(*c)).collect();
         for b in &buckets {
             grid.first[b + 1] += 1;
@@ -50,7 +51,7 @@ impl Grid {
         grid
     }
 
-    fn bucket(&self, (x, y): Cell) -> usize {
+    fn bucket(&self, (x, y): Square) -> usize {
         let mask = self.first.len() - 2;
         let mixed = (x as u32).wrapping_mul(0x9e37_79b1) ^ (y as u32).wrapping_mul(0x85eb_ca77);
         (mixed ^ (mixed >> 15)) as usize & mask
@@ -75,6 +76,8 @@ pub(super) struct Field<'a> {
     graph: &'a Graph,
     atoms: Grid,
     bonds: Grid,
+    /// Atoms and bonds looked at so far.
+    looked: Cell<usize>,
 }
 
 impl<'a> Field<'a> {
@@ -88,7 +91,25 @@ impl<'a> Field<'a> {
             graph,
             atoms: Grid::new(points),
             bonds: Grid::new(&middles),
+            looked: Cell::new(0),
         }
+    }
+
+    fn near_atoms(&self, p: Point) -> impl Iterator<Item = usize> + '_ {
+        self.counted(self.atoms.around(p))
+    }
+
+    fn near_bonds(&self, p: Point) -> impl Iterator<Item = usize> + '_ {
+        self.counted(self.bonds.around(p))
+    }
+
+    fn counted(&self, list: impl Iterator<Item = usize>) -> impl Iterator<Item = usize> {
+        list.inspect(|_| self.looked.set(self.looked.get() + 1))
+    }
+
+    /// How many atoms and bonds were looked at since this was last asked.
+    pub(super) fn work(&self) -> usize {
+        self.looked.take()
     }
 
     /// What the nearness of two places costs, for atoms that are not joined.
@@ -111,12 +132,12 @@ impl<'a> Field<'a> {
         let mut sum = 0.0;
         for a in moving {
             let p = now(*a);
-            for b in self.atoms.around(p) {
+            for b in self.near_atoms(p) {
                 if !moves[b] && self.graph.bond(*a, b).is_none() {
                     sum += Field::nearness(p.distance(now(b)));
                 }
             }
-            for b in self.bonds.around(p) {
+            for b in self.near_bonds(p) {
                 let [q, r] = self.graph.ends[b];
                 if !moves[q] && !moves[r] {
                     sum += self.off_bond(*a, b, now);
@@ -137,13 +158,13 @@ impl<'a> Field<'a> {
         let [p, q] = self.graph.ends[bond];
         let middle = now(p).midpoint(now(q));
         let mut sum = 0.0;
-        for other in self.bonds.around(middle) {
+        for other in self.near_bonds(middle) {
             let [r, s] = self.graph.ends[other];
             if !moves[r] && !moves[s] && self.crosses(bond, other, now) {
                 sum += CROSSING;
             }
         }
-        for a in self.atoms.around(middle) {
+        for a in self.near_atoms(middle) {
             if !moves[a] {
                 sum += self.off_bond(a, bond, now);
             }
@@ -171,7 +192,7 @@ impl<'a> Field<'a> {
         let now = |a: usize| points[a];
         let mut list: Vec<(f64, [usize; 2])> = Vec::new();
         for (a, p) in points.iter().enumerate() {
-            for b in self.atoms.around(*p) {
+            for b in self.near_atoms(*p) {
                 if b > a && self.graph.bond(a, b).is_none() {
                     let cost = Field::nearness(p.distance(points[b]));
                     if cost > 0.02 {
@@ -182,12 +203,12 @@ impl<'a> Field<'a> {
         }
         for (bond, [p, q]) in self.graph.ends.iter().enumerate() {
             let middle = points[*p].midpoint(points[*q]);
-            for other in self.bonds.around(middle) {
+            for other in self.near_bonds(middle) {
                 if other > bond && self.crosses(bond, other, &now) {
                     list.push((CROSSING, [*p, self.graph.ends[other][0]]));
                 }
             }
-            for a in self.atoms.around(middle) {
+            for a in self.near_atoms(middle) {
                 let cost = self.off_bond(a, bond, &now);
                 if cost > 0.1 {
                     list.push((cost, [a, *p]));

@@ -112,3 +112,6 @@ impl fmt::Display for GraftError {
 }
 
 impl std::error::Error for GraftError {}
+
+#[cfg(test)]
+mod tests;

@@ -18,8 +18,8 @@ use std::f64::consts::{PI, TAU};
 const MOST_HINGES: usize = 24;
 /// Hinges tried two at a time.
 const MOST_PAIRED: usize = 9;
-/// Atoms moved in all trials together, so that the work is bounded.
-const MOST_WORK: usize = 1_500_000;
+/// Atoms and bonds looked at in all trials together, so that the work is bounded.
+const MOST_WORK: usize = 25_000_000;
 /// A move must save this much.
 const WORTH: f64 = 0.05;
 
@@ -105,8 +105,8 @@ impl Relief<'_> {
         let mut stuck: Vec<[usize; 2]> = Vec::new();
         while self.work < MOST_WORK {
             let field = Field::new(self.graph, &self.points);
-            self.work += self.graph.len();
             let conflicts = field.conflicts(&self.points);
+            self.work += 20 * self.graph.len() + field.work();
             let mut is_better = false;
             for (_, pair) in &conflicts {
                 if stuck.binary_search(pair).is_ok() {
@@ -210,7 +210,7 @@ impl Relief<'_> {
             let before = self.points.clone();
             self.make(*first, motion);
             let field = Field::new(self.graph, &self.points);
-            self.work += self.graph.len();
+            self.work += 20 * self.graph.len();
             let rest: Vec<usize> = few.iter().skip(i + 1).copied().collect();
             if let Some(second) = self.best(&field, &rest, FLIPS)
                 && second.gain + loss > WORTH
@@ -308,7 +308,6 @@ impl Relief<'_> {
             let rest = self.tree.order[..from].iter().chain(&self.tree.order[to..]);
             (rest.copied().collect(), motion.inverse())
         };
-        self.work += 2 * moving.len();
         for a in &moving {
             self.moves[*a] = true;
         }
@@ -324,6 +323,7 @@ impl Relief<'_> {
         for a in &moving {
             self.moves[*a] = false;
         }
+        self.work += 20 * moving.len() + field.work();
         before - after
     }
 

@@ -14,6 +14,10 @@ const GOAL: f64 = 0.68;
 /// Bonds from a conflict within which atoms give way.
 const AROUND: usize = 4;
 const STEPS: usize = 160;
+/// With more there is no room anywhere.
+const MOST_CONFLICTS: usize = 500;
+/// Springs times steps at most.
+const MOST_WORK: usize = 3_000_000;
 
 /// Pushes atoms apart that relief by whole branches has left on each other.
 pub(super) fn settle(graph: &Graph, shapes: &Shapes, points: &mut Vec<Point>) {
@@ -27,11 +31,13 @@ pub(super) fn settle(graph: &Graph, shapes: &Shapes, points: &mut Vec<Point>) {
                 points[*a].distance(points[*b]) < TOO_NEAR && graph.bond(*a, *b).is_none()
             })
             .collect();
-        if near.is_empty() {
+        if near.is_empty() || near.len() > MOST_CONFLICTS {
             return;
         }
         let mut moved = points.clone();
-        springs(graph, shapes, points, &near).relax(&mut moved, STEPS);
+        let springs = springs(graph, shapes, points, &near);
+        let steps = STEPS.min(MOST_WORK / (springs.list.len() + 1));
+        springs.relax(&mut moved, steps);
         let keeps = graph.pairs.iter().all(|p| {
             let meets = |at: &[Point]| {
                 let side = together(p.ends.map(|a| at[a]), p.ligands.map(|a| at[a]));

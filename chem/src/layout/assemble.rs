@@ -6,6 +6,7 @@ use super::frame::Frame;
 use super::graph::Graph;
 use super::tree::{ROOT, Reach, Tree};
 use crate::geom::{self, Point, Vec2};
+use crate::molecule::Order;
 use kurbo::Affine;
 use std::f64::consts::{PI, TAU};
 
@@ -313,8 +314,12 @@ impl Assembly<'_> {
     ) -> (Vec<Item>, Vec<f64>) {
         let at = self.at(atom);
         let mut gaps = chains::gaps_for(bonds, &items);
+        let is_flat = self.graph.near[atom]
+            .iter()
+            .any(|l| self.graph.order[l.bond] == Order::Double);
+        // outside a small ring; on the free side of a double bond
         if let [i, j] = there
-            && self.shapes.in_small_ring([atom, *i, *j])
+            && (is_flat || self.shapes.in_small_ring([atom, *i, *j]))
             && gaps.iter().any(|g| g.1 > PI)
         {
             gaps.retain(|g| g.1 > PI);

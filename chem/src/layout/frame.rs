@@ -3,6 +3,7 @@
 use super::cycles::{self, Block};
 use super::graph::Graph;
 use crate::geom::{self, Point, Vec2};
+use crate::molecule::Order;
 use smallvec::SmallVec;
 use std::f64::consts::TAU;
 
@@ -31,6 +32,8 @@ pub(super) struct Frame {
     pub(super) heavy: Vec<bool>,
     /// Whether the ring goes straight on here (a triple bond, cumulated double bonds).
     pub(super) linear: Vec<bool>,
+    /// Whether an atom has a double bond in the block.
+    pub(super) double: Vec<bool>,
     pub(super) pairs: Vec<RingPair>,
 }
 
@@ -62,6 +65,15 @@ impl Frame {
                 .map(|a| leaves(*a).any(|l| graph.near[l.to].len() > 1))
                 .collect(),
             linear: block.atoms.iter().map(|a| graph.is_linear(*a)).collect(),
+            double: block
+                .atoms
+                .iter()
+                .map(|a| {
+                    graph.near[*a]
+                        .iter()
+                        .any(|l| in_block(&l.bond) && graph.order[l.bond] == Order::Double)
+                })
+                .collect(),
             pairs: ring_pairs(graph, block, &near),
             atoms: block.atoms.clone(),
             bonds,
@@ -95,13 +107,16 @@ impl Frame {
     }
 }
 
-/// Whether two ligands lie on one side of the axis through two ends; `None` if one of them is in line
-/// with the axis or the ends coincide.
+/// Sine of the angle with the axis from which the side of a ligand can be seen.
+const CLEAR: f64 = 0.2;
+
+/// Whether two ligands lie on one side of the axis through two ends; `None` if one of them is nearly
+/// in line with the axis or the ends coincide.
 pub(super) fn together(ends: [Point; 2], ligands: [Point; 2]) -> Option<bool> {
     let axis = geom::direction(ends[0], ends[1], 1e-9)?;
     let side = |k: usize| Some(axis.cross(geom::direction(ends[k], ligands[k], 1e-9)?));
     let (a, b) = (side(0)?, side(1)?);
-    (a.abs() > 0.05 && b.abs() > 0.05).then_some((a > 0.0) == (b > 0.0))
+    (a.abs() > CLEAR && b.abs() > CLEAR).then_some((a > 0.0) == (b > 0.0))
 }
 
 fn ring_pairs(graph: &Graph, block: &Block, near: &[SmallVec<[usize; 4]>]) -> Vec<RingPair> {
@@ -224,6 +239,7 @@ impl Frame {
                 .map(|(i, a)| self.heavy[*a] || more(i, *a) > 0)
                 .collect(),
             linear: atoms.iter().map(|a| self.linear[*a]).collect(),
+            double: atoms.iter().map(|a| self.double[*a]).collect(),
             pairs: Vec::new(),
             atoms: atoms.iter().map(|a| self.atoms[*a]).collect(),
             bonds,

@@ -184,6 +184,8 @@ fn corners(frame: &Frame, ring: &[usize], clusters: &[Cluster]) -> Vec<Corner> {
             // inward corners are for atoms that carry nothing
             let inward = match (frame.outside[*a], frame.heavy[*a]) {
                 (0, _) => 0.15,
+                // the ligand of a double bond can only point inside
+                (1, _) if frame.double[*a] => 4.0,
                 (1, false) => 1.5,
                 (1, true) => 4.0,
                 _ => 4.5,
@@ -366,6 +368,7 @@ fn settled(
     }
     let springs = Springs {
         list,
+        heights: Vec::new(),
         apart: 0.95,
         push: 1.0,
         fixed: Vec::new(),

@@ -1,6 +1,6 @@
 //! Springs between points, let go for a bounded number of steps.
 
-use crate::geom::{Point, Vec2};
+use crate::geom::{self, Point, Vec2};
 
 /// A pair of points with a wished distance.
 #[derive(Clone, Copy, Debug)]
@@ -10,10 +10,20 @@ pub(super) struct Spring {
     pub(super) force: f64,
 }
 
+/// Three points of which the middle one is to stand off the line from the first to the last.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Height {
+    pub(super) points: [usize; 3],
+    /// Distance from the line, positive to the left.
+    pub(super) off: f64,
+    pub(super) force: f64,
+}
+
 /// What pulls and pushes.
 #[derive(Clone, Debug, Default)]
 pub(super) struct Springs {
     pub(super) list: Vec<Spring>,
+    pub(super) heights: Vec<Height>,
     /// Points nearer than this push each other apart, save the ends of one spring.
     pub(super) apart: f64,
     /// How hard they push.
@@ -85,6 +95,17 @@ impl Springs {
 
     fn forces(&self, points: &[Point], close: &[[usize; 2]]) -> Vec<Vec2> {
         let mut force = vec![Vec2::ZERO; points.len()];
+        for h in &self.heights {
+            let [p, a, q] = h.points;
+            let Some(way) = geom::direction(points[p], points[q], 1e-6) else {
+                continue;
+            };
+            let by = 2.0 * h.force * (h.off - way.cross(points[a] - points[p]));
+            let pull = way.turn_90() * by;
+            force[a] += pull;
+            force[p] -= pull / 2.0;
+            force[q] -= pull / 2.0;
+        }
         let mut pull = |[i, j]: [usize; 2], by: f64| {
             let v = points[j] - points[i];
             let d = v.hypot();
@@ -92,7 +113,7 @@ impl Springs {
             let way = if d > 1e-9 {
                 v / d
             } else {
-                crate::geom::unit((i * 7 + j * 3) as f64)
+                geom::unit((i * 7 + j * 3) as f64)
             };
             force[i] += way * by;
             force[j] -= way * by;

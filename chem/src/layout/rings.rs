@@ -97,7 +97,11 @@ impl Best {
             let springs = ring_springs(frame, &inner);
             springs.relax(&mut points, 900);
             if frame.pairs.iter().any(|p| !frame.meets(&points, p)) {
-                invert::meet(frame, &springs, &mut points);
+                for lighter in [true, false] {
+                    let mut turned = points.clone();
+                    invert::meet(frame, &springs, &mut turned, lighter);
+                    self.offer_kinked(frame, turned);
+                }
             }
             self.offer_kinked(frame, points);
         }

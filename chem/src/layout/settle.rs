@@ -96,6 +96,7 @@ fn springs(graph: &Graph, shapes: &Shapes, points: &[Point], near: &[[usize; 2]]
     }
     Springs {
         list,
+        heights: Vec::new(),
         apart: TOO_NEAR,
         push: 1.0,
         fixed: free.iter().map(|f| !f).collect(),

@@ -318,6 +318,7 @@ fn springs(graph: &Graph, points: &[Point], fixed: Vec<bool>) -> Springs {
     }
     Springs {
         list,
+        heights: Vec::new(),
         apart: 0.8,
         push: 1.0,
         fixed,

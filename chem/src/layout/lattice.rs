@@ -2,7 +2,8 @@
 //! left (outward corner), to the right (inward corner) or none (a straight atom).
 //!
 //! The cheapest way is found step by step (dynamic programming over place, heading and last turn). A pull
-//! towards a circle keeps the ring round, so that it does not meet itself.
+//! towards a circle keeps the ring round, so that it does not meet itself; where that finds nothing good (long
+//! rows of trans double bonds are straight) the circle is stretched to two half circles with straight sides.
 
 use crate::geom::{self, Point, Vec2};
 use std::collections::BTreeMap;
@@ -46,15 +47,82 @@ struct Step {
     from: usize,
 }
 
-/// Where the ring lies: a circle about `center`.
+/// Where the ring lies: a circle of `radius`, drawn out to `half` on both sides of `center` along an axis.
 #[derive(Clone, Copy)]
-struct Circle {
+struct Track {
     center: Vec2,
+    axis: Vec2,
+    half: f64,
     radius: f64,
+    /// How far along the track the first corner stands.
+    start: f64,
 }
 
-/// How hard the circle pulls, per squared bond length.
+impl Track {
+    /// A track of a given length that passes the origin at `start`, heading at `tangent` radians,
+    /// anticlockwise; `straight` is the part of it that its straight sides take.
+    fn new(length: f64, straight: f64, start: f64, tangent: f64) -> Track {
+        let half = straight * length / 4.0;
+        let radius = (1.0 - straight) * length / TAU;
+        let start = start * length;
+        // on a track along the x axis about the origin: bottom, right, top, left
+        let (bend, right) = (PI * radius, 2.0 * half);
+        let (at, heading) = if start < right {
+            (Vec2::new(start - half, -radius), 0.0)
+        } else {
+            let heading = ((start - right) / radius.max(1e-9)).min(PI);
+            let at = Vec2::new(half, 0.0) + radius * geom::unit(heading - PI / 2.0);
+            let over = (start - right - bend).max(0.0);
+            (at - Vec2::new(over, 0.0), heading)
+        };
+        let axis = geom::unit(tangent - heading);
+        let mut track = Track {
+            center: Vec2::ZERO,
+            axis,
+            half,
+            radius,
+            start,
+        };
+        track.center = -(at.x * axis + at.y * axis.turn_90());
+        track
+    }
+
+    fn length(&self) -> f64 {
+        4.0 * self.half + TAU * self.radius
+    }
+
+    /// How far off the track a place is (outwards), and how far along it.
+    fn project(&self, at: Vec2) -> (f64, f64) {
+        let v = at - self.center;
+        let (x, y) = (v.dot(self.axis), v.dot(self.axis.turn_90()));
+        let (half, radius) = (self.half, self.radius);
+        let bend = PI * radius;
+        if x.abs() <= half {
+            return if y < 0.0 {
+                (-y - radius, x + half)
+            } else {
+                (y - radius, 3.0 * half + bend - x)
+            };
+        }
+        let corner = Vec2::new(x - half.copysign(x), y);
+        let turn = geom::turn(1.5 * PI, geom::angle(corner));
+        let along = if x > 0.0 {
+            2.0 * half + radius * turn
+        } else {
+            4.0 * half + radius * turn
+        };
+        (corner.hypot() - radius, along)
+    }
+}
+
+/// How hard the track pulls, per squared bond length.
 const PULL: f64 = 0.3;
+/// Places on half a track where the first corner is tried.
+const STARTS: u32 = 6;
+/// Rings of this size and more may be drawn out.
+const LONG: usize = 16;
+/// Cost per corner from which a way is not good.
+const DEAR: f64 = 0.3;
 /// States kept in each step at most.
 const MOST_STATES: usize = 700;
 
@@ -68,16 +136,27 @@ fn place(x: i16, y: i16) -> Vec2 {
 /// Cheap closed ways for a ring of these corners; `relations[i]` is that of the bond from corner `i` to
 /// the next. Anticlockwise, bonds of length 1. Empty if no way closes.
 pub(super) fn ways(corners: &[Corner], relations: &[Relation]) -> Vec<Way> {
-    let n = corners.len() as f64;
-    let mut found = Vec::new();
     // outward corners advance less than inward ones; long rings go in zigzags of 0.87 a bond
-    let usual = (n * 0.866 + 0.6) / TAU;
-    for radius in [usual - 0.25, usual, usual + 0.3] {
-        for k in 0..7 {
-            let center = radius * geom::unit((45.0 + 15.0 * f64::from(k)).to_radians());
-            let circle = Circle { center, radius };
-            for first in [1, -1, 0] {
-                found.extend(way(corners, relations, circle, first));
+    let usual = corners.len() as f64 * 0.866 + 0.6;
+    let mut found = Vec::new();
+    for length in [usual - 1.6, usual, usual + 1.9] {
+        for k in -3..4 {
+            let tangent = (15.0 * f64::from(k)).to_radians();
+            let track = Track::new(length, 0.0, 0.0, tangent);
+            found.extend(on_track(corners, relations, track));
+        }
+    }
+    let cheapest = found.iter().map(|w| w.cost).fold(f64::INFINITY, f64::min);
+    if corners.len() >= LONG && cheapest > DEAR * corners.len() as f64 {
+        for straight in [0.4, 0.65] {
+            // half of the track: the other half is like it
+            for start in 0..STARTS {
+                for k in -2..3 {
+                    let tangent = (20.0 * f64::from(k)).to_radians();
+                    let start = f64::from(start) / f64::from(2 * STARTS);
+                    let track = Track::new(usual, straight, start, tangent);
+                    found.extend(on_track(corners, relations, track));
+                }
             }
         }
     }
@@ -106,10 +185,19 @@ fn fits(relation: Relation, a: Turn, b: Turn) -> bool {
     }
 }
 
-/// The cheapest closed way about a circle that starts with a given turn at the second corner.
-fn way(corners: &[Corner], relations: &[Relation], circle: Circle, first: Turn) -> Option<Way> {
+/// The cheapest closed ways along a track, one for each turn at the second corner.
+fn on_track<'a>(
+    corners: &'a [Corner],
+    relations: &'a [Relation],
+    track: Track,
+) -> impl Iterator<Item = Way> + 'a {
+    let turns = [1, -1, 0].into_iter();
+    turns.filter_map(move |first| way(corners, relations, track, first))
+}
+
+/// The cheapest closed way along a track that starts with a given turn at the second corner.
+fn way(corners: &[Corner], relations: &[Relation], track: Track, first: Turn) -> Option<Way> {
     let n = corners.len();
-    let start = geom::angle(-circle.center);
     let mut layers: Vec<Vec<Step>> = vec![vec![Step {
         state: State {
             x: 1,
@@ -122,7 +210,7 @@ fn way(corners: &[Corner], relations: &[Relation], circle: Circle, first: Turn) 
     }]];
     // layer `i` stands on corner `i + 1`
     for i in 1..n {
-        let ideal = start + TAU * (i + 1) as f64 / n as f64;
+        let ideal = track.start + track.length() * (i + 1) as f64 / n as f64;
         let mut next: BTreeMap<State, (f64, usize)> = BTreeMap::new();
         for (from, step) in layers[i - 1].iter().enumerate() {
             for turn in [1, -1, 0] {
@@ -135,7 +223,7 @@ fn way(corners: &[Corner], relations: &[Relation], circle: Circle, first: Turn) 
                     continue;
                 }
                 let state = forward(step.state, turn);
-                let Some(pull) = pull(state, circle, ideal, i + 1 == n) else {
+                let Some(pull) = pull(state, track, ideal, i + 1 == n) else {
                     continue;
                 };
                 let cost = step.cost + corner + pull;
@@ -195,17 +283,17 @@ fn forward(state: State, turn: Turn) -> State {
     }
 }
 
-/// Cost of a place off the circle; `None` if it is too far off or too far ahead or behind.
-fn pull(state: State, circle: Circle, ideal: f64, is_last: bool) -> Option<f64> {
+/// Cost of a place off the track; `None` if it is too far off or too far ahead or behind.
+fn pull(state: State, track: Track, ideal: f64, is_last: bool) -> Option<f64> {
     if is_last {
         return (state.x == 0 && state.y == 0).then_some(0.0);
     }
-    let at = place(state.x, state.y) - circle.center;
-    let off = at.hypot() - circle.radius;
-    let turn = geom::turn(ideal, geom::angle(at));
-    let ahead = if turn > PI { turn - TAU } else { turn };
-    let slack = 0.5 + 1.4 / circle.radius;
-    (off.abs() < 1.9 && ahead.abs() < slack).then_some(PULL * off * off)
+    let (off, along) = track.project(place(state.x, state.y));
+    let length = track.length();
+    let ahead = (along - ideal).rem_euclid(length);
+    let ahead = f64::min(ahead, length - ahead);
+    let slack = 0.5 * track.radius + 1.4;
+    (off.abs() < 1.9 && ahead < slack).then_some(PULL * off * off)
 }
 
 /// Whether no two corners share a place.

@@ -5,7 +5,7 @@ use super::frame::Frame;
 use super::fuse;
 use super::judge;
 use super::lattice::{self, Corner, Relation, Way};
-use super::relax::{Spring, Springs, across};
+use super::relax::{Height, Spring, Springs, across};
 use crate::geom::{self, Point};
 use std::f64::consts::{FRAC_PI_3, TAU};
 
@@ -270,6 +270,7 @@ fn closed(corners: &[Corner], relations: &[Relation]) -> Vec<Vec<Point>> {
     }
     let mut list: Vec<Vec<Point>> = found.into_iter().map(|w| w.points).collect();
     if list.len() < 3 {
+        // not by turns of 60 degrees, and the springs must close it
         list.extend(crooked(corners, relations));
     }
     list
@@ -357,6 +358,7 @@ fn settled(
         }
     }
     list.extend(corner_springs(frame, ring, clusters, relations));
+    let heights = corner_heights(ring, relations, &points);
     if n < 10 && relations.contains(&Relation::Unlike) {
         // no lattice way closes so small a ring: what keeps its inward corner is memory
         for i in 0..n {
@@ -368,7 +370,7 @@ fn settled(
     }
     let springs = Springs {
         list,
-        heights: Vec::new(),
+        heights,
         apart: 0.95,
         push: 1.0,
         fixed: Vec::new(),
@@ -383,6 +385,26 @@ fn spring(ends: [usize; 2], length: f64, force: f64) -> Spring {
         length,
         force,
     }
+}
+
+/// What keeps the turns at both ends of a bond with a wished geometry as they are.
+fn corner_heights(ring: &[usize], relations: &[Relation], points: &[Point]) -> Vec<Height> {
+    let n = ring.len();
+    let is_told =
+        |i: usize| relations[i] != Relation::Free || relations[(i + n - 1) % n] != Relation::Free;
+    (0..n)
+        .filter(|i| is_told(*i))
+        .filter_map(|i| {
+            let [p, a, q] = [n - 1, 0, 1].map(|k| ring[(i + k) % n]);
+            let way = geom::direction(points[p], points[q], 1e-6)?;
+            let off = way.cross(points[a] - points[p]);
+            Some(Height {
+                points: [p, a, q],
+                off: 0.5f64.copysign(off),
+                force: 0.7,
+            })
+        })
+        .collect()
 }
 
 /// Springs for bonds, corners and wished geometries of the large ring where no cluster holds them.

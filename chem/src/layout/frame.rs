@@ -4,6 +4,7 @@ use super::cycles::{self, Block};
 use super::graph::Graph;
 use crate::geom::{self, Point, Vec2};
 use crate::molecule::Order;
+use crate::stereo::LARGEST_CIS_RING;
 use smallvec::SmallVec;
 use std::f64::consts::TAU;
 
@@ -74,7 +75,7 @@ impl Frame {
                         .any(|l| in_block(&l.bond) && graph.order[l.bond] == Order::Double)
                 })
                 .collect(),
-            pairs: ring_pairs(graph, block, &near),
+            pairs: ring_pairs(graph, block, &near, &rings),
             atoms: block.atoms.clone(),
             bonds,
             near,
@@ -119,11 +120,21 @@ pub(super) fn together(ends: [Point; 2], ligands: [Point; 2]) -> Option<bool> {
     (a.abs() > CLEAR && b.abs() > CLEAR).then_some((a > 0.0) == (b > 0.0))
 }
 
-fn ring_pairs(graph: &Graph, block: &Block, near: &[SmallVec<[usize; 4]>]) -> Vec<RingPair> {
+/// Wishes for bonds of a block; those for bonds of rings too small for a choice are left out.
+fn ring_pairs(
+    graph: &Graph,
+    block: &Block,
+    near: &[SmallVec<[usize; 4]>],
+    rings: &[Vec<usize>],
+) -> Vec<RingPair> {
     let local = |a: usize| block.atoms.binary_search(&a).ok();
     let is_linear = |a: usize| graph.is_linear(block.atoms[a]);
     let mut pairs = Vec::new();
-    for pair in &graph.pairs {
+    let in_small = |ends: &[usize; 2]| {
+        let mut small = rings.iter().filter(|r| r.len() <= LARGEST_CIS_RING);
+        small.any(|r| ends.iter().all(|e| r.contains(e)))
+    };
+    for pair in graph.pairs.iter().filter(|p| !in_small(&p.ends)) {
         let ends = pair.ends.map(local);
         let [Some(p), Some(q)] = ends else { continue };
         let ends = [p, q];

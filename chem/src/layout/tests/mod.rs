@@ -20,6 +20,14 @@ struct Sketch {
 }
 
 impl Sketch {
+    /// A single atom.
+    fn atom() -> Sketch {
+        Sketch {
+            n_atoms: 1,
+            ..Sketch::default()
+        }
+    }
+
     /// From walks over bonds (`0-1=2 1-3`) and elements (`O3`).
     fn read(walks: &str, elements: &str) -> Sketch {
         let mut sketch = Sketch::default();

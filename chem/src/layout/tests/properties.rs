@@ -7,8 +7,7 @@ use proptest::prelude::*;
 fn sketches() -> impl Strategy<Value = Sketch> {
     let step = (0u8..10, 0usize..1000, 3usize..8);
     prop::collection::vec(step, 1..14).prop_map(|steps| {
-        let mut s = Sketch::default();
-        s.n_atoms = 1;
+        let mut s = Sketch::atom();
         for (kind, at, size) in steps {
             let free: Vec<usize> = (0..s.n_atoms).filter(|a| degree(&s, *a) < 3).collect();
             let Some(from) = free.get(at % free.len().max(1)).copied() else {

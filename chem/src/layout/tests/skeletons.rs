@@ -121,8 +121,7 @@ fn cyclodextrins_are_large_rings_of_regular_small_ones() {
 
 /// A chain of amino acids: with side chains of one, four and a ring of six atoms.
 fn peptide(n: usize) -> Sketch {
-    let mut s = Sketch::default();
-    s.n_atoms = 1;
+    let mut s = Sketch::atom();
     s.elements.push((0, Element::N));
     let mut last = 0;
     for i in 0..n {
@@ -168,13 +167,11 @@ fn a_peptide_is_a_straight_zigzag() {
 /// without overlaps, a sheet and a tube of hexagons.
 #[test]
 fn work_is_bounded() {
-    let mut chain = Sketch::default();
-    chain.n_atoms = 1;
+    let mut chain = Sketch::atom();
     for i in 0..4000 {
         chain.grow(i);
     }
-    let mut tree = Sketch::default();
-    tree.n_atoms = 1;
+    let mut tree = Sketch::atom();
     let mut level = vec![0];
     while tree.n_atoms < 1500 {
         level = level

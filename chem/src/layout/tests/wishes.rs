@@ -63,14 +63,12 @@ fn chains_and_rings_with_wishes() {
 #[test]
 fn large_rings_with_wishes() {
     for n in [8, 9, 10, 11, 12, 14, 15, 18] {
-        let mut ring = Sketch::default();
-        ring.n_atoms = 1;
+        let mut ring = Sketch::atom();
         ring.ring(0, n);
         ring.bonds[1].2 = Order::Double;
         all_ways(&format!("ring of {n}"), &ring, &[([1, 2], [0, 3])]);
     }
-    let mut diene = Sketch::default();
-    diene.n_atoms = 1;
+    let mut diene = Sketch::atom();
     diene.ring(0, 14);
     for bond in [1, 3, 8] {
         diene.bonds[bond].2 = Order::Double;
@@ -84,8 +82,7 @@ fn large_rings_with_wishes() {
 /// A large ring that a bridge divides.
 #[test]
 fn bridged_large_rings_with_wishes() {
-    let mut s = Sketch::default();
-    s.n_atoms = 1;
+    let mut s = Sketch::atom();
     s.ring(0, 18);
     let mut at = 0;
     for _ in 0..5 {

@@ -1,12 +1,37 @@
 //! Places for new atoms. Plain geometry: regular polygons, 120-degree turns, the widest gap.
 
+mod assemble;
+mod chains;
+mod cycles;
+mod field;
+mod fit;
+mod frame;
+mod fuse;
 mod graft;
+mod graph;
 mod grow;
+mod invert;
+mod judge;
+mod lattice;
+mod lay;
+mod macrocycle;
+mod orient;
+mod overlap;
+mod parts;
+mod planar;
+mod relax;
 mod ring;
+mod rings;
+mod settle;
+mod space;
+mod tidy;
+mod tree;
 mod word;
 
 pub use graft::{Graft, graft};
 pub use grow::atom_at;
+pub use lay::{Layout, Wish, lay_out};
+pub use tidy::tidy;
 pub use word::{Word, read};
 
 use crate::molecule::AtomIx;
@@ -87,3 +112,6 @@ impl fmt::Display for GraftError {
 }
 
 impl std::error::Error for GraftError {}
+
+#[cfg(test)]
+mod tests;

@@ -6,4 +6,5 @@ mod symmetry;
 
 pub use mancude::{Delocalised, Ratio, delocalised};
 pub use rings::Rings;
+pub(crate) use rings::ring_bonds;
 pub use symmetry::Symmetry;

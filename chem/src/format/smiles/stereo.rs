@@ -166,12 +166,26 @@ fn slashes(
             continue;
         }
         let (of_first, of_second) = unit.ligands.split_at(2);
-        let first = end_side(parsed, molecule, ends[0], of_first)?;
-        let second = end_side(parsed, molecule, ends[1], of_second)?;
-        if let (Some(a), Some(b)) = (first, second) {
-            list[ix.index()] = Configuration::Defined(Parity::from_even(a.above == b.above));
-            for bond in a.bonds.iter().chain(&b.bonds) {
-                speaks[*bond] = true;
+        let first = end_side(parsed, molecule, ends[0], of_first);
+        let second = end_side(parsed, molecule, ends[1], of_second);
+        match (first, second) {
+            (Ok(None), Ok(_)) | (Ok(_), Ok(None)) => {}
+            (Ok(Some(a)), Ok(Some(b))) => {
+                list[ix.index()] = Configuration::Defined(Parity::from_even(a.above == b.above));
+                for bond in a.bonds.iter().chain(&b.bonds) {
+                    speaks[*bond] = true;
+                }
+            }
+            // slashes meant for other double bonds meet here; nothing is said of this one
+            (Ok(None), Err(column)) | (Err(column), Ok(None)) => {
+                let [a, b] = ends.map(|end| end.index() + 1);
+                let text = format!(
+                    "the double bond of atoms {a} and {b} stays open: slashes put both ligands of one end on the same side (column {column}), and none stands at the other"
+                );
+                notices.push(Notice::new(0, "same-side", text));
+            }
+            (Err(column), _) | (_, Err(column)) => {
+                return Err(SmilesError::new(column, Fault::SameSide));
             }
         }
     }
@@ -199,12 +213,13 @@ struct Side {
     bonds: SmallVec<[usize; 2]>,
 }
 
+/// What is said at an end; `Err` with the column of the second slash if two contradict each other.
 fn end_side(
     parsed: &Parsed,
     molecule: &Molecule,
     end: AtomIx,
     ligands: &[Ligand],
-) -> Result<Option<Side>, SmilesError> {
+) -> Result<Option<Side>, usize> {
     let mut side: Option<Side> = None;
     for (i, ligand) in ligands.iter().enumerate() {
         let bond = ligand.atom().and_then(|a| molecule.bond_between(end, a));
@@ -229,7 +244,7 @@ fn end_side(
             Some(known) => {
                 let columns = known.bonds.iter().map(|b| parsed.bonds[*b].column);
                 let column = columns.chain([written.column]).max().unwrap_or(1);
-                return Err(SmilesError::new(column, Fault::SameSide));
+                return Err(column);
             }
         }
     }

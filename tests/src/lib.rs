@@ -8,6 +8,7 @@
 
 pub mod change;
 pub mod labels;
+pub mod lines;
 pub mod source;
 
 use chem::drawing::Drawing;

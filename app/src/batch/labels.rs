@@ -5,7 +5,7 @@ use super::{Failure, Status, say};
 use crate::args::Labels;
 use crate::files::{FileError, Piece, Source, Target};
 use chem::format::{Notice, ReadError};
-use chem::pipeline::{self, Place};
+use chem::pipeline::{self, Place, Report};
 use chem::solve::require::Requirement;
 use chem::stereo::Ligand;
 use serde::Serialize;
@@ -41,7 +41,7 @@ pub(super) fn run(args: &Labels) -> Result<Status, Failure> {
 }
 
 fn one_file(path: &Path, many: bool, args: &Labels, out: &mut Target) -> Result<Status, Failure> {
-    let mut source = Source::open(path)?;
+    let mut source = Source::open_also_notation(path)?;
     let name = source.name.clone();
     if many && !args.json {
         out.write(format!("# {name}\n").as_bytes())?;
@@ -95,33 +95,79 @@ fn one_file(path: &Path, many: bool, args: &Labels, out: &mut Target) -> Result<
     })
 }
 
-fn in_table(piece: &Piece) -> Answer {
-    let record = match piece.read() {
-        Ok(record) => record,
-        Err(error) => {
-            return Answer {
-                line: None,
-                error: Some(error.to_string()),
-                notices: Vec::new(),
-                faults: Vec::new(),
-            };
-        }
-    };
-    let labels = pipeline::labels_line(&record.drawing);
-    Answer {
-        line: Some(format!("{}\t{}\t{labels}", piece.number, piece.title())),
-        error: None,
+/// What one record carries.
+struct Carried<T> {
+    labels: T,
+    faults: Vec<String>,
+    notices: Vec<Notice>,
+}
+
+/// The labels of a record alone, which is quicker than a report.
+fn labels_of(piece: &Piece) -> Result<Carried<String>, ReadError> {
+    if piece.is_notation {
+        let line = piece.read_notation()?;
+        return Ok(Carried {
+            labels: pipeline::labels_of(
+                &line.molecule,
+                &line.rings,
+                &line.units,
+                &line.configurations,
+            ),
+            faults: Vec::new(),
+            notices: line.notices,
+        });
+    }
+    let record = piece.read()?;
+    Ok(Carried {
+        labels: pipeline::labels_line(&record.drawing),
         faults: pipeline::faults(&record.drawing),
         notices: record.notices,
+    })
+}
+
+fn report_of(piece: &Piece) -> Result<Carried<Report>, ReadError> {
+    let (labels, notices) = if piece.is_notation {
+        let line = piece.read_notation()?;
+        (pipeline::report_of(&line), line.notices)
+    } else {
+        let record = piece.read()?;
+        let report = pipeline::report(&record.drawing, &Requirement::default());
+        (report, record.notices)
+    };
+    Ok(Carried {
+        faults: labels.faults(),
+        labels,
+        notices,
+    })
+}
+
+fn in_table(piece: &Piece) -> Answer {
+    match labels_of(piece) {
+        Ok(carried) => Answer {
+            line: Some(format!(
+                "{}\t{}\t{}",
+                piece.number,
+                piece.title(),
+                carried.labels
+            )),
+            error: None,
+            faults: carried.faults,
+            notices: carried.notices,
+        },
+        Err(error) => Answer {
+            line: None,
+            error: Some(error.to_string()),
+            notices: Vec::new(),
+            faults: Vec::new(),
+        },
     }
 }
 
 fn in_json(piece: &Piece, file: Option<&str>) -> Answer {
-    let (units, faults, error, notices) = match piece.read() {
-        Ok(record) => {
-            let report = pipeline::report(&record.drawing, &Requirement::default());
-            let units = report.places.iter().map(UnitJson::new).collect();
-            (units, report.faults(), None, record.notices)
+    let (units, faults, error, notices) = match report_of(piece) {
+        Ok(carried) => {
+            let units = carried.labels.places.iter().map(UnitJson::new).collect();
+            (units, carried.faults, None, carried.notices)
         }
         Err(error) => (Vec::new(), Vec::new(), Some(error), Vec::new()),
     };

@@ -2,9 +2,11 @@
 //! is carried, and carry it.
 
 mod carry;
+mod notation;
 mod report;
 
 pub use carry::carry;
+pub use notation::{labels_of, report_of};
 pub use report::{faults, labels_line, report, why};
 
 use crate::cip::Rule;

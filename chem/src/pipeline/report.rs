@@ -1,6 +1,6 @@
 //! What a drawing carries, place by place.
 
-use super::{Idle, Place, Report, Sense, Verdict, perceived};
+use super::{Idle, Place, Report, Sense, Verdict, labels_of, perceived};
 use crate::cip::{Limits, Missing, Ranker, Tie, UnitLabel};
 use crate::drawing::{Drawing, Mark};
 use crate::molecule::{AtomIx, Order};
@@ -115,19 +115,7 @@ fn speaks_at(unit: &Unit, narrow: AtomIx, wide: AtomIx) -> bool {
 pub fn labels_line(drawing: &Drawing) -> String {
     let (rings, units) = perceived(drawing);
     let reading = wedge::read(drawing, &units);
-    let defined = |c: &Configuration| matches!(c, Configuration::Defined(_));
-    if !reading.configurations().iter().any(defined) {
-        return String::new();
-    }
-    let ranker = Ranker::new(drawing.molecule(), &rings, &units, Limits::default());
-    let labels = ranker.label_defined(reading.configurations());
-    let list = units
-        .iter()
-        .zip(labels)
-        .filter_map(|((_, unit), label)| Some((unit, label?.descriptor.ok()?)))
-        .flat_map(|(unit, d)| unit.atoms().into_iter().map(move |a| (a, d)))
-        .collect();
-    spell(list)
+    labels_of(drawing.molecule(), &rings, &units, reading.configurations())
 }
 
 /// What a reader of the labels alone would not see, a sentence each (see [`Report::faults`]); quick where

@@ -5,7 +5,7 @@
 //! and helices cannot be said in this notation and stay open.
 //!
 //! Reading: `lex` and `bracket` (signs), `parse` (grammar), `atoms` (bonds, hydrogens), `stereo`, `tail`
-//! (groups, places). Writing: `write`, with `tree` (order) and `slash` (marks at double bonds).
+//! (groups, places); `file` cuts a file into lines. Writing: `write`, with `tree` (order) and `slash` (marks at double bonds).
 //!
 //! Source: OpenSMILES specification (2016 draft), as far as it could be read.
 
@@ -13,6 +13,7 @@ mod atoms;
 mod bracket;
 mod cycles;
 mod error;
+mod file;
 mod lex;
 mod parse;
 mod slash;
@@ -22,6 +23,7 @@ mod tree;
 mod write;
 
 pub use error::{Fault, SmilesError};
+pub use file::{LineReader, recognize};
 pub use tail::{Group, GroupKind};
 pub use write::{Unwritable, Written, write};
 
@@ -68,9 +70,8 @@ pub fn read(text: &str) -> Result<Smiles, SmilesError> {
         let reason = Fault::TooLong(MOST_CHARACTERS);
         return Err(SmilesError::new(MOST_CHARACTERS, reason));
     }
-    let end = text.find(char::is_whitespace).unwrap_or(text.len());
-    let (line, rest) = text.split_at_checked(end).unwrap_or((text, ""));
-    let parsed = parse::parse(line)?;
+    let parts = Parts::of(text);
+    let parsed = parse::parse(parts.molecule)?;
     let mut notices = Vec::new();
     if let Some(column) = parsed.late_ring {
         let text = format!("the ring number in column {column} stands after a branch");
@@ -90,18 +91,53 @@ pub fn read(text: &str) -> Result<Smiles, SmilesError> {
         title: String::new(),
         notices,
     };
-    smiles.rest(text, rest)?;
+    smiles.rest(&parts)?;
     Ok(smiles)
+}
+
+/// Text after the molecule and its tail, which is the name; also of a line that cannot be read.
+pub fn title(line: &str) -> &str {
+    Parts::of(line).title
+}
+
+/// The three parts of a line.
+struct Parts<'a> {
+    molecule: &'a str,
+    /// What stands between the bars, and the column of its first character.
+    tail: Option<(usize, &'a str)>,
+    title: &'a str,
+}
+
+impl<'a> Parts<'a> {
+    fn of(text: &'a str) -> Parts<'a> {
+        let end = text.find(char::is_whitespace).unwrap_or(text.len());
+        let (molecule, rest) = text.split_at_checked(end).unwrap_or((text, ""));
+        let rest = rest.trim_start();
+        match rest.strip_prefix('|').and_then(|r| r.split_once('|')) {
+            Some((tail, title)) => {
+                let before = text.get(..text.len() - rest.len());
+                let column = before.map_or(0, |t| t.chars().count()) + 2;
+                Parts {
+                    molecule,
+                    tail: Some((column, tail)),
+                    title: title.trim(),
+                }
+            }
+            None => Parts {
+                molecule,
+                tail: None,
+                title: rest.trim_end(),
+            },
+        }
+    }
 }
 
 impl Smiles {
     /// Takes what stands after the molecule.
-    fn rest(&mut self, text: &str, rest: &str) -> Result<(), SmilesError> {
-        let rest = rest.trim_start();
-        let tail = rest.strip_prefix('|').and_then(|r| r.split_once('|'));
-        let Some((tail, title)) = tail else {
-            rest.trim_end().clone_into(&mut self.title);
-            if rest.starts_with('|') {
+    fn rest(&mut self, parts: &Parts<'_>) -> Result<(), SmilesError> {
+        parts.title.clone_into(&mut self.title);
+        let Some((column, tail)) = parts.tail else {
+            if parts.title.starts_with('|') {
                 self.notices.push(Notice::new(
                     0,
                     "tail",
@@ -110,9 +146,6 @@ impl Smiles {
             }
             return Ok(());
         };
-        let before = text.len() - rest.len();
-        let column = text.get(..before).map_or(0, |t| t.chars().count()) + 2;
-        title.trim().clone_into(&mut self.title);
         let tail = tail::read(tail, column, self.molecule.n_atoms(), &mut self.notices)?;
         self.groups = tail.groups;
         self.points = tail.points;

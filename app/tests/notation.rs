@@ -79,7 +79,7 @@ fn a_bad_line_keeps_the_others_and_says_where() {
     for words in [
         "record 2, line 2, column 5: / and \\ put both ligands",
         "record 3, line 3, column 4: @? is no sign of the notation. Write no @ for an unknown centre.",
-        "record 4, line 4: the @ at atom 2 (column 3) says nothing",
+        "record 4, line 4: the @ at atom 2 (column 2) says nothing",
     ] {
         assert!(told.contains(words), "'{words}' is not in: {told}");
     }

@@ -70,6 +70,12 @@ fn at_signs(parsed: &Parsed, units: &Units, list: &mut [Configuration], notices:
                 let written = ligands_as_written(parsed, unit);
                 let flip = is_odd(unit, &written);
                 list[ix.index()] = Configuration::Defined(parity.flipped_if(flip));
+                if unit.ligands[3] == Ligand::LonePair && !atom.has_previous {
+                    notices.push(Notice::new(0, "lone-pair-first", format!(
+                        "the line begins with atom {}, a centre with a lone pair: some programs read its @ the other way; begin with another atom",
+                        i + 1
+                    )));
+                }
             }
             None => notices.push(Notice::new(
                 0,

@@ -233,6 +233,7 @@ fn marks_that_say_nothing_are_told() {
         ("F/C=C/C=C", vec![]),
         ("CN=C(/C=C/F)/C=C/F", vec!["same-side"]),
         ("C(C)1CC1", vec!["late-ring-number"]),
+        ("[S@](C)(=O)CC", vec!["lone-pair-first"]),
     ] {
         let found: Vec<&str> = good(line).notices.iter().map(|n| n.code).collect();
         assert_eq!(found, codes, "{line}");

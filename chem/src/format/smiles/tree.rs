@@ -28,14 +28,15 @@ pub(super) struct Around {
 }
 
 impl Tree {
-    pub(super) fn new(molecule: &Molecule) -> Tree {
+    /// `late`: atoms with which no part begins if it has others.
+    pub(super) fn new(molecule: &Molecule, late: &[AtomIx]) -> Tree {
         let n = molecule.n_atoms();
         let mut tree = Tree {
             order: Vec::with_capacity(n),
             place: vec![usize::MAX; n],
             around: vec![Around::default(); n],
         };
-        let found = tree.search(molecule);
+        let found = tree.search(molecule, late);
         tree.sort_branches(&found);
         tree.set_places();
         for around in 0..n {
@@ -48,10 +49,15 @@ impl Tree {
     }
 
     /// Parts the bonds into those that lead on and those that close rings; the order of finding.
-    fn search(&mut self, molecule: &Molecule) -> Vec<AtomIx> {
+    fn search(&mut self, molecule: &Molecule, late: &[AtomIx]) -> Vec<AtomIx> {
         let mut found = Vec::with_capacity(molecule.n_atoms());
         let mut is_found = vec![false; molecule.n_atoms()];
-        for root in molecule.atoms() {
+        let mut is_late = vec![false; molecule.n_atoms()];
+        for atom in late {
+            is_late[atom.index()] = true;
+        }
+        let first = molecule.atoms().filter(|a| !is_late[a.index()]);
+        for root in first.chain(late.iter().copied()) {
             if is_found[root.index()] {
                 continue;
             }
@@ -145,11 +151,13 @@ mod tests {
                 (1, 5, 1),
             ],
         );
-        let tree = Tree::new(&m);
+        let tree = Tree::new(&m, &[]);
         let order: Vec<usize> = tree.order.iter().map(|a| a.index()).collect();
         assert_eq!(order, [0, 1, 2, 5, 3, 4]);
         let rings: Vec<usize> = tree.around.iter().map(|a| a.rings.len()).collect();
         assert_eq!(rings, [1, 0, 1, 0, 0, 0]);
         assert_eq!(tree.as_written(AtomIx::new(0)), [2, 1]);
+        let late = Tree::new(&m, &[AtomIx::new(0)]);
+        assert_eq!(late.order[0], AtomIx::new(1));
     }
 }

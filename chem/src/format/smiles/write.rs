@@ -82,7 +82,7 @@ pub fn write(
     if let Some(bond) = molecule.bonds().find(special) {
         return Err(Unwritable::Bond(bond));
     }
-    let tree = Tree::new(molecule);
+    let tree = Tree::new(molecule, &lone_pairs(units, configurations));
     let slashes = slash::choose(molecule, &tree, units, configurations);
     let mut unsaid = slashes.unsaid;
     let mut signs = vec![None; molecule.n_atoms()];
@@ -118,6 +118,22 @@ pub fn write(
         unsaid,
         notices: notices(molecule),
     })
+}
+
+/// Centres of defined configuration with a lone pair: where one begins a line, readers differ on whether
+/// the lone pair counts as its first neighbour.
+fn lone_pairs(units: &Units, configurations: &[Configuration]) -> Vec<AtomIx> {
+    let defined = units
+        .iter()
+        .zip(configurations)
+        .filter(|(_, c)| **c != Configuration::Open);
+    let with_pair = defined.filter(|((_, unit), _)| unit.ligands[3] == Ligand::LonePair);
+    with_pair
+        .filter_map(|((_, unit), _)| match unit.focus {
+            Focus::Center(atom) => Some(atom),
+            Focus::Pair(_) => None,
+        })
+        .collect()
 }
 
 /// The atom at which a unit's `@` stands.

@@ -128,4 +128,124 @@ mod tests {
         assert_eq!(open.places.len(), 2);
         assert!(open.places.iter().all(|p| p.verdict == Verdict::Open));
     }
+
+    fn labels(line: &str) -> String {
+        let line = smiles::read(line).unwrap_or_else(|e| panic!("{line}: {e}"));
+        labels_of(
+            &line.molecule,
+            &line.rings,
+            &line.units,
+            &line.configurations,
+        )
+    }
+
+    // OpenSMILES, "Tetrahedral centers": each column one configuration in several orders of writing
+    #[test]
+    fn one_centre_in_many_orders() {
+        for (lines, label) in [
+            (
+                &[
+                    "N[C@@](F)(C)C(=O)O",
+                    "N[C@](C)(F)C(=O)O",
+                    "OC(=O)[C@@](N)(C)F",
+                    "[C@@](N)(F)(C)C(=O)O",
+                ][..],
+                None,
+            ),
+            (
+                &[
+                    "O[C@H](CC)C#N",
+                    "N#C[C@@H](CC)O",
+                    "[C@@H](O)(CC)C#N",
+                    "CC[C@](O)([H])C#N",
+                ][..],
+                None,
+            ),
+            (
+                &[
+                    "N1[C@H](C)CC1",
+                    "[C@H]1(C)NCC1",
+                    "C[C@@H]1CCN1",
+                    "C[C@H]1NCC1",
+                ][..],
+                None,
+            ),
+            (
+                &["C[S@](=O)CC", "O=[S@@](C)CC", "[S@@](C)(=O)CC"][..],
+                Some("S"),
+            ),
+        ] {
+            let found: Vec<String> = lines
+                .iter()
+                .map(|line| {
+                    labels(line)
+                        .trim_start_matches(|c: char| c.is_ascii_digit())
+                        .to_owned()
+                })
+                .collect();
+            assert!(
+                found.iter().all(|f| *f == found[0] && f.len() == 1),
+                "{lines:?}: {found:?}"
+            );
+            if let Some(label) = label {
+                assert_eq!(found[0], label, "{lines:?}");
+            }
+        }
+    }
+
+    // OpenSMILES, "Cis/trans configuration around double bonds"
+    #[test]
+    fn one_double_bond_in_many_orders() {
+        for (lines, letter) in [
+            (
+                &[
+                    "F/C=C/F",
+                    "F\\C=C\\F",
+                    "C(\\F)=C/F",
+                    "Cl/C(F)=C/Cl",
+                    "C(/F)=C\\F",
+                ][..],
+                'E',
+            ),
+            (
+                &[
+                    "F\\C=C/F",
+                    "F/C=C\\F",
+                    "C(/F)=C/F",
+                    "C/1=C/CCCCCC1",
+                    "C1=C\\CCCCCC/1",
+                ][..],
+                'Z',
+            ),
+            (
+                &["C1=C/CCCCCC/1", "C\\1=C/CCCCCC1", "C\\1=C/CCCCCC/1"][..],
+                'E',
+            ),
+            (&["C/C=N/O", "C\\C=N\\O", "C/N=N/C"][..], 'E'),
+            (&["F/C=C=C=C/F"][..], 'E'),
+        ] {
+            for line in lines {
+                let found = labels(line);
+                assert!(
+                    found.split(' ').count() == 2
+                        && found.chars().filter(|c| *c == letter).count() == 2,
+                    "{line}: {found}"
+                );
+            }
+        }
+    }
+
+    // the chirality classes of OpenSMILES
+    #[test]
+    fn classes_say_the_same_as_plain_signs() {
+        for (a, b) in [
+            ("N[C@TH1H](C)F", "N[C@H](C)F"),
+            ("N[C@TH2H](C)F", "N[C@@H](C)F"),
+            ("CC=[C@AL1]=CC", "CC=[C@]=CC"),
+            ("CC=[C@AL2]=CC", "CC=[C@@]=CC"),
+        ] {
+            let (x, y) = (labels(a), labels(b));
+            assert!(x == y && !x.is_empty(), "{a} {x}, {b} {y}");
+        }
+    }
 }

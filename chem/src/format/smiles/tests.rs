@@ -1,33 +1,12 @@
 //! What lines say, and that what is written says the same.
 
 use super::*;
-use crate::cip::{Limits, Ranker};
 use crate::molecule::{AtomIx, Molecule};
 use crate::stereo::{Ligand, Parity, odd_permutation};
 use proptest::prelude::*;
 
 fn good(text: &str) -> Smiles {
     read(text).unwrap_or_else(|e| panic!("{text}: {e}"))
-}
-
-/// Labels by atom, from 1.
-fn labels(smiles: &Smiles) -> String {
-    let limits = Limits::default();
-    let ranker = Ranker::new(&smiles.molecule, &smiles.rings, &smiles.units, limits);
-    let found = ranker.label_defined(&smiles.configurations);
-    let mut list: Vec<(usize, char)> = Vec::new();
-    for ((_, unit), label) in smiles.units.iter().zip(found) {
-        if let Some(Ok(descriptor)) = label.map(|l| l.descriptor) {
-            list.extend(
-                unit.atoms()
-                    .iter()
-                    .map(|a| (a.index() + 1, descriptor.letter())),
-            );
-        }
-    }
-    list.sort_unstable();
-    let words: Vec<String> = list.iter().map(|(n, d)| format!("{n}{d}")).collect();
-    words.join(" ")
 }
 
 /// Fails unless what is written of a line's molecule says the same molecule and configurations.
@@ -112,102 +91,6 @@ fn renumbered(
     }
 }
 
-// OpenSMILES, "Tetrahedral centers": each column one configuration in several orders of writing
-#[test]
-fn one_centre_in_many_orders() {
-    for (lines, label) in [
-        (
-            &[
-                "N[C@@](F)(C)C(=O)O",
-                "N[C@](C)(F)C(=O)O",
-                "OC(=O)[C@@](N)(C)F",
-                "[C@@](N)(F)(C)C(=O)O",
-            ][..],
-            None,
-        ),
-        (
-            &[
-                "O[C@H](CC)C#N",
-                "N#C[C@@H](CC)O",
-                "[C@@H](O)(CC)C#N",
-                "CC[C@](O)([H])C#N",
-            ][..],
-            None,
-        ),
-        (
-            &[
-                "N1[C@H](C)CC1",
-                "[C@H]1(C)NCC1",
-                "C[C@@H]1CCN1",
-                "C[C@H]1NCC1",
-            ][..],
-            None,
-        ),
-        (
-            &["C[S@](=O)CC", "O=[S@@](C)CC", "[S@@](C)(=O)CC"][..],
-            Some("S"),
-        ),
-    ] {
-        let found: Vec<String> = lines
-            .iter()
-            .map(|line| {
-                labels(&good(line))
-                    .trim_start_matches(|c: char| c.is_ascii_digit())
-                    .to_owned()
-            })
-            .collect();
-        assert!(
-            found.iter().all(|f| *f == found[0] && f.len() == 1),
-            "{lines:?}: {found:?}"
-        );
-        if let Some(label) = label {
-            assert_eq!(found[0], label, "{lines:?}");
-        }
-    }
-}
-
-// OpenSMILES, "Cis/trans configuration around double bonds"
-#[test]
-fn one_double_bond_in_many_orders() {
-    for (lines, letter) in [
-        (
-            &[
-                "F/C=C/F",
-                "F\\C=C\\F",
-                "C(\\F)=C/F",
-                "Cl/C(F)=C/Cl",
-                "C(/F)=C\\F",
-            ][..],
-            'E',
-        ),
-        (
-            &[
-                "F\\C=C/F",
-                "F/C=C\\F",
-                "C(/F)=C/F",
-                "C/1=C/CCCCCC1",
-                "C1=C\\CCCCCC/1",
-            ][..],
-            'Z',
-        ),
-        (
-            &["C1=C/CCCCCC/1", "C\\1=C/CCCCCC1", "C\\1=C/CCCCCC/1"][..],
-            'E',
-        ),
-        (&["C/C=N/O", "C\\C=N\\O", "C/N=N/C"][..], 'E'),
-        (&["F/C=C=C=C/F"][..], 'E'),
-    ] {
-        for line in lines {
-            let found = labels(&good(line));
-            assert!(
-                found.split(' ').count() == 2
-                    && found.chars().filter(|c| *c == letter).count() == 2,
-                "{line}: {found}"
-            );
-        }
-    }
-}
-
 #[test]
 fn contradicting_slashes_have_a_column() {
     for (line, column) in [("C/C(\\F)=C/F", 5), ("F/C=C(/F)/Cl", 10)] {
@@ -237,20 +120,6 @@ fn marks_that_say_nothing_are_told() {
     ] {
         let found: Vec<&str> = good(line).notices.iter().map(|n| n.code).collect();
         assert_eq!(found, codes, "{line}");
-    }
-}
-
-// the chirality classes of OpenSMILES
-#[test]
-fn classes_say_the_same_as_plain_signs() {
-    for (a, b) in [
-        ("N[C@TH1H](C)F", "N[C@H](C)F"),
-        ("N[C@TH2H](C)F", "N[C@@H](C)F"),
-        ("CC=[C@AL1]=CC", "CC=[C@]=CC"),
-        ("CC=[C@AL2]=CC", "CC=[C@@]=CC"),
-    ] {
-        let (x, y) = (labels(&good(a)), labels(&good(b)));
-        assert!(x == y && !x.is_empty(), "{a} {x}, {b} {y}");
     }
 }
 
@@ -307,11 +176,7 @@ fn what_is_written_says_the_same() {
         assert!(written.unsaid.is_empty(), "{line}: {written:?}");
         // and again: the order of writing is kept
         let again = round_trip(&good(&written.text), &written.text);
-        assert_eq!(
-            labels(&good(&again.text)).len(),
-            labels(&smiles).len(),
-            "{line}"
-        );
+        assert!(again.unsaid.is_empty(), "{line}: {again:?}");
     }
 }
 

@@ -25,12 +25,14 @@ pub(super) fn molecule(parsed: &Parsed) -> Result<Molecule, SmilesError> {
         return Err(SmilesError::new(column, Fault::TooLarge));
     }
     let aromatic = aromatic_bonds(parsed, &raw, &in_ring)?;
-    if !aromatic.is_empty() {
+    let filled = if aromatic.is_empty() {
+        raw
+    } else {
         let needs = needs(parsed, &raw);
         kekule::localize(&needs, &mut bonds, &aromatic)
             .map_err(|fault| unlocalized(parsed, fault))?;
-    }
-    let filled = build(&atoms, &bonds)?;
+        build(&atoms, &bonds)?
+    };
     let mut states_valence = false;
     for ix in filled.atoms() {
         let written = &parsed.atoms[ix.index()];

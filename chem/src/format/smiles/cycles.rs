@@ -2,8 +2,8 @@
 
 use crate::molecule::{AtomIx, Molecule};
 
-/// Most steps that are spent on rings: about two seconds, a single ring of twenty thousand atoms.
-pub(super) const MOST_WORK: u64 = 400_000_000;
+/// Most steps that are spent on rings: under a second, a single system of seven thousand bonds.
+pub(super) const MOST_WORK: u64 = 50_000_000;
 
 /// Steps of a search for the smallest ring through each ring bond: each may walk over its whole system.
 pub(super) fn work(molecule: &Molecule, in_ring: &[bool]) -> u64 {

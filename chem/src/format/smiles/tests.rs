@@ -262,6 +262,37 @@ fn long_and_deep_lines() {
     ));
 }
 
+/// Systems that are hard to pair: strips of four- and five-membered rings, odd ones among them.
+#[test]
+fn large_systems_end() {
+    let there =
+        |n: usize, next: &str| -> String { (0..n).map(|i| format!("c%({i}){next}")).collect() };
+    let back = |n: usize| -> String { (0..n).rev().map(|i| format!("c%({i})")).collect() };
+    for (line, pairs) in [
+        (format!("{}cc{}", there(1000, ""), back(1000)), Some(1001)),
+        (format!("{}ccc{}", there(1000, ""), back(1000)), None),
+        (format!("{}c{}", there(999, "c"), back(999)), Some(1499)),
+        (format!("{}c{}", there(1000, "c"), back(1000)), None),
+        (format!("{}cc{}", there(4000, ""), back(4000)), None),
+    ] {
+        match (read(&line), pairs) {
+            (Ok(s), Some(pairs)) => {
+                let doubles = s
+                    .molecule
+                    .bonds()
+                    .filter(|b| s.molecule.bond(*b).order.pairs() == 2);
+                assert_eq!(doubles.count(), pairs);
+            }
+            (Err(error), None) => assert!(matches!(
+                error.reason,
+                Fault::NoPattern(_) | Fault::TooLarge
+            )),
+            (Ok(_), None) => panic!("an odd number of atoms was paired"),
+            (Err(error), Some(_)) => panic!("{error}"),
+        }
+    }
+}
+
 proptest! {
     #![proptest_config(ProptestConfig::with_cases(2000))]
 

@@ -29,6 +29,10 @@ pub enum Verb {
     Labels(Labels),
     /// Draw what is required: marks set, double bonds turned
     Place(Place),
+    /// Tell what a reader could take wrongly in each drawing, and what would mend it
+    Audit(Audit),
+    /// Mend drawings: towards what is required, or, if nothing is, all that keeps their meaning
+    Mend(Mend),
     /// Make a figure for print
     Figure(Figure),
     /// Read a requirement line and write it in its one canonical form
@@ -65,6 +69,51 @@ pub struct Place {
     /// Where to write; - is standard output
     #[arg(short, long, value_name = "OUT")]
     pub out: PathBuf,
+    /// How many records are worked on at once
+    #[arg(long, value_name = "N")]
+    pub threads: Option<NonZeroUsize>,
+}
+
+/// Arguments of `audit`.
+#[derive(Debug, Group)]
+#[command(group(clap::ArgGroup::new("audit_requirement").args(["carry", "carry_field"])))]
+pub struct Audit {
+    /// Molfiles or SD files; - is standard input
+    #[arg(required = true, value_name = "FILE")]
+    pub files: Vec<PathBuf>,
+    /// What every drawing must carry, such as '(1R,2S)', by atom numbers
+    #[arg(long, value_name = "LINE")]
+    pub carry: Option<String>,
+    /// The data field that holds what the drawing of a record must carry
+    #[arg(long, value_name = "NAME")]
+    pub carry_field: Option<String>,
+    /// Write one JSON object a line, with every finding, what it rests on and how to mend it
+    #[arg(long)]
+    pub json: bool,
+    /// How many records are worked on at once
+    #[arg(long, value_name = "N")]
+    pub threads: Option<NonZeroUsize>,
+}
+
+/// Arguments of `mend`.
+#[derive(Debug, Group)]
+#[command(group(clap::ArgGroup::new("mend_requirement").args(["carry", "carry_field"])))]
+pub struct Mend {
+    /// A molfile or SD file; - is standard input
+    #[arg(value_name = "FILE")]
+    pub file: PathBuf,
+    /// What every drawing must carry, such as '(1R,2S)', by atom numbers
+    #[arg(long, value_name = "LINE")]
+    pub carry: Option<String>,
+    /// The data field that holds what the drawing of a record must carry
+    #[arg(long, value_name = "NAME")]
+    pub carry_field: Option<String>,
+    /// Where to write; - is standard output
+    #[arg(short, long, value_name = "OUT")]
+    pub out: PathBuf,
+    /// Where to write what was mended and why, one JSON object a line
+    #[arg(long, value_name = "LOG")]
+    pub log: Option<PathBuf>,
     /// How many records are worked on at once
     #[arg(long, value_name = "N")]
     pub threads: Option<NonZeroUsize>,

@@ -128,6 +128,7 @@ impl Session {
             name: "Open".to_owned(),
             drawing,
             line,
+            groups: document.record.stereo_groups.clone().into(),
             revision: 0,
         });
         let mut session = Session {
@@ -280,7 +281,10 @@ impl Session {
         let (drawing, map) = self.drawing().apply(edits)?;
         let line = line::follow(self.line(), &map);
         self.selection = self.selection.renumbered(&map);
-        self.history.push(name, Arc::new(drawing), line);
+        let groups = self.history.now().groups.iter();
+        let groups = groups.filter_map(|g| g.renumbered(&map)).collect();
+        self.history
+            .push_with_groups(name, Arc::new(drawing), line, groups);
         self.read();
         Ok(map)
     }
@@ -437,7 +441,9 @@ impl Session {
     pub fn save(&mut self, path: &Path) -> Result<(), FileError> {
         self.settle();
         let drawing = (**self.drawing()).clone();
-        let record = self.document.record.clone().with_drawing(drawing);
+        let groups = self.history.now().groups.to_vec();
+        let record = self.document.record.clone();
+        let record = record.with_drawing_and_groups(drawing, groups);
         files::write(path, &record)?;
         self.document = Document::of(record);
         self.path = Some(path.to_owned());

@@ -6,6 +6,7 @@
 //! molfile ──format──> Drawing ──wedge::read──> Configuration ──cip──> Labels ──┐
 //! typed line ──solve::require──> Requirement ────────────── compare ──────────┤──> verdict
 //!            Requirement ──solve──> Configuration ──wedge::place──> Drawing ──┘ (read back)
+//!            Drawing ──audit──> Findings ──audit::mend──> Drawing
 //!            Drawing ──ink──> paths and text in points
 //! ```
 //!
@@ -37,3 +38,5 @@ pub mod layout;
 pub mod ink;
 
 pub mod pipeline;
+
+pub mod audit;

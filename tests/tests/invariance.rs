@@ -1,90 +1,67 @@
-//! Labels depend on the molecule that is drawn, not on how its file or its drawing is made.
+//! Labels depend on the molecule that is drawn, not on how its file or its drawing is made: the worked
+//! examples. (The drawings of the public suite go through the same changes in `suite.rs`.)
 
-use checks::change::{self, Dice};
+use checks::hold::{self, same_numbers};
 use checks::labels::Labels;
-use checks::{Worked, labels_of, no_misses, worked};
-use chem::drawing::Drawing;
-use chem::geom::{self, Point};
+use checks::{change, kekule, labels_of, no_misses, worked};
 
 const SEEDS: u64 = 20;
 
-/// Every worked example, changed once per seed, carries what `expect` makes of its labels.
-fn hold(
-    seeds: u64,
-    change: impl Fn(&Drawing, &mut Dice) -> (Drawing, Vec<usize>),
-    expect: impl Fn(&Labels) -> Labels,
-) {
-    let mut misses = Vec::new();
-    let mut tried = 0;
-    for Worked {
-        title,
-        labels,
-        drawing,
-    } in worked()
-    {
-        for seed in 1..=seeds {
-            let (other, numbers) = change(&drawing, &mut Dice::new(seed));
-            let (read, want) = (labels_of(&other), expect(&labels).renumbered(&numbers));
-            tried += 1;
-            if read != want {
-                misses.push(format!("{title}, seed {seed}: read `{read}`, not `{want}`"));
-            }
-        }
-    }
-    no_misses(&misses, tried);
-}
-
-fn same_numbers(drawing: &Drawing) -> Vec<usize> {
-    (1..=drawing.molecule().n_atoms()).collect()
-}
-
 #[test]
 fn order_of_atoms_and_bonds_does_not_matter() {
-    hold(SEEDS, change::reordered, Labels::clone);
+    hold::order_does_not_matter(&worked(), SEEDS);
 }
 
 #[test]
 fn place_size_and_turn_on_the_sheet_do_not_matter() {
-    hold(
-        SEEDS,
-        |drawing, dice| {
-            let angle = std::f64::consts::TAU * dice.unit();
-            let scale = 10f64.powf(4.0 * dice.unit() - 2.0);
-            let shift = geom::Vec2::new(dice.unit() - 0.5, dice.unit() - 0.5) * 1000.0;
-            let other = change::moved(drawing, |p| {
-                let turned = geom::rotate(p, Point::ORIGIN, angle);
-                (turned.to_vec2() * scale + shift).to_point()
-            });
-            (other, same_numbers(drawing))
-        },
-        Labels::clone,
-    );
+    hold::place_does_not_matter(&worked(), SEEDS);
 }
 
 #[test]
-fn a_mirrored_drawing_with_the_same_marks_shows_the_mirror_image() {
-    hold(
-        1,
-        |drawing, _| (change::mirrored(drawing), same_numbers(drawing)),
-        Labels::mirrored,
-    );
+fn mirror_images_have_mirrored_labels() {
+    hold::mirror_images_mirror(&worked());
 }
 
+// of double bonds only those that lie between mirrored groups change, and these only by their groups
 #[test]
 fn solid_for_hashed_shows_the_mirror_image() {
-    hold(
+    hold::hold(
+        &worked(),
         1,
-        |drawing, _| (change::swapped(drawing), same_numbers(drawing)),
+        |drawing, _| Some(same_numbers(change::swapped(drawing))),
         Labels::mirrored,
     );
 }
 
 #[test]
-fn the_sheet_turned_over_shows_the_same() {
-    hold(
-        SEEDS,
-        |drawing, dice| change::reordered(&change::swapped(&change::mirrored(drawing)), dice),
-        Labels::clone,
+fn another_kekule_form_has_the_same_labels() {
+    let tried = hold::kekule_form_does_not_matter(&worked(), SEEDS);
+    assert!(tried >= 45 * 20, "only {tried} drawings had another form");
+}
+
+#[test]
+fn forms_are_found_where_there_are_any() {
+    let all = worked();
+    let mut several = 0;
+    for k in &all {
+        let first = kekule::double_bonds(&k.drawing);
+        let mut forms: Vec<Vec<usize>> = (1..=40)
+            .filter_map(|seed| kekule::other_form(&k.drawing, &mut change::Dice::new(seed)))
+            .map(|form| kekule::double_bonds(&form))
+            .collect();
+        forms.sort();
+        forms.dedup();
+        assert!(
+            forms.iter().all(|f| *f != first && f.len() == first.len()),
+            "{}",
+            k.title
+        );
+        several += usize::from(forms.len() >= 3);
+    }
+    // two rings, or two fused ones, have three other forms or more
+    assert!(
+        several >= 15,
+        "only {several} drawings had three other forms"
     );
 }
 

@@ -3,7 +3,7 @@
 
 use checks::change::bare;
 use checks::labels::Labels;
-use checks::{labels_of, no_misses, worked, worked_one};
+use checks::{by_name, labels_of, no_misses, worked, worked_one};
 use chem::drawing::Drawing;
 use chem::molecule::{AtomIx, Molecule};
 use chem::pipeline::{self, Solution};
@@ -176,12 +176,13 @@ fn turn_fault(before: &Drawing, ends: [usize; 2], after: &Drawing) -> Option<Str
         .then(|| format!("two atoms stand {near:.2} bond lengths apart"))
 }
 
+// those by name: elsewhere a geometry may decide the rank of another place (Rule 3)
 #[test]
 fn double_bonds_are_turned_and_nothing_else_moves() {
     // their centres are such only as long as the two double bonds differ (Rule 3)
     let bound = ["seqcis over seqtrans", "two propenyl arms"];
     let (mut misses, mut tried) = (Vec::new(), 0);
-    for w in worked() {
+    for w in by_name() {
         for (ends, carried) in w.labels.double_bonds(&w.drawing) {
             let m = w.drawing.molecule();
             let is_open = side(m, AtomIx::new(ends[0] - 1), AtomIx::new(ends[1] - 1)).is_some();

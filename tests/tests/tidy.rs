@@ -102,18 +102,25 @@ fn no_word_that_means_nothing_to_a_reader() {
 
 #[test]
 fn tables_name_no_record_twice() {
-    let table = text(&top().join("tests/corpus/worked.tsv"));
-    let mut titles: Vec<&str> = table
-        .lines()
-        .filter(|line| !line.starts_with('#'))
-        .filter_map(|line| line.split('\t').next())
-        .collect();
+    let mut titles = Vec::new();
+    for (name, drawn) in [
+        ("worked", checks::by_name()),
+        ("clauses", checks::by_clause()),
+    ] {
+        let table = text(&top().join(format!("tests/corpus/{name}.tsv")));
+        let rows: Vec<String> = table
+            .lines()
+            .filter(|line| !line.starts_with('#'))
+            .filter_map(|line| line.split('\t').next().map(str::to_owned))
+            .collect();
+        let drawn: Vec<String> = drawn.into_iter().map(|k| k.title).collect();
+        assert_eq!(drawn, rows, "{name}.sdf is not drawn from {name}.tsv");
+        titles.extend(rows);
+    }
     let n = titles.len();
     titles.sort_unstable();
     titles.dedup();
-    assert_eq!(titles.len(), n, "a title stands twice in worked.tsv");
-    let drawn: Vec<String> = checks::worked().into_iter().map(|w| w.title).collect();
-    assert_eq!(drawn.len(), n, "worked.sdf is not drawn from worked.tsv");
+    assert_eq!(titles.len(), n, "a title stands twice in the tables");
 }
 
 fn rust_files() -> Vec<std::path::PathBuf> {

@@ -4,8 +4,9 @@ use super::records::{self, FAULT};
 use super::{Failure, Status, say};
 use crate::args::Labels;
 use crate::files::{FileError, Piece, Source, Target};
+use chem::cip::{Compared, Tie};
 use chem::format::{Notice, ReadError};
-use chem::pipeline::{self, Place, Report};
+use chem::pipeline::{self, Place};
 use chem::solve::require::Requirement;
 use chem::stereo::Ligand;
 use serde::Serialize;
@@ -118,25 +119,33 @@ fn labels_of(piece: &Piece) -> Result<Carried<String>, ReadError> {
         });
     }
     let record = piece.read()?;
+    let carried = pipeline::carried(&record.drawing);
     Ok(Carried {
-        labels: pipeline::labels_line(&record.drawing),
-        faults: pipeline::faults(&record.drawing),
+        labels: carried.labels,
+        faults: carried.faults,
         notices: record.notices,
     })
 }
 
-fn report_of(piece: &Piece) -> Result<Carried<Report>, ReadError> {
-    let (labels, notices) = if piece.is_notation {
+/// Every place of a record, with why.
+fn report_of(piece: &Piece) -> Result<Carried<Vec<UnitJson>>, ReadError> {
+    let (report, whys, notices) = if piece.is_notation {
         let line = piece.read_notation()?;
-        (pipeline::report_of(&line), line.notices)
+        let report = pipeline::report_of(&line);
+        let whys = pipeline::explain_of(&line, &report.places);
+        (report, whys, line.notices)
     } else {
         let record = piece.read()?;
         let report = pipeline::report(&record.drawing, &Requirement::default());
-        (report, record.notices)
+        let whys = pipeline::explain(&record.drawing, &report.places);
+        (report, whys, record.notices)
     };
+    let units = report.places.iter().zip(whys);
     Ok(Carried {
-        faults: labels.faults(),
-        labels,
+        labels: units
+            .map(|(place, why)| UnitJson::new(place, why))
+            .collect(),
+        faults: report.faults(),
         notices,
     })
 }
@@ -165,10 +174,7 @@ fn in_table(piece: &Piece) -> Answer {
 
 fn in_json(piece: &Piece, file: Option<&str>) -> Answer {
     let (units, faults, error, notices) = match report_of(piece) {
-        Ok(carried) => {
-            let units = carried.labels.places.iter().map(UnitJson::new).collect();
-            (units, carried.faults, None, carried.notices)
-        }
+        Ok(carried) => (carried.labels, carried.faults, None, carried.notices),
         Err(error) => (Vec::new(), Vec::new(), Some(error), Vec::new()),
     };
     let json = RecordJson {
@@ -237,6 +243,9 @@ struct UnitJson {
     verdict: &'static str,
     rule: Option<&'static str>,
     ranking: Vec<LigandJson>,
+    /// For each two neighbors in the ranking (of a pair, one for each end) what parts them.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    why: Vec<Option<TieJson>>,
     #[serde(skip_serializing_if = "String::is_empty")]
     note: String,
 }
@@ -249,8 +258,45 @@ enum LigandJson {
     Word(&'static str),
 }
 
+#[derive(Serialize)]
+struct TieJson {
+    rule: &'static str,
+    sphere: u32,
+    higher: Vec<ComparedJson>,
+    lower: Vec<ComparedJson>,
+}
+
+/// A member of a set that was compared: its atom, and what the rule sees in it.
+#[derive(Serialize)]
+struct ComparedJson {
+    atom: usize,
+    #[serde(skip_serializing_if = "std::ops::Not::not")]
+    duplicate: bool,
+    sees: String,
+}
+
+impl TieJson {
+    fn new(tie: Tie) -> TieJson {
+        let compared = |set: Vec<Compared>| {
+            set.into_iter()
+                .map(|c| ComparedJson {
+                    atom: c.atom.index() + 1,
+                    duplicate: c.is_duplicate,
+                    sees: c.text,
+                })
+                .collect()
+        };
+        TieJson {
+            rule: tie.rule.name(),
+            sphere: tie.sphere,
+            higher: compared(tie.higher),
+            lower: compared(tie.lower),
+        }
+    }
+}
+
 impl UnitJson {
-    fn new(place: &Place) -> UnitJson {
+    fn new(place: &Place, why: Vec<Option<Tie>>) -> UnitJson {
         let ligand = |ligand: &Ligand| match ligand {
             Ligand::Atom(a) => LigandJson::Atom(a.index() + 1),
             Ligand::Hydrogen => LigandJson::Word("H"),
@@ -264,6 +310,7 @@ impl UnitJson {
             verdict: place.verdict.name(),
             rule: place.rule.map(chem::cip::Rule::name),
             ranking: place.ranking.iter().map(ligand).collect(),
+            why: why.into_iter().map(|tie| tie.map(TieJson::new)).collect(),
             note: place.note.clone(),
         }
     }

@@ -1,10 +1,13 @@
 //! The verbs of the command line, one file each.
 
+mod audit;
 mod figure;
 mod labels;
 mod line;
+mod mend;
 mod place;
 mod records;
+mod wish;
 
 use crate::args::Verb;
 use crate::files::FileError;
@@ -74,6 +77,8 @@ pub fn run(verb: Verb) -> Status {
     let outcome = match verb {
         Verb::Labels(args) => labels::run(&args),
         Verb::Place(args) => place::run(&args),
+        Verb::Audit(args) => audit::run(&args),
+        Verb::Mend(args) => mend::run(&args),
         Verb::Figure(args) => figure::run(&args),
         Verb::Line(args) => line::run(&args),
     };

@@ -1,26 +1,21 @@
 //! `place`: the drawings that carry what is required.
 
 use super::records::{self, FAULT};
+use super::wish::Wish;
 use super::{Failure, Status, say};
 use crate::args::Place;
 use crate::files::{self, Piece, Source, Target, name_of, same_file};
 use chem::format::{Notice, Record, WriteOptions, molfile, sdf};
 use chem::pipeline;
-use chem::solve::line;
 use chem::solve::require::Requirement;
+use std::path::Path;
 
 /// Data fields that this verb writes; those of an earlier run are replaced.
 const OURS: [&str; 3] = ["CARRIES", "VERDICT", "REASON"];
 
-/// Where a record's requirement comes from.
-enum Wish<'a> {
-    Line(&'a str),
-    Field(&'a str),
-}
-
 /// What became of a record.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
-enum Verdict {
+pub(super) enum Verdict {
     Agrees,
     Differs,
     Cannot,
@@ -37,21 +32,28 @@ impl Verdict {
 }
 
 /// A record done with.
-struct Placed {
+pub(super) struct Placed {
     /// The molfile to write; none for the one that came.
-    block: Option<String>,
-    carries: Option<String>,
-    verdict: Verdict,
-    reason: Option<String>,
+    pub(super) block: Option<String>,
+    pub(super) carries: Option<String>,
+    pub(super) verdict: Verdict,
+    pub(super) reason: Option<String>,
     /// Whether the record has the data field that holds its requirement.
-    asked: bool,
-    notices: Vec<Notice>,
+    pub(super) asked: bool,
+    pub(super) notices: Vec<Notice>,
     /// Whether the record itself can be read.
-    readable: bool,
+    pub(super) readable: bool,
 }
 
 impl Placed {
-    fn cannot(reason: String, asked: bool) -> Placed {
+    /// A record that cannot be read.
+    pub(super) fn unreadable(reason: String) -> Placed {
+        let mut placed = Placed::cannot(reason, true);
+        placed.readable = false;
+        placed
+    }
+
+    pub(super) fn cannot(reason: String, asked: bool) -> Placed {
         Placed {
             block: None,
             carries: None,
@@ -65,100 +67,44 @@ impl Placed {
 }
 
 pub(super) fn run(args: &Place) -> Result<Status, Failure> {
-    let wish = match (&args.carry, &args.carry_field) {
-        (Some(line), _) => {
-            check(line)?;
-            Wish::Line(line)
-        }
-        (None, Some(field)) => Wish::Field(field),
-        (None, None) => {
-            return Err(Failure::Arguments(
-                "give --carry or --carry-field".to_owned(),
-            ));
-        }
-    };
+    let wish = Wish::new(args.carry.as_deref(), args.carry_field.as_deref())?;
     let mut source = Source::open(&args.file)?;
-    let mut writer = Writer {
-        out: Target::create(&args.out)?,
-        name: source.name.clone(),
-        to_sdf: files::is_sd(&args.out),
-        counts: [0; 3],
-        read_any: false,
-        asked: false,
-        unasked: Vec::new(),
-    };
+    let mut writer = Writer::new(&args.out, &source.name)?;
     let options = files::dated();
     records::each(
         &mut source,
         args.threads,
-        |piece| one(piece, &wish, &options),
+        |piece| one(piece, wish, &options),
         |piece, placed| {
             let placed = placed.unwrap_or_else(|| Placed::cannot(FAULT.to_owned(), true));
             writer.take(&piece, &placed)
         },
     )?;
-    if let (Wish::Field(field), false) = (&wish, writer.asked) {
-        return Err(Failure::NoField {
-            name: source.name.clone(),
-            field: (*field).to_owned(),
-        });
-    }
-    writer.tell_unasked();
+    writer.check_asked(wish)?;
     let replaces = same_file(&args.file, &args.out);
     writer.finish(&name_of(&args.out, "standard output"), replaces)
 }
 
-/// Refuses a line for all records that cannot be read at all, and tells what was noticed in it.
-fn check(line: &str) -> Result<(), Failure> {
-    let read = line::read(line).map_err(|error| Failure::Carry {
-        line: line.to_owned(),
-        column: error.column,
-        text: error.text,
-    })?;
-    for note in read.notes.iter().filter(|note| note.is_warning()) {
-        say(&format!("--carry '{line}': {}", note.text()));
-    }
-    Ok(())
-}
-
 /// Does one record.
-fn one(piece: &Piece, wish: &Wish<'_>, options: &WriteOptions) -> Placed {
+fn one(piece: &Piece, wish: Wish<'_>, options: &WriteOptions) -> Placed {
     let record = match piece.read() {
         Ok(record) => record,
-        Err(error) => {
-            let mut placed = Placed::cannot(error.to_string(), true);
-            placed.readable = false;
-            return placed;
-        }
+        Err(error) => return Placed::unreadable(error.to_string()),
     };
-    let (line, asked) = match wish {
-        Wish::Line(line) => ((*line).to_owned(), true),
-        Wish::Field(name) => match record.field(name) {
-            Some(value) => (value.trim().to_owned(), true),
-            None => (String::new(), false),
-        },
-    };
+    let (requirement, asked) = wish.of(&record);
     let notices = record.notices.clone();
-    let mut placed = carry(record, &line, options);
+    let mut placed = match requirement {
+        Ok(requirement) => carry(record, &requirement, options),
+        Err(reason) => Placed::cannot(reason, true),
+    };
     placed.asked = asked;
     placed.notices.splice(0..0, notices);
     placed
 }
 
-/// The record's drawing made to carry a line; an empty line asks nothing.
-fn carry(record: Record, line: &str, options: &WriteOptions) -> Placed {
-    let requirement = if line.is_empty() {
-        Requirement::default()
-    } else {
-        match pipeline::understand(line, &record.drawing) {
-            Ok(requirement) => requirement,
-            Err(error) => {
-                let column = super::column_words(error.column);
-                return Placed::cannot(format!("'{line}': {column}{}", error.text), true);
-            }
-        }
-    };
-    let solution = match pipeline::carry(&record.drawing, &requirement) {
+/// The record's drawing made to carry what is asked.
+fn carry(record: Record, requirement: &Requirement, options: &WriteOptions) -> Placed {
+    let solution = match pipeline::carry(&record.drawing, requirement) {
         Ok(solution) => solution,
         Err(refusal) => return Placed::cannot(refusal.text, true),
     };
@@ -197,11 +143,18 @@ fn carry(record: Record, line: &str, options: &WriteOptions) -> Placed {
 }
 
 /// The molfile of a record, believed only after it has been read back.
-fn written(record: &Record, carries: &str, options: &WriteOptions) -> Result<String, String> {
+pub(super) fn written(
+    record: &Record,
+    carries: &str,
+    options: &WriteOptions,
+) -> Result<String, String> {
     let block = molfile::write(record, options).map_err(|e| e.to_string())?;
     let again =
         molfile::read(&block, 1).map_err(|e| format!("the new molfile cannot be read: {e}"))?;
-    if pipeline::labels_line(&again.drawing) == carries {
+    if again.stereo_groups != record.stereo_groups {
+        return Err("the stereo groups of the new molfile read otherwise".to_owned());
+    }
+    if pipeline::carried(&again.drawing).labels == carries {
         Ok(block)
     } else {
         Err("the new drawing reads otherwise once its coordinates are rounded to the four decimals of a molfile; scale it up".to_owned())
@@ -209,7 +162,7 @@ fn written(record: &Record, carries: &str, options: &WriteOptions) -> Result<Str
 }
 
 /// Writes records in their order and counts what became of them.
-struct Writer {
+pub(super) struct Writer {
     out: Target,
     name: String,
     to_sdf: bool,
@@ -222,7 +175,31 @@ struct Writer {
 }
 
 impl Writer {
-    fn take(&mut self, piece: &Piece, placed: &Placed) -> Result<(), Failure> {
+    pub(super) fn new(out: &Path, name: &str) -> Result<Writer, Failure> {
+        Ok(Writer {
+            out: Target::create(out)?,
+            name: name.to_owned(),
+            to_sdf: files::is_sd(out),
+            counts: [0; 3],
+            read_any: false,
+            asked: false,
+            unasked: Vec::new(),
+        })
+    }
+
+    /// Refuses a data field that no record has, and names the records without it.
+    pub(super) fn check_asked(&self, wish: Wish<'_>) -> Result<(), Failure> {
+        if let (Wish::Field(field), false) = (wish, self.asked) {
+            return Err(Failure::NoField {
+                name: self.name.clone(),
+                field: field.to_owned(),
+            });
+        }
+        self.tell_unasked();
+        Ok(())
+    }
+
+    pub(super) fn take(&mut self, piece: &Piece, placed: &Placed) -> Result<(), Failure> {
         if piece.too_long {
             return Err(Failure::Lost {
                 name: self.name.clone(),
@@ -306,7 +283,7 @@ impl Writer {
         }
     }
 
-    fn finish(self, out_name: &str, replaces: bool) -> Result<Status, Failure> {
+    pub(super) fn finish(self, out_name: &str, replaces: bool) -> Result<Status, Failure> {
         let [agrees, differs, cannot] = self.counts;
         if !self.to_sdf && agrees == 0 {
             // a molfile has no field to say that it does not carry what was asked

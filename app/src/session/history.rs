@@ -1,6 +1,7 @@
 //! Steps that can be taken back: a list of whole drawings, which is simple and small enough.
 
 use chem::drawing::Drawing;
+use chem::format::StereoGroup;
 use std::sync::Arc;
 
 /// Steps kept; the oldest go first.
@@ -14,6 +15,8 @@ pub(super) struct State {
     pub(super) drawing: Arc<Drawing>,
     /// The line that must be carried.
     pub(super) line: String,
+    /// Stereo groups, in the atoms of this drawing.
+    pub(super) groups: Arc<[StereoGroup]>,
     /// Unlike that of every other state.
     pub(super) revision: u64,
 }
@@ -42,10 +45,23 @@ impl History {
         &self.now
     }
 
-    /// A new step; what was taken back is gone.
+    /// A new step; what was taken back is gone. The atoms keep their numbers, and so the stereo groups
+    /// stay.
     pub(super) fn push(&mut self, name: &str, drawing: Arc<Drawing>, line: String) {
+        let groups = self.now.groups.clone();
+        self.push_with_groups(name, drawing, line, groups);
+    }
+
+    /// A new step with the stereo groups of its drawing.
+    pub(super) fn push_with_groups(
+        &mut self,
+        name: &str,
+        drawing: Arc<Drawing>,
+        line: String,
+        groups: Arc<[StereoGroup]>,
+    ) {
         self.after.clear();
-        let next = self.state(name, drawing, line);
+        let next = self.state(name, drawing, line, groups);
         self.before.push(std::mem::replace(&mut self.now, next));
         if self.before.len() > MOST {
             self.before.remove(0);
@@ -54,7 +70,8 @@ impl History {
 
     /// Changes the step that was made last.
     pub(super) fn amend(&mut self, name: &str, drawing: Arc<Drawing>, line: String) {
-        self.now = self.state(name, drawing, line);
+        let groups = self.now.groups.clone();
+        self.now = self.state(name, drawing, line, groups);
     }
 
     /// Forgets the last step, as if it had not been made.
@@ -88,12 +105,19 @@ impl History {
         self.after.last().map(|s| s.name.as_str())
     }
 
-    fn state(&mut self, name: &str, drawing: Arc<Drawing>, line: String) -> State {
+    fn state(
+        &mut self,
+        name: &str,
+        drawing: Arc<Drawing>,
+        line: String,
+        groups: Arc<[StereoGroup]>,
+    ) -> State {
         self.next_revision += 1;
         State {
             name: name.to_owned(),
             drawing,
             line,
+            groups,
             revision: self.next_revision,
         }
     }

@@ -218,3 +218,68 @@ fn a_file_of_many_records_is_not_overwritten_by_one() {
     assert_eq!(s.path(), None);
     assert!(s.notice().contains("2 records"));
 }
+
+/// Two centres in groups of their own; the atoms before them are one too many.
+const GROUPED: &str = "\
+butane rest
+
+  test
+  0  0  0     0  0            999 V3000
+M  V30 BEGIN CTAB
+M  V30 COUNTS 6 5 0 0 0
+M  V30 BEGIN ATOM
+M  V30 1 C 0 0 0 0
+M  V30 2 C 1.3 0.75 0 0
+M  V30 3 C 2.6 0 0 0
+M  V30 4 C 3.9 0.75 0 0
+M  V30 5 N 1.3 2.25 0 0
+M  V30 6 O 2.6 -1.5 0 0
+M  V30 END ATOM
+M  V30 BEGIN BOND
+M  V30 1 1 1 2
+M  V30 2 1 2 3
+M  V30 3 1 3 4
+M  V30 4 1 2 5 CFG=1
+M  V30 5 1 3 6 CFG=1
+M  V30 END BOND
+M  V30 BEGIN COLLECTION
+M  V30 MDLV30/STERAC1 ATOMS=(1 3)
+M  V30 MDLV30/STEREL2 ATOMS=(1 2)
+M  V30 END COLLECTION
+M  V30 END CTAB
+M  END
+";
+
+#[test]
+fn stereo_groups_follow_their_atoms_and_come_back_with_undo() {
+    let record = molfile::read(GROUPED, 1).unwrap();
+    let mut s = Session::of(Document::of(record), None, String::new());
+    assert!(s.notice().contains("&1 (atom 3), or2 (atom 2)"));
+    let folder = tempfile::tempdir().unwrap();
+    let path = folder.path().join("groups.mol");
+    let saved = |s: &mut Session| {
+        s.save(&path).unwrap();
+        let text = std::fs::read_to_string(&path).unwrap();
+        let tags = text.lines().filter(|l| l.contains("MDLV30"));
+        tags.map(str::to_owned).collect::<Vec<_>>()
+    };
+    let before = [
+        "M  V30 MDLV30/STERAC1 ATOMS=(1 3)",
+        "M  V30 MDLV30/STEREL2 ATOMS=(1 2)",
+    ];
+    assert_eq!(saved(&mut s), before);
+    let remove = |atom| Edit::RemoveAtom(AtomIx::new(atom));
+    s.step("Delete", &[remove(0)]).unwrap();
+    let moved = [
+        "M  V30 MDLV30/STERAC1 ATOMS=(1 2)",
+        "M  V30 MDLV30/STEREL2 ATOMS=(1 1)",
+    ];
+    assert_eq!(saved(&mut s), moved);
+    // a group goes with its last atom, and comes back with it
+    s.step("Delete", &[remove(0)]).unwrap();
+    assert_eq!(saved(&mut s), ["M  V30 MDLV30/STERAC1 ATOMS=(1 1)"]);
+    s.undo();
+    assert_eq!(saved(&mut s), moved);
+    s.undo();
+    assert_eq!(saved(&mut s), before);
+}

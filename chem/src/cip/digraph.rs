@@ -5,7 +5,7 @@
 //! (node, node it is seen from): the tree itself is never built anew.
 
 use super::Stop;
-use super::context::Context;
+use super::context::{Code, Context, NO_MASS};
 use crate::molecule::AtomIx;
 use crate::perceive::Ratio;
 use crate::stereo::Descriptor;
@@ -37,21 +37,21 @@ pub(super) struct Node {
     /// The atom it stands for; of a hydrogen, the atom that bears it.
     pub(super) atom: AtomIx,
     pub(super) parent: NodeIx,
-    pub(super) kind: NodeKind,
-    /// Atomic number; whether it is unknown says `wildcard`.
-    pub(super) number: Ratio,
-    pub(super) wildcard: bool,
-    /// Mass for Rule 2: 0 for duplicates.
-    pub(super) mass: f64,
+    first_child: NodeIx,
     /// Distance from the root.
     pub(super) sphere: u32,
     /// Of a ring duplicate, the sphere of the atom that it repeats.
     pub(super) original_sphere: u32,
+    /// Atomic number; whether it, or the bond that leads here, is unknown says `wildcard`.
+    pub(super) number: Code,
+    /// Mass for Rule 2.
+    pub(super) mass: Code,
+    n_children: u32,
+    pub(super) kind: NodeKind,
+    pub(super) wildcard: bool,
+    grown: bool,
     /// Auxiliary descriptor, once found.
     pub(super) descriptor: Option<Descriptor>,
-    first_child: u32,
-    n_children: u32,
-    grown: bool,
 }
 
 #[derive(Clone, Debug)]
@@ -77,6 +77,16 @@ impl<'a> Digraph<'a> {
         &self.nodes[ix as usize]
     }
 
+    /// Atomic number of a node.
+    pub(super) fn number(&self, ix: NodeIx) -> Ratio {
+        self.context.number(self.node(ix).number)
+    }
+
+    /// Mass of a node for Rule 2.
+    pub(super) fn mass(&self, ix: NodeIx) -> f64 {
+        self.context.mass(self.node(ix).mass)
+    }
+
     pub(super) fn len(&self) -> usize {
         self.nodes.len()
     }
@@ -85,7 +95,7 @@ impl<'a> Digraph<'a> {
         self.nodes[ix as usize].descriptor = descriptor;
     }
 
-    /// Children of a node, made now if need be.
+    /// Children of a node, highest atomic number first; made now if need be.
     pub(super) fn children(&mut self, ix: NodeIx) -> Result<Range<NodeIx>, Stop> {
         if !self.node(ix).grown {
             self.grow(ix)?;
@@ -126,11 +136,22 @@ impl<'a> Digraph<'a> {
             let context = self.context;
             for bond in context.bonds(atom) {
                 if above != Some(bond.to) {
-                    match self.on_path(ix, bond.to) {
+                    // only a ring leads back to an atom on the path
+                    let original = if bond.in_ring {
+                        self.on_path(ix, bond.to)
+                    } else {
+                        None
+                    };
+                    match original {
                         Some(original) => {
                             self.push(NodeKind::RingDuplicate, bond.to, ix, sphere, original);
                         }
                         None => self.push(NodeKind::Atom, bond.to, ix, sphere, 0),
+                    }
+                    if bond.is_vague
+                        && let Some(child) = self.nodes.last_mut()
+                    {
+                        child.wildcard = true;
                     }
                 }
                 for _ in 0..bond.duplicates {
@@ -144,11 +165,13 @@ impl<'a> Digraph<'a> {
                 self.push(NodeKind::Hydrogen, atom, ix, sphere, 0);
             }
         }
-        let end = u32::try_from(self.nodes.len()).unwrap_or(u32::MAX);
+        let children = self.nodes.get_mut(first as usize..).unwrap_or_default();
+        children.sort_by_key(|child| std::cmp::Reverse(child.number));
+        let n_children = u32::try_from(children.len()).unwrap_or(u32::MAX);
         let node = &mut self.nodes[ix as usize];
         node.grown = true;
         node.first_child = first;
-        node.n_children = end - first;
+        node.n_children = n_children;
         if self.nodes.len() > self.limit {
             return Err(Stop::Nodes(self.nodes.len()));
         }
@@ -179,33 +202,28 @@ impl<'a> Digraph<'a> {
         original_sphere: u32,
     ) {
         let of = self.context.atom(atom);
-        let plain = Ratio::whole(u32::from(of.number));
-        let number = match kind {
-            NodeKind::Atom | NodeKind::RingDuplicate => plain,
+        let (number, mass) = match kind {
+            NodeKind::Atom => (of.number, of.mass),
+            NodeKind::RingDuplicate => (of.number, NO_MASS),
             NodeKind::BondDuplicate => {
-                let carrier = self.node(parent).atom;
-                self.context.atom(carrier).duplicate.unwrap_or(plain)
+                let carrier = self.context.atom(self.node(parent).atom);
+                (carrier.duplicate.unwrap_or(of.number), NO_MASS)
             }
-            NodeKind::Hydrogen => Ratio::whole(1),
-        };
-        let mass = match kind {
-            NodeKind::Atom => of.mass,
-            NodeKind::Hydrogen => crate::element::Element::H.weight(),
-            NodeKind::RingDuplicate | NodeKind::BondDuplicate => 0.0,
+            NodeKind::Hydrogen => self.context.hydrogen,
         };
         self.nodes.push(Node {
             atom,
             parent,
-            kind,
-            number,
-            wildcard: of.number == 0 && kind != NodeKind::Hydrogen,
-            mass,
+            first_child: 0,
             sphere,
             original_sphere,
-            descriptor: None,
-            first_child: 0,
+            number,
+            mass,
             n_children: 0,
+            kind,
+            wildcard: of.wildcard && kind != NodeKind::Hydrogen,
             grown: false,
+            descriptor: None,
         });
     }
 }

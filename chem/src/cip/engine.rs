@@ -9,10 +9,12 @@
 //! digested from open implementations.
 
 use super::Stop;
+use super::context::Code;
 use super::digraph::{Digraph, NodeIx, NodeKind, Nodes};
 use super::rules::{Step, rule4b};
 use crate::molecule::AtomIx;
 use rustc_hash::FxHashMap;
+use smallvec::SmallVec;
 use std::cmp::Ordering;
 
 /// A node and the neighbour that it is seen from.
@@ -57,6 +59,38 @@ impl Ranked {
     }
 }
 
+/// Known orders of what lies beyond a node, seen from its parent, under one step.
+#[derive(Debug, Default)]
+struct Orders {
+    /// For each node, its place in `list` and one more; 0 if not known.
+    at: Vec<u32>,
+    list: Vec<Ranked>,
+}
+
+impl Orders {
+    fn get(&self, node: NodeIx) -> Option<&Ranked> {
+        let at = *self.at.get(node as usize)?;
+        self.list.get((at as usize).checked_sub(1)?)
+    }
+
+    fn set(&mut self, node: NodeIx, ranked: Ranked) {
+        let node = node as usize;
+        if self.at.len() <= node {
+            self.at.resize((2 * node).max(63) + 1, 0);
+            self.list.reserve(16);
+        }
+        self.list.push(ranked);
+        self.at[node] = u32::try_from(self.list.len()).unwrap_or(0);
+    }
+
+    fn clear(&mut self) {
+        if !self.list.is_empty() {
+            self.at.fill(0);
+            self.list.clear();
+        }
+    }
+}
+
 /// One digraph under comparison, with what is known of it so far.
 #[derive(Debug)]
 pub(super) struct Engine<'a> {
@@ -65,8 +99,15 @@ pub(super) struct Engine<'a> {
     reference: Option<AtomIx>,
     work: u64,
     max_work: u64,
+    /// Whether ligands of a focus are compared only once, so that nothing is gained by remembering.
+    pub(super) forgetful: bool,
+    /// Ligands of a focus that were compared, by both nodes and the step; the second map holds what
+    /// rests on auxiliary descriptors.
     compared: [FxHashMap<u64, Ordering>; 2],
-    ranked: [FxHashMap<u64, Ranked>; 2],
+    /// Orders below a node, one list for each step.
+    below: [Orders; Step::COUNT],
+    /// Orders seen from another neighbour than the parent: towards the root and back.
+    across: [FxHashMap<u64, Ranked>; 2],
 }
 
 impl<'a> Engine<'a> {
@@ -76,38 +117,64 @@ impl<'a> Engine<'a> {
             reference: None,
             work: 0,
             max_work,
+            forgetful: false,
             compared: Default::default(),
-            ranked: Default::default(),
+            below: Default::default(),
+            across: Default::default(),
         }
+    }
+
+    /// Comparisons made so far.
+    pub(super) fn work(&self) -> u64 {
+        self.work
     }
 
     /// Forgets what rested on auxiliary descriptors: some have changed.
     pub(super) fn descriptors_changed(&mut self) {
         self.compared[1].clear();
-        self.ranked[1].clear();
+        self.across[1].clear();
+        for step in Step::ALL.into_iter().filter(|s| !s.is_constitutional()) {
+            self.below[step.index()].clear();
+        }
     }
 
     /// Sets the ligand that Rule 6 puts first.
     pub(super) fn set_reference(&mut self, reference: Option<AtomIx>) {
         let six = Step::R6.code();
         self.compared[1].retain(|key, _| key & 15 != six);
-        self.ranked[1].retain(|key, _| key & 15 != six);
+        self.across[1].retain(|key, _| key & 15 != six);
+        self.below[Step::R6.index()].clear();
         self.reference = reference;
     }
 
     /// Nodes beyond a branch, ordered by all rules up to a step.
     pub(super) fn ranked(&mut self, branch: Branch, step: Step) -> Result<Ranked, Stop> {
+        if self.is_leaf(branch) {
+            return Ok(Ranked::default());
+        }
         let key = key(branch.node, branch.from, step);
         let memo = usize::from(!step.is_constitutional());
-        if let Some(known) = self.ranked[memo].get(&key) {
+        let downwards = self.tree.node(branch.node).parent == branch.from;
+        let known = if downwards {
+            self.below[step.index()].get(branch.node)
+        } else {
+            self.across[memo].get(&key)
+        };
+        if let Some(known) = known {
             return Ok(known.clone());
         }
         let before = match step.before() {
             Some(earlier) => self.ranked(branch, earlier)?,
             None => Engine::unranked(self.tree.away_from(branch.node, branch.from)?),
         };
-        let after = self.refine(before, branch.node, |engine, a, b| engine.walk(a, b, step))?;
-        self.ranked[memo].insert(key, after.clone());
+        let after = self.refine(before, branch.node, |engine, a, b| {
+            engine.walk_afresh(a, b, step)
+        })?;
+        if downwards {
+            self.below[step.index()].set(branch.node, after.clone());
+        } else {
+            self.across[memo].insert(key, after.clone());
+        }
         Ok(after)
     }
 
@@ -152,7 +219,7 @@ impl<'a> Engine<'a> {
         for group in ranked.groups() {
             // insertion sort: groups are small, and the comparison may fail
             let start = nodes.len();
-            let mut tied_to_next: smallvec::SmallVec<[bool; 6]> = smallvec::SmallVec::new();
+            let mut tied_to_next: SmallVec<[bool; 6]> = SmallVec::new();
             for node in group {
                 let mut at = nodes.len();
                 let mut tied = false;
@@ -184,17 +251,11 @@ impl<'a> Engine<'a> {
         Ok(Ranked { nodes, ties })
     }
 
-    /// Compares two branches by one rule; `Greater`: the first ranks higher.
+    /// Compares two branches by one rule; `Greater`: the first ranks higher. Remembered: the ligands of a
+    /// focus are compared again for each rule and reference.
     pub(super) fn walk(&mut self, a: Branch, b: Branch, step: Step) -> Result<Ordering, Stop> {
-        if a.node == b.node {
-            return Ok(Ordering::Equal);
-        }
-        let at_once = self.compare_nodes(a.node, b.node, step)?;
-        if at_once.is_ne() {
-            return Ok(at_once);
-        }
-        if self.is_leaf(a) && self.is_leaf(b) {
-            return Ok(Ordering::Equal);
+        if self.forgetful {
+            return self.walk_afresh(a, b, step);
         }
         let swap = a.node > b.node;
         let (low, high) = if swap { (b, a) } else { (a, b) };
@@ -203,12 +264,23 @@ impl<'a> Engine<'a> {
         let order = match self.compared[memo].get(&key) {
             Some(known) => *known,
             None => {
-                let order = self.walk_below(low, high, step)?;
+                let order = self.walk_afresh(low, high, step)?;
                 self.compared[memo].insert(key, order);
                 order
             }
         };
         Ok(if swap { order.reverse() } else { order })
+    }
+
+    fn walk_afresh(&mut self, a: Branch, b: Branch, step: Step) -> Result<Ordering, Stop> {
+        if a.node == b.node {
+            return Ok(Ordering::Equal);
+        }
+        let at_once = self.compare_nodes(a.node, b.node, step)?;
+        if at_once.is_ne() || (self.is_leaf(a) && self.is_leaf(b)) {
+            return Ok(at_once);
+        }
+        self.walk_below(a, b, step)
     }
 
     fn is_leaf(&self, branch: Branch) -> bool {
@@ -217,7 +289,8 @@ impl<'a> Engine<'a> {
     }
 
     fn walk_below(&mut self, a: Branch, b: Branch, step: Step) -> Result<Ordering, Stop> {
-        let mut queue = vec![(a, b)];
+        let mut queue: SmallVec<[(Branch, Branch); 8]> = SmallVec::new();
+        queue.push((a, b));
         let mut next = 0;
         while let Some((a, b)) = queue.get(next).copied() {
             next += 1;
@@ -283,23 +356,27 @@ impl<'a> Engine<'a> {
 
     /// Rule 1a on the sets beyond two nodes: all atomic numbers from high to low; the longer set wins.
     fn compare_sets(&mut self, a: Branch, b: Branch) -> Result<Ordering, Stop> {
-        let mut sets = [
-            self.tree.away_from(a.node, a.from)?,
-            self.tree.away_from(b.node, b.from)?,
-        ];
-        for set in &mut sets {
-            self.spend(set.len() as u64)?;
-            if set.iter().any(|n| self.tree.node(*n).wildcard) {
+        let sets = [self.numbers(a)?, self.numbers(b)?];
+        Ok(sets[0].as_slice().cmp(sets[1].as_slice()))
+    }
+
+    /// Atomic numbers beyond a branch, from high to low.
+    fn numbers(&mut self, branch: Branch) -> Result<SmallVec<[Code; 6]>, Stop> {
+        let set = self.tree.away_from(branch.node, branch.from)?;
+        self.spend(set.len() as u64)?;
+        let mut numbers = SmallVec::new();
+        for ix in &set {
+            let node = self.tree.node(*ix);
+            if node.wildcard {
                 return Err(Stop::Placeholder);
             }
-            set.sort_by_key(|n| std::cmp::Reverse(self.tree.node(*n).number));
+            numbers.push(node.number);
         }
-        let numbers = |set: &Nodes| -> smallvec::SmallVec<[_; 6]> {
-            set.iter().map(|n| self.tree.node(*n).number).collect()
-        };
-        Ok(numbers(&sets[0])
-            .as_slice()
-            .cmp(numbers(&sets[1]).as_slice()))
+        // children stand in this order already; a parent among them comes last
+        if self.tree.node(branch.node).parent != branch.from {
+            numbers.sort_unstable_by(|x: &Code, y| y.cmp(x));
+        }
+        Ok(numbers)
     }
 
     fn compare_nodes(&mut self, a: NodeIx, b: NodeIx, step: Step) -> Result<Ordering, Stop> {

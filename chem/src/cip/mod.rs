@@ -9,10 +9,14 @@
 //! Inf. Model. 2018, 58, 1755; checked against the drawings of the public CIP Validation Suite.
 
 mod auxiliary;
+mod candidates;
 mod context;
 mod digraph;
 mod engine;
+mod near;
 mod rules;
+#[cfg(test)]
+mod tests;
 mod unit;
 mod why;
 
@@ -24,7 +28,7 @@ use crate::stereo::{Configuration, Descriptor, Ligand, Parity, UnitIx, Units};
 use auxiliary::Foci;
 use context::Context;
 use smallvec::SmallVec;
-use std::cell::OnceCell;
+use std::cell::{Cell, OnceCell};
 use std::fmt;
 
 /// A sequence rule.
@@ -97,8 +101,10 @@ impl Default for Limits {
 pub enum Stop {
     /// The bound was reached, at this many nodes.
     Nodes(usize),
-    /// A placeholder's rank would be needed.
+    /// The rank of a placeholder, or of what hangs on a bond without a stated order, would be needed.
     Placeholder,
+    /// Too many combinations of open units would have to be tried.
+    Combinations,
 }
 
 /// Why a unit has no descriptor.
@@ -118,10 +124,14 @@ impl fmt::Display for Missing {
             Missing::Alike => write!(f, "no rule tells its ligands apart"),
             Missing::Undefined => write!(f, "no configuration is drawn"),
             Missing::Stopped(Stop::Nodes(n)) => write!(f, "not decided: {n} nodes"),
+            Missing::Stopped(Stop::Combinations) => write!(
+                f,
+                "not decided: too many combinations of open places would have to be tried"
+            ),
             Missing::Stopped(Stop::Placeholder) => {
                 write!(
                     f,
-                    "not decided: it depends on what a placeholder stands for"
+                    "not decided: it depends on a placeholder or on a bond whose order is not stated"
                 )
             }
         }
@@ -156,14 +166,26 @@ pub struct Ranker<'a> {
     context: Context,
     limits: Limits,
     outside_rings: Vec<bool>,
+    /// Atoms that hold the ligands of a unit.
+    is_focus: Vec<bool>,
+    /// Comparisons that later rules took so far.
+    work: Cell<u64>,
     by_constitution: Vec<OnceCell<Result<Option<Ranking>, Stop>>>,
 }
 
 impl<'a> Ranker<'a> {
     /// Prepares a molecule; nothing is ranked yet.
     pub fn new(molecule: &Molecule, rings: &Rings, units: &'a Units, limits: Limits) -> Ranker<'a> {
+        let mut is_focus = vec![false; molecule.n_atoms()];
+        for (_, unit) in units.iter() {
+            for atom in unit.atoms() {
+                is_focus[atom.index()] = true;
+            }
+        }
         Ranker {
             units,
+            is_focus,
+            work: Cell::new(0),
             context: Context::new(molecule, rings),
             limits,
             outside_rings: units
@@ -221,13 +243,18 @@ impl<'a> Ranker<'a> {
         )
     }
 
-    /// The labels of all units in a molecule whose units have these configurations.
+    /// The labels of all units in a molecule whose units have these configurations. A unit without one is
+    /// [`Missing::Undefined`] if it could carry a descriptor, else [`Missing::Alike`].
     pub fn label_all(&self, configurations: &[Configuration]) -> Vec<UnitLabel> {
         let defined = self.label_defined(configurations);
+        let could = self.could_carry(configurations);
         defined
             .into_iter()
+            .zip(could)
             .enumerate()
-            .map(|(i, label)| label.unwrap_or_else(|| self.undefined(UnitIx::new(i))))
+            .map(|(i, (label, could))| {
+                label.unwrap_or_else(|| self.undefined(UnitIx::new(i), could))
+            })
             .collect()
     }
 
@@ -237,9 +264,21 @@ impl<'a> Ranker<'a> {
     /// other unit either, or two branches that are the same in space could get different letters. (In a
     /// ring such a place still holds others in their geometry.)
     pub fn label_defined(&self, configurations: &[Configuration]) -> Vec<Option<UnitLabel>> {
+        self.label_within(configurations, u64::MAX)
+            .unwrap_or_default()
+    }
+
+    /// The same, unless the units that depend on others take more than so many comparisons in all: then
+    /// `None`. Which unit comes first has no say in that.
+    fn label_within(
+        &self,
+        configurations: &[Configuration],
+        most_work: u64,
+    ) -> Option<Vec<Option<UnitLabel>>> {
+        let end = self.work.get().saturating_add(most_work);
         let mut counted = configurations.to_vec();
         loop {
-            let labels = self.label_once(configurations, &counted);
+            let labels = self.label_once(configurations, &counted, end)?;
             let mut changed = false;
             for (i, label) in labels.iter().enumerate() {
                 let alike = label
@@ -252,7 +291,7 @@ impl<'a> Ranker<'a> {
             }
             // each round takes a unit out, so this ends
             if !changed || !self.any_dependent(&counted) {
-                return labels;
+                return Some(labels);
             }
         }
     }
@@ -269,7 +308,8 @@ impl<'a> Ranker<'a> {
         &self,
         configurations: &[Configuration],
         counted: &[Configuration],
-    ) -> Vec<Option<UnitLabel>> {
+        most_work: u64,
+    ) -> Option<Vec<Option<UnitLabel>>> {
         let foci = OnceCell::new();
         configurations
             .iter()
@@ -277,17 +317,20 @@ impl<'a> Ranker<'a> {
             .map(|(i, configuration)| match configuration {
                 Configuration::Defined(parity) => {
                     let foci = || foci.get_or_init(|| Foci::of(self.units, counted));
-                    Some(self.label(UnitIx::new(i), *parity, foci))
+                    let label = self.label(UnitIx::new(i), *parity, foci);
+                    (self.work.get() <= most_work).then_some(Some(label))
                 }
-                Configuration::Open | Configuration::Either => None,
+                Configuration::Open | Configuration::Either => Some(None),
             })
             .collect()
     }
 
-    fn undefined(&self, unit: UnitIx) -> UnitLabel {
-        let (missing, ranking) = match self.by_constitution(unit) {
-            Ok(ranking) => (Missing::Undefined, ranking.cloned()),
-            Err(stop) => (Missing::Stopped(stop), None),
+    fn undefined(&self, unit: UnitIx, could: Result<bool, Stop>) -> UnitLabel {
+        let (missing, ranking) = match (self.by_constitution(unit), could) {
+            (Err(stop), _) | (Ok(None), Err(stop)) => (Missing::Stopped(stop), None),
+            (Ok(Some(ranking)), _) => (Missing::Undefined, Some(ranking.clone())),
+            (Ok(None), Ok(true)) => (Missing::Undefined, None),
+            (Ok(None), Ok(false)) => (Missing::Alike, None),
         };
         UnitLabel {
             descriptor: Err(missing),
@@ -304,7 +347,15 @@ impl<'a> Ranker<'a> {
         let kind = self.units.get(unit).kind;
         let found = match self.by_constitution(unit) {
             Ok(Some(ranking)) => Ok(Some((ranking.clone(), true))),
-            Ok(None) => unit::rank_by_all(&self.context, self.units, unit, foci(), self.limits),
+            Ok(None) => unit::rank_by_all(
+                &self.context,
+                self.units,
+                unit,
+                foci(),
+                self.limits,
+                |tied| self.is_hopeless(unit, tied),
+                &self.work,
+            ),
             Err(stop) => Err(stop),
         };
         match found {

@@ -8,6 +8,7 @@ use super::auxiliary::{self, Foci};
 use super::context::Context;
 use super::digraph::{Digraph, NodeIx, NodeKind, Nodes, ROOT};
 use super::engine::{Engine, Ranked};
+use super::near;
 use super::rules::Step;
 use super::why::{self, Tie};
 use super::{Limits, Ranking, Rule, Stop};
@@ -16,6 +17,7 @@ use crate::stereo::{
     Descriptor, Focus, Kind, Ligand, Parity, Unit, UnitIx, Units, odd_permutation,
 };
 use smallvec::SmallVec;
+use std::cell::Cell;
 
 /// Which rules may be used.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -67,24 +69,65 @@ pub(super) fn rank_by_constitution(
             odd: false,
         }));
     }
+    if let Some(ranking) = near::rank(context, unit) {
+        return Ok(Some(ranking));
+    }
+    rank_by_digraph(context, unit, limits)
+}
+
+/// The same on the digraph, whose first two spheres are not looked at beforehand.
+pub(super) fn rank_by_digraph(
+    context: &Context,
+    unit: &Unit,
+    limits: Limits,
+) -> Result<Option<Ranking>, Stop> {
     let mut sites = Sites::rooted(context, unit, limits);
+    for engine in sites.engines() {
+        engine.forgetful = true;
+    }
     sites.rank(unit, Reach::Constitution)
 }
 
-/// Ranking by all rules, and whether reflection changes the sense.
+/// Ranking by all rules, and whether reflection changes the sense. `is_hopeless` tells of ligands that the
+/// constitution leaves tied whether no other unit can part them, which spares growing the digraph.
 pub(super) fn rank_by_all(
     context: &Context,
     units: &Units,
     ix: UnitIx,
     foci: &Foci,
     limits: Limits,
+    is_hopeless: impl Fn(&[Ligand]) -> bool,
+    work: &Cell<u64>,
 ) -> Result<Option<(Ranking, bool)>, Stop> {
     let unit = units.get(ix);
     let mut sites = Sites::rooted(context, unit, limits);
+    let filled = sites.tied_ligands(unit).and_then(|tied| {
+        if tied.iter().any(|group| is_hopeless(group)) {
+            return Ok(false);
+        }
+        for engine in sites.engines() {
+            auxiliary::fill(engine, units, ix, foci)?;
+        }
+        Ok(true)
+    });
+    let found = match filled {
+        Ok(true) => sites.rank_both_ways(unit),
+        Ok(false) => Ok(None),
+        Err(stop) => Err(stop),
+    };
     for engine in sites.engines() {
-        auxiliary::fill(engine, units, ix, foci)?;
+        work.set(work.get() + engine.work() + engine.tree.len() as u64);
     }
-    sites.rank_both_ways(unit)
+    found
+}
+
+/// Ligands of a unit that Rules 1a, 1b and 2 leave tied, group by group.
+pub(super) fn tied_ligands(
+    context: &Context,
+    unit: &Unit,
+    limits: Limits,
+) -> Result<Vec<Vec<Ligand>>, Stop> {
+    Sites::rooted(context, unit, limits).tied_ligands(unit)
 }
 
 /// Descriptor of a unit at a node of a digraph that is about another unit; `far` is the node of the
@@ -190,6 +233,20 @@ impl<'e, 'a> Sites<'e, 'a> {
             Sites::Ends(engines) => engines.iter_mut().collect(),
             Sites::Inner(engine, ..) => SmallVec::from_iter([&mut **engine]),
         }
+    }
+
+    /// Ligands at the roots that the constitution leaves tied.
+    fn tied_ligands(&mut self, unit: &Unit) -> Result<Vec<Vec<Ligand>>, Stop> {
+        let toward = unit.toward_each_other();
+        let is_pair = matches!(unit.focus, Focus::Pair(_));
+        let mut tied = Vec::new();
+        for (k, engine) in self.engines().into_iter().enumerate() {
+            let nodes = ligand_nodes(engine, ROOT, is_pair.then_some(toward[k]))?;
+            let (ranked, _) = rank_nodes(engine, ROOT, nodes, Reach::Constitution)?;
+            let groups = ranked.groups().filter(|g| g.len() > 1);
+            tied.extend(groups.map(|g| g.iter().map(|n| ligand(engine, *n)).collect::<Vec<_>>()));
+        }
+        Ok(tied)
     }
 
     fn rank_both_ways(&mut self, unit: &Unit) -> Result<Option<(Ranking, bool)>, Stop> {

@@ -102,7 +102,7 @@ fn compared(engine: &Engine<'_>, molecule: &Molecule, rule: Rule, ix: NodeIx) ->
     let symbol = || match node.kind {
         NodeKind::Hydrogen => "H".to_owned(),
         NodeKind::Atom | NodeKind::RingDuplicate => molecule.element(node.atom).symbol().to_owned(),
-        NodeKind::BondDuplicate => number_or_symbol(molecule, node.atom, node.number),
+        NodeKind::BondDuplicate => number_or_symbol(molecule, node.atom, engine.tree.number(ix)),
     };
     let text = match rule {
         Rule::R1a | Rule::R1b => symbol(),
@@ -110,7 +110,7 @@ fn compared(engine: &Engine<'_>, molecule: &Molecule, rule: Rule, ix: NodeIx) ->
             if is_duplicate {
                 format!("{} (no mass)", symbol())
             } else {
-                format!("{} {:.3}", symbol(), node.mass)
+                format!("{} {:.3}", symbol(), engine.tree.mass(ix))
             }
         }
         Rule::R3 | Rule::R4a | Rule::R4b | Rule::R4c | Rule::R5 | Rule::R6 => node

@@ -1,6 +1,7 @@
 //! Why a record could not be read or written, and what was noticed on the way.
 
 use super::smiles;
+use crate::molecule::AtomIx;
 use std::fmt;
 
 /// Something in a file that was repaired or that the reader should know of.
@@ -12,12 +13,26 @@ pub struct Notice {
     pub code: &'static str,
     /// What it is, in a sentence.
     pub text: String,
+    /// The atoms that it is about, where a finding is made of it.
+    pub atoms: Vec<AtomIx>,
 }
 
 impl Notice {
     /// A notice at a line of the file.
     pub fn new(line: usize, code: &'static str, text: String) -> Notice {
-        Notice { line, code, text }
+        Notice {
+            line,
+            code,
+            text,
+            atoms: Vec::new(),
+        }
+    }
+
+    /// The same, about these atoms.
+    #[must_use]
+    pub fn about(mut self, atoms: &[AtomIx]) -> Notice {
+        self.atoms = atoms.to_vec();
+        self
     }
 }
 
@@ -89,8 +104,34 @@ pub enum Reason {
     TooLong(usize),
     /// No line with the numbers of atoms and bonds among the first six.
     NoCountsLine,
-    /// An extended molfile.
-    V3000,
+    /// A counts line that says V3000, and no table of that version after it.
+    NotV3000,
+    /// A line in a V3000 table that does not start as all its lines must.
+    NoPrefix,
+    /// A line that has no place where it stands; what should stand there.
+    Misplaced {
+        /// The line's first words.
+        found: String,
+        /// What should stand there.
+        expected: &'static str,
+    },
+    /// The V3000 line COUNTS is missing or does not fit the lines that follow: atoms and bonds said, atoms
+    /// and bonds found.
+    CountsEntry {
+        /// As the line says; nothing if it is missing.
+        said: Option<(usize, usize)>,
+        /// Lines of atoms and bonds.
+        found: (usize, usize),
+    },
+    /// An index that two atoms of a V3000 table have, and the line of the first.
+    IndexTwice {
+        /// The index.
+        index: u32,
+        /// Line of the first atom with it.
+        first: usize,
+    },
+    /// An index that no atom of a V3000 table has.
+    NoSuchIndex(i64),
     /// More than 999 atoms or bonds in a V2000 counts line.
     NeedsV3000,
     /// The counts line does not fit the lines that follow: atoms and bonds said, atoms and bonds found.
@@ -167,15 +208,33 @@ impl fmt::Display for Reason {
                 f,
                 "the counts line (numbers of atoms and bonds, fourth line of a record) is missing"
             ),
-            Reason::V3000 => write!(f, "V3000 is not read yet"),
+            Reason::NotV3000 => write!(
+                f,
+                "the counts line says V3000, but no line 'M  V30 BEGIN CTAB' follows"
+            ),
+            Reason::NoPrefix => write!(f, "the line does not start with 'M  V30 '"),
+            Reason::Misplaced { found, expected } => {
+                write!(f, "'{found}' stands where {expected} should")
+            }
+            Reason::CountsEntry {
+                said: Some(said),
+                found,
+            } => miscounted(f, "the line COUNTS", *said, *found),
+            Reason::CountsEntry { said: None, .. } => write!(
+                f,
+                "the line COUNTS (numbers of atoms and bonds) is missing behind BEGIN CTAB"
+            ),
+            Reason::IndexTwice { index, first } => write!(
+                f,
+                "the index {index} belongs already to the atom of line {first}"
+            ),
+            Reason::NoSuchIndex(index) => {
+                write!(f, "atom {index} is named, but no atom has this index")
+            }
             Reason::NeedsV3000 => {
                 write!(f, "more than 999 atoms or bonds do not fit a V2000 molfile")
             }
-            Reason::Counts { said, found } => write!(
-                f,
-                "the counts line says {} atoms and {} bonds, but there are {} lines of atoms and {} of bonds",
-                said.0, said.1, found.0, found.1
-            ),
+            Reason::Counts { said, found } => miscounted(f, "the counts line", *said, *found),
             Reason::EndsEarly(what) => write!(f, "the record ends before {what}"),
             Reason::Number { field, text } if text.is_empty() => {
                 write!(f, "{field} is missing")
@@ -203,19 +262,30 @@ impl fmt::Display for Reason {
                 "the aromatic bonds allow no alternating single and double bonds (atom {atom} is left over)"
             ),
             Reason::SeveralPatterns(atoms) => {
+                let list: Vec<String> = atoms.iter().map(usize::to_string).collect();
                 write!(
                     f,
-                    "the aromatic bonds leave open which atom bears hydrogen (of "
-                )?;
-                for (i, a) in atoms.iter().enumerate() {
-                    write!(f, "{}{a}", if i > 0 { ", " } else { "" })?;
-                }
-                write!(f, ")")
+                    "the aromatic bonds leave open which atom bears hydrogen (of {})",
+                    list.join(", ")
+                )
             }
             Reason::NoDrawing(why) => f.write_str(why),
             Reason::Notation(fault) => fault.fmt(f),
         }
     }
+}
+
+fn miscounted(
+    f: &mut fmt::Formatter<'_>,
+    line: &str,
+    said: (usize, usize),
+    found: (usize, usize),
+) -> fmt::Result {
+    write!(
+        f,
+        "{line} says {} atoms and {} bonds, but there are {} lines of atoms and {} of bonds",
+        said.0, said.1, found.0, found.1
+    )
 }
 
 impl Reason {
@@ -225,13 +295,27 @@ impl Reason {
             Reason::Empty => "Give a molfile or an SD file.",
             Reason::Utf16 => "Save it as UTF-8 or plain ASCII text.",
             Reason::Binary | Reason::NotMolfile => {
-                "Give a molfile or an SD file (V2000), saved as text."
+                "Give a molfile or an SD file (V2000 or V3000), saved as text."
             }
             Reason::TooLong(_) => "Check that records end with a line $$$$.",
             Reason::NoCountsLine => {
                 "Put it back after three header lines, such as '  9  8  0  0  0  0  0  0  0  0999 V2000'."
             }
-            Reason::V3000 => "Save the drawing as a V2000 molfile.",
+            Reason::NotV3000 => {
+                "If the atoms stand in fixed columns, write V2000 at the end of the counts line."
+            }
+            Reason::NoPrefix => {
+                "Put 'M  V30 ' (two blanks, one blank) before it, and '-' at the end of the line before if it goes on from there."
+            }
+            Reason::Misplaced { .. } => "Correct the line, or put the lines into their order.",
+            Reason::CountsEntry { found, .. } => {
+                return format!(
+                    "If no line is lost, write 'M  V30 COUNTS {} {} 0 0 0' there.",
+                    found.0, found.1
+                );
+            }
+            Reason::IndexTwice { .. } => "Give each atom an index of its own.",
+            Reason::NoSuchIndex(_) => "Correct the index.",
             Reason::NeedsV3000 => "It needs a V3000 molfile, or the drawing must be split.",
             Reason::Counts { found, .. } => {
                 return format!(
@@ -268,13 +352,8 @@ impl Reason {
 /// Why a record cannot be written.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum WriteError {
-    /// More atoms or bonds than V2000 has room for.
-    NeedsV3000 {
-        /// Number of atoms.
-        atoms: usize,
-        /// Number of bonds.
-        bonds: usize,
-    },
+    /// Extra lines (S-groups and others) of V2000 in a record that needs V3000.
+    ExtraLines,
     /// Coordinates of an atom (from 1) that do not fit their columns.
     TooFar(usize),
     /// A number stated of an atom (from 1) that does not fit its columns.
@@ -289,9 +368,9 @@ pub enum WriteError {
 impl fmt::Display for WriteError {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         match self {
-            WriteError::NeedsV3000 { atoms, bonds } => write!(
+            WriteError::ExtraLines => write!(
                 f,
-                "{atoms} atoms and {bonds} bonds do not fit a V2000 molfile, which holds 999 of each; split the drawing"
+                "the record needs a V3000 molfile, but has S-group or other lines of V2000; take those away, or the stereo groups"
             ),
             WriteError::TooFar(atom) => write!(
                 f,

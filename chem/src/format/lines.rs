@@ -1,17 +1,23 @@
 //! Lines of a text with any line end: LF, CR LF, CR, also mixed.
 
-/// The first byte that is one of two. Sixteen at a time, in a form that compiles to vector code: finding
-/// the ends of lines is a third of the work of reading a molfile.
+/// The first byte that is one of two, looked for in eight bytes at a time: finding the ends of lines is a
+/// third of the work of reading a molfile.
 pub(super) fn position(bytes: &[u8], one: u8, other: u8) -> Option<usize> {
+    const LOW: u64 = u64::from_le_bytes([0x01; 8]);
+    const HIGH: u64 = u64::from_le_bytes([0x80; 8]);
+    let (one_all, other_all) = (LOW * u64::from(one), LOW * u64::from(other));
+    let (words, rest) = bytes.as_chunks::<8>();
+    for (i, word) in words.iter().enumerate() {
+        let word = u64::from_le_bytes(*word);
+        // the lowest high bit that is left marks the first byte that has become zero
+        let (x, y) = (word ^ one_all, word ^ other_all);
+        let zero = ((x.wrapping_sub(LOW) & !x) | (y.wrapping_sub(LOW) & !y)) & HIGH;
+        if zero != 0 {
+            return Some(8 * i + (zero.trailing_zeros() / 8) as usize);
+        }
+    }
     let hit = |b: &u8| *b == one || *b == other;
-    let (chunks, _) = bytes.as_chunks::<16>();
-    let whole = chunks
-        .iter()
-        .take_while(|chunk| !chunk.iter().fold(false, |any, b| any | hit(b)))
-        .count();
-    let start = 16 * whole;
-    let rest = bytes.get(start..).unwrap_or_default();
-    rest.iter().position(hit).map(|i| start + i)
+    rest.iter().position(hit).map(|i| 8 * words.len() + i)
 }
 
 /// Walks over the lines of a text; knows the number of each line and where it starts.

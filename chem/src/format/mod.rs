@@ -12,7 +12,9 @@ mod pairing;
 mod record;
 pub mod sdf;
 pub mod smiles;
+mod stereo_group;
 pub mod text;
 
 pub use error::{Notice, ReadError, Reason, WriteError};
-pub use record::{Field, Record, WriteOptions};
+pub use record::{Field, Record, Version, WriteOptions};
+pub use stereo_group::{GroupKind, StereoGroup};

@@ -14,7 +14,7 @@ pub fn decode(bytes: &[u8], line: usize) -> Result<(Cow<'_, str>, Option<Notice>
     if is_utf16(bytes) {
         return Err(ReadError::line(line, Reason::Utf16));
     }
-    if bytes.contains(&0) {
+    if has(bytes, 0) {
         return Err(ReadError::line(line, Reason::Binary));
     }
     let bytes = bytes.strip_prefix(b"\xEF\xBB\xBF").unwrap_or(bytes);
@@ -73,10 +73,18 @@ fn holds(line: &[u8], sign: &[u8]) -> bool {
     line.windows(sign.len()).any(|w| w == sign)
 }
 
+/// Whether a byte occurs in some bytes; many are looked at in one step.
+fn has(bytes: &[u8], wanted: u8) -> bool {
+    let in_chunk = |chunk: &[u8]| chunk.iter().fold(false, |any, b| any | (*b == wanted));
+    bytes.chunks(128).any(in_chunk)
+}
+
 /// Line ends in some bytes: LF, CR LF, CR.
 pub(super) fn count_lines(bytes: &[u8]) -> usize {
-    if !bytes.contains(&b'\r') {
-        return bytes.iter().filter(|b| **b == b'\n').count();
+    if !has(bytes, b'\r') {
+        // sums that fit a byte, so that sixteen bytes and more are looked at in one step
+        let in_chunk = |chunk: &[u8]| chunk.iter().fold(0u8, |n, b| n + u8::from(*b == b'\n'));
+        return bytes.chunks(192).map(|c| usize::from(in_chunk(c))).sum();
     }
     let mut after_cr = false;
     let mut count = 0;

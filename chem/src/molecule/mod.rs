@@ -110,6 +110,21 @@ impl Order {
             Order::Special(_) => 0,
         }
     }
+
+    /// Whether it is a hydrogen bond, which makes no ligand.
+    pub fn is_hydrogen_bond(self) -> bool {
+        self == Order::Special(10)
+    }
+
+    /// Whether it is a dative bond: a ligand like one held by a single bond.
+    pub fn is_dative(self) -> bool {
+        self == Order::Special(9)
+    }
+
+    /// Whether its order is unstated or a query's: what depends on it cannot be decided.
+    pub fn is_vague(self) -> bool {
+        matches!(self, Order::Special(_)) && !self.is_hydrogen_bond() && !self.is_dative()
+    }
 }
 
 /// One bond.

@@ -1,7 +1,6 @@
 //! Rings: which bonds lie in one, and the smallest ring through a bond or through two bonds at an atom.
 
 use crate::molecule::{AtomIx, BondIx, Molecule};
-use std::collections::VecDeque;
 
 /// Rings of a molecule.
 #[derive(Clone, Debug, Default)]
@@ -17,7 +16,6 @@ impl Rings {
         let in_ring = ring_bonds(molecule);
         let mut smallest = vec![0; molecule.n_bonds()];
         let mut cycles: Vec<Vec<AtomIx>> = Vec::new();
-        let mut known: Vec<Vec<AtomIx>> = Vec::new();
         let mut search = Search::new(molecule.n_atoms());
         for b in molecule.bonds().filter(|b| in_ring[b.index()]) {
             let [from, to] = molecule.bond(b).ends;
@@ -26,10 +24,7 @@ impl Rings {
             };
             // rings are far smaller than u32
             smallest[b.index()] = u32::try_from(path.len()).unwrap_or(u32::MAX);
-            let mut key = path.clone();
-            key.sort_unstable();
-            if let Err(at) = known.binary_search(&key) {
-                known.insert(at, key);
+            if !search.is_known(&cycles, &path) {
                 cycles.push(path);
             }
         }
@@ -133,7 +128,7 @@ struct Search {
     round: u32,
     seen: Vec<u32>,
     from: Vec<AtomIx>,
-    queue: VecDeque<AtomIx>,
+    queue: Vec<AtomIx>,
 }
 
 impl Search {
@@ -142,8 +137,33 @@ impl Search {
             round: 0,
             seen: vec![0; n_atoms],
             from: vec![AtomIx::new(0); n_atoms],
-            queue: VecDeque::new(),
+            queue: Vec::new(),
         }
+    }
+
+    /// Whether one of the cycles has the same atoms as another one.
+    fn is_known(&mut self, cycles: &[Vec<AtomIx>], other: &[AtomIx]) -> bool {
+        self.round += 1;
+        for atom in other {
+            self.seen[atom.index()] = self.round;
+        }
+        let is_in = |atom: &AtomIx| self.seen[atom.index()] == self.round;
+        // most rings that share an atom stand close together in the list
+        let mut latest_first = cycles.iter().rev();
+        latest_first.any(|cycle| cycle.len() == other.len() && cycle.iter().all(is_in))
+    }
+
+    /// The way by which the search came from one atom to another.
+    fn way(&self, start: AtomIx, goal: AtomIx) -> Vec<AtomIx> {
+        let mut path = Vec::with_capacity(8);
+        path.push(goal);
+        let mut at = goal;
+        while at != start {
+            at = self.from[at.index()];
+            path.push(at);
+        }
+        path.reverse();
+        path
     }
 
     /// Atoms of a shortest path over ring bonds other than those cut, both ends included.
@@ -157,28 +177,24 @@ impl Search {
     ) -> Option<Vec<AtomIx>> {
         self.round += 1;
         self.queue.clear();
-        self.queue.push_back(start);
+        self.queue.push(start);
         self.seen[start.index()] = self.round;
-        while let Some(atom) = self.queue.pop_front() {
-            if atom == goal {
-                let mut path = vec![goal];
-                let mut at = goal;
-                while at != start {
-                    at = self.from[at.index()];
-                    path.push(at);
-                }
-                path.reverse();
-                return Some(path);
-            }
+        let mut next = 0;
+        while let Some(atom) = self.queue.get(next).copied() {
+            next += 1;
             for n in molecule.neighbors(atom) {
-                if in_ring[n.bond.index()]
-                    && !cut.contains(&n.bond)
-                    && self.seen[n.atom.index()] != self.round
+                if !in_ring[n.bond.index()]
+                    || self.seen[n.atom.index()] == self.round
+                    || cut.contains(&n.bond)
                 {
-                    self.seen[n.atom.index()] = self.round;
-                    self.from[n.atom.index()] = atom;
-                    self.queue.push_back(n.atom);
+                    continue;
                 }
+                self.seen[n.atom.index()] = self.round;
+                self.from[n.atom.index()] = atom;
+                if n.atom == goal {
+                    return Some(self.way(start, goal));
+                }
+                self.queue.push(n.atom);
             }
         }
         None

@@ -149,7 +149,15 @@ fn refusal_of_search(units: &Units, goals: &[Goal], error: &SearchError) -> Refu
             "not-decided",
             atoms(&[*ix]),
             format!(
-                "{} is not decided: it depends on what a placeholder stands for; draw the group itself",
+                "{} is not decided: it depends on a placeholder or on a bond whose order is not stated; draw the group itself",
+                name(units.get(*ix))
+            ),
+        ),
+        SearchError::Stopped(ix, Stop::Combinations) => (
+            "not-decided",
+            atoms(&[*ix]),
+            format!(
+                "{} is not decided: too many combinations of open places would have to be tried",
                 name(units.get(*ix))
             ),
         ),

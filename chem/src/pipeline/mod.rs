@@ -6,8 +6,8 @@ mod notation;
 mod report;
 
 pub use carry::carry;
-pub use notation::{labels_of, report_of};
-pub use report::{faults, labels_line, report, why};
+pub use notation::{explain_of, labels_of, report_of};
+pub use report::{Carried, carried, explain, report, why};
 
 use crate::cip::Rule;
 use crate::drawing::{Drawing, Edit};

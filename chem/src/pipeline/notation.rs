@@ -1,8 +1,8 @@
 //! What a line of notation carries: as of a drawing, save that there are no marks to look at.
 
-use super::report::spell;
+use super::report::{explained, spell};
 use super::{Place, Report, Sense, Verdict};
-use crate::cip::{Limits, Missing, Ranker, UnitLabel};
+use crate::cip::{Limits, Missing, Ranker, Tie, UnitLabel};
 use crate::element::Element;
 use crate::format::smiles::Smiles;
 use crate::molecule::Molecule;
@@ -55,6 +55,17 @@ pub fn report_of(line: &Smiles) -> Report {
     }
 }
 
+/// Why the ligands of each place stand in their order; see [`super::why`].
+pub fn explain_of(line: &Smiles, places: &[Place]) -> Vec<Vec<Option<Tie>>> {
+    explained(
+        &line.molecule,
+        &line.rings,
+        &line.units,
+        &line.configurations,
+        places,
+    )
+}
+
 /// Whether a unit is a row of the table: it carries a descriptor or could by its constitution.
 fn is_shown(
     molecule: &Molecule,
@@ -73,7 +84,7 @@ fn is_shown(
                 Focus::Pair(_) => false,
             };
             let needs_mark = matches!(unit.kind, Kind::HinderedAxis | Kind::Helix);
-            label.ranking.is_some() && !held_by_cage && !needs_mark
+            !held_by_cage && !needs_mark
         }
         Err(Missing::Stopped(_)) => matches!(configuration, Configuration::Defined(_)),
         Err(Missing::Alike) => false,
@@ -88,6 +99,10 @@ fn place(unit: &Unit, label: &UnitLabel, configuration: Configuration) -> Place 
     };
     let note = match label.descriptor {
         Ok(_) => String::new(),
+        Err(Missing::Undefined) if label.ranking.is_none() => {
+            "no configuration is written; whether it can carry a descriptor depends on other places"
+                .to_owned()
+        }
         Err(Missing::Undefined) => "no configuration is written".to_owned(),
         Err(missing) => missing.to_string(),
     };

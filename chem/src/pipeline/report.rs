@@ -3,7 +3,8 @@
 use super::{Idle, Place, Report, Sense, Verdict, labels_of, perceived};
 use crate::cip::{Limits, Missing, Ranker, Tie, UnitLabel};
 use crate::drawing::{Drawing, Mark};
-use crate::molecule::{AtomIx, Order};
+use crate::element::Element;
+use crate::molecule::{AtomIx, Molecule, Order};
 use crate::perceive::Rings;
 use crate::solve::require::Requirement;
 use crate::stereo::{Configuration, Descriptor, Focus, Kind, Ligand, Unit, UnitIx, Units};
@@ -14,51 +15,90 @@ pub fn report(drawing: &Drawing, requirement: &Requirement) -> Report {
     let (rings, units) = perceived(drawing);
     let ranker = Ranker::new(drawing.molecule(), &rings, &units, Limits::default());
     let reading = wedge::read(drawing, &units);
+    reported(drawing, requirement, &rings, &units, &reading, &ranker)
+}
+
+fn reported(
+    drawing: &Drawing,
+    requirement: &Requirement,
+    rings: &Rings,
+    units: &Units,
+    reading: &Reading,
+    ranker: &Ranker<'_>,
+) -> Report {
     let labels = ranker.label_all(reading.configurations());
     let mut places: Vec<Place> = units
         .iter()
         .filter_map(|(ix, unit)| {
             let must = wanted(requirement, unit);
             let label = &labels[ix.index()];
-            is_shown(drawing, unit, ix, &reading, label, must)
-                .then(|| place(drawing, unit, ix, &reading, label, must))
+            is_shown(drawing, unit, ix, reading, label, must)
+                .then(|| place(drawing, unit, ix, reading, label, must))
         })
         .collect();
     places.sort_by_key(|p| p.atoms.clone());
     Report {
         places,
-        idle: idle(drawing, &units, &labels),
+        idle: idle(drawing, rings, units, &labels),
     }
 }
 
 /// Why the ligands of a place stand in their order: one entry for each two neighbors in it (of a pair,
 /// one for each end); empty where nothing is ranked. See [`Ranker::why`].
 pub fn why(drawing: &Drawing, place: &Place) -> Vec<Option<Tie>> {
-    let molecule = drawing.molecule();
+    let mut whys = explain(drawing, std::slice::from_ref(place));
+    whys.pop().unwrap_or_default()
+}
+
+/// [`why`] for several places of one drawing.
+pub fn explain(drawing: &Drawing, places: &[Place]) -> Vec<Vec<Option<Tie>>> {
     let (rings, units) = perceived(drawing);
-    let ranker = Ranker::new(molecule, &rings, &units, Limits::default());
     let reading = wedge::read(drawing, &units);
-    let unit = units
+    let configurations = reading.configurations();
+    explained(drawing.molecule(), &rings, &units, configurations, places)
+}
+
+/// Why the ligands of some places stand in their order.
+pub(super) fn explained(
+    molecule: &Molecule,
+    rings: &Rings,
+    units: &Units,
+    configurations: &[Configuration],
+    places: &[Place],
+) -> Vec<Vec<Option<Tie>>> {
+    let ranker = Ranker::new(molecule, rings, units, Limits::default());
+    let dependent = |p: &Place| p.rule.is_some_and(|rule| !rule.is_constitutional());
+    // the letters of other units matter to Rules 3 and later alone
+    let labels = places
         .iter()
-        .find(|(_, u)| u.kind == place.kind && u.atoms().as_slice() == place.atoms.as_slice());
-    let Some((ix, _)) = unit else {
-        return Vec::new();
-    };
-    let labels = ranker.label_all(reading.configurations());
-    let Some(ranking) = &labels[ix.index()].ranking else {
-        return Vec::new();
-    };
-    ranker
-        .why(molecule, reading.configurations(), ix, ranking)
-        .unwrap_or_default()
+        .any(dependent)
+        .then(|| ranker.label_defined(configurations));
+    places
+        .iter()
+        .map(|place| {
+            let unit = units.iter().find(|(_, u)| {
+                u.kind == place.kind && u.atoms().as_slice() == place.atoms.as_slice()
+            });
+            let Some((ix, _)) = unit else {
+                return Vec::new();
+            };
+            let known = labels.as_ref().and_then(|l| l[ix.index()].as_ref());
+            let ranking = match known.and_then(|label| label.ranking.as_ref()) {
+                Some(ranking) => Some(ranking),
+                None => ranker.by_constitution(ix).unwrap_or_default(),
+            };
+            ranking
+                .and_then(|r| ranker.why(molecule, configurations, ix, r).ok())
+                .unwrap_or_default()
+        })
+        .collect()
 }
 
 /// Wedges from whose narrow end no reader learns anything: no unit there, or one whose ligands are alike.
 /// A wedge in a ring may hold others in their geometry though its own atom carries nothing, and stays
 /// unmentioned.
-fn idle(drawing: &Drawing, units: &Units, labels: &[UnitLabel]) -> Vec<Idle> {
+fn idle(drawing: &Drawing, rings: &Rings, units: &Units, labels: &[UnitLabel]) -> Vec<Idle> {
     let molecule = drawing.molecule();
-    let rings = Rings::find(molecule);
     let mut list = Vec::new();
     for bond in molecule.bonds() {
         let mark = drawing.mark(bond);
@@ -73,6 +113,10 @@ fn idle(drawing: &Drawing, units: &Units, labels: &[UnitLabel]) -> Vec<Idle> {
         let text = match found {
             None if units.center_at(wide).is_some() => format!(
                 "the wedge between atoms {n} and {w} is narrow at atom {n}, which is no centre: at atom {w} its wide end says nothing"
+            ),
+            None if is_beyond(molecule.element(narrow)) => format!(
+                "the wedge from atom {n} to atom {w} is not read: the geometry of atom {n} ({}) is outside this program",
+                molecule.element(narrow).symbol()
             ),
             None => format!(
                 "the wedge from atom {n} to atom {w} says nothing: atom {n} is not stereogenic"
@@ -99,6 +143,11 @@ fn idle(drawing: &Drawing, units: &Units, labels: &[UnitLabel]) -> Vec<Idle> {
     list
 }
 
+/// Whether an element's geometry is not known here: metals and placeholders may be stereogenic or not.
+fn is_beyond(element: Element) -> bool {
+    element.valences(0).is_empty()
+}
+
 /// Whether a unit can be read from a mark that is narrow at one atom and wide at another.
 fn speaks_at(unit: &Unit, narrow: AtomIx, wide: AtomIx) -> bool {
     match unit.kind {
@@ -111,19 +160,45 @@ fn speaks_at(unit: &Unit, narrow: AtomIx, wide: AtomIx) -> bool {
     }
 }
 
-/// The labels of a drawing alone: `3R 7E 8E`. Units that the drawing leaves open are not ranked.
-pub fn labels_line(drawing: &Drawing) -> String {
-    let (rings, units) = perceived(drawing);
-    let reading = wedge::read(drawing, &units);
-    labels_of(drawing.molecule(), &rings, &units, reading.configurations())
+/// What a drawing carries, in one line, and what a reader of that line alone would not see.
+#[derive(Clone, Debug, Default, PartialEq, Eq)]
+pub struct Carried {
+    /// Labels by atom number from 1, as [`Report::labels_line`] gives them: `3R 7E 8E`.
+    pub labels: String,
+    /// Contradictions and wedges that say nothing, as [`Report::faults`] gives them.
+    pub faults: Vec<String>,
 }
 
-/// What a reader of the labels alone would not see, a sentence each (see [`Report::faults`]); quick where
-/// every wedge starts at a centre that can be read.
-pub fn faults(drawing: &Drawing) -> Vec<String> {
-    let molecule = drawing.molecule();
-    let (_, units) = perceived(drawing);
+/// The labels of a drawing alone, and its faults: quicker than a [`report`], since units that the drawing
+/// leaves open are not ranked unless a mark is odd.
+pub fn carried(drawing: &Drawing) -> Carried {
+    let (rings, units) = perceived(drawing);
     let reading = wedge::read(drawing, &units);
+    if is_odd(drawing, &units, &reading) {
+        let ranker = Ranker::new(drawing.molecule(), &rings, &units, Limits::default());
+        let report = reported(
+            drawing,
+            &Requirement::default(),
+            &rings,
+            &units,
+            &reading,
+            &ranker,
+        );
+        return Carried {
+            labels: report.labels_line(),
+            faults: report.faults(),
+        };
+    }
+    Carried {
+        labels: labels_of(drawing.molecule(), &rings, &units, reading.configurations()),
+        faults: Vec::new(),
+    }
+}
+
+/// Whether some mark may have to be spoken of: a unit that cannot be read, or a wedge that does not start
+/// at a centre that can.
+fn is_odd(drawing: &Drawing, units: &Units, reading: &Reading) -> bool {
+    let molecule = drawing.molecule();
     let mut plain = vec![true; molecule.n_atoms()];
     for (ix, unit) in units.iter() {
         if let (Focus::Center(a), Configuration::Defined(_)) =
@@ -132,16 +207,13 @@ pub fn faults(drawing: &Drawing) -> Vec<String> {
             plain[a.index()] = false;
         }
     }
-    let doubtful = units.iter().any(|(ix, _)| reading.doubt(ix).is_some());
-    let strays = molecule.bonds().any(|b| match drawing.mark(b) {
-        Mark::Solid(end) | Mark::Hashed(end) => plain[molecule.bond(b).ends[end.index()].index()],
-        Mark::Plain | Mark::Wavy(_) | Mark::Crossed => false,
-    });
-    if doubtful || strays {
-        report(drawing, &Requirement::default()).faults()
-    } else {
-        Vec::new()
-    }
+    units.iter().any(|(ix, _)| reading.doubt(ix).is_some())
+        || molecule.bonds().any(|b| match drawing.mark(b) {
+            Mark::Solid(end) | Mark::Hashed(end) => {
+                plain[molecule.bond(b).ends[end.index()].index()]
+            }
+            Mark::Plain | Mark::Wavy(_) | Mark::Crossed => false,
+        })
 }
 
 /// Labels in the order of their atoms.
@@ -181,13 +253,13 @@ fn is_shown(
         // a nitrogen that its cage holds is not open, merely unmarked
         Err(Missing::Undefined) => {
             let held_by_cage = unit.ligands.contains(&Ligand::LonePair)
-                && drawing.molecule().element(unit.atoms()[0]) == crate::element::Element::N
+                && drawing.molecule().element(unit.atoms()[0]) == Element::N
                 && matches!(unit.focus, Focus::Center(_));
             let silent =
                 reading.doubt(ix).is_none() && reading.configuration(ix) == Configuration::Open;
             // only a mark says that rotation about a bond is hindered or that rings form a helix
             let needs_mark = matches!(unit.kind, Kind::HinderedAxis | Kind::Helix);
-            label.ranking.is_some() && !((held_by_cage || needs_mark) && silent)
+            !((held_by_cage || needs_mark) && silent)
         }
         Err(Missing::Stopped(_)) => has_mark(drawing, unit),
         _ => false,
@@ -244,6 +316,10 @@ fn place(
         }
         (None, Err(Missing::Undefined)) if has_wide_end(drawing, unit) => {
             "a wedge has its wide end here, which says nothing".to_owned()
+        }
+        (None, Err(Missing::Undefined)) if label.ranking.is_none() => {
+            "no configuration is drawn; whether it can carry a descriptor depends on other places"
+                .to_owned()
         }
         (None, Err(missing)) => missing.to_string(),
         (None, Ok(_)) => String::new(),

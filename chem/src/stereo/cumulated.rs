@@ -9,11 +9,12 @@ use super::{Focus, Kind, Ligand, Unit};
 use crate::element::Element;
 use crate::molecule::{AtomIx, BondIx, Molecule, Order};
 use crate::perceive::Rings;
+use smallvec::SmallVec;
 
 /// A run of atoms joined by double bonds, the lower end first.
 pub(super) struct Chain {
-    pub(super) atoms: Vec<AtomIx>,
-    pub(super) bonds: Vec<BondIx>,
+    pub(super) atoms: SmallVec<[AtomIx; 4]>,
+    pub(super) bonds: SmallVec<[BondIx; 3]>,
 }
 
 impl Chain {
@@ -44,12 +45,13 @@ pub(super) fn chains(molecule: &Molecule) -> Vec<Chain> {
     let mut chains = Vec::new();
     for start in molecule.atoms().filter(|a| !is_inner(molecule, *a)) {
         for first in molecule.neighbors(start) {
-            if first.order != Order::Double {
+            let is_chain = |to| is_inner(molecule, to);
+            if first.order != Order::Double || (first.atom < start && !is_chain(first.atom)) {
                 continue;
             }
             let mut chain = Chain {
-                atoms: vec![start, first.atom],
-                bonds: vec![first.bond],
+                atoms: SmallVec::from_slice(&[start, first.atom]),
+                bonds: SmallVec::from_slice(&[first.bond]),
             };
             let mut at = first.atom;
             while is_inner(molecule, at) {

@@ -21,47 +21,64 @@ pub(super) fn find(molecule: &Molecule, rings: &Rings, list: &mut Vec<Unit>) {
 
 /// The four ligands of an atom in reference order, if it has the shape of a centre.
 fn ligands(molecule: &Molecule, rings: &Rings, atom: AtomIx) -> Option<[Ligand; 4]> {
-    let drawn = molecule.degree(atom);
+    let neighbors = molecule.neighbors(atom).iter();
+    let drawn = neighbors.clone().filter(|n| !n.order.is_hydrogen_bond());
+    let drawn: SmallVec<[AtomIx; 4]> = drawn.map(|n| n.atom).collect();
     let hydrogens = usize::from(molecule.hydrogens(atom));
-    let last = match (drawn, hydrogens) {
+    let last = match (drawn.len(), hydrogens) {
         (4, 0) if four_ligands_hold(molecule, atom) => None,
         (3, 1) if four_ligands_hold(molecule, atom) => Some(Ligand::Hydrogen),
         (3, 0) if lone_pair_holds(molecule, rings, atom) => Some(Ligand::LonePair),
         _ => return None,
     };
-    let neighbors = molecule.neighbors(atom);
     let mut ligands = [last.unwrap_or(Ligand::Hydrogen); 4];
-    for (slot, neighbor) in ligands.iter_mut().zip(neighbors) {
-        *slot = Ligand::Atom(neighbor.atom);
+    for (slot, neighbor) in ligands.iter_mut().zip(&drawn) {
+        *slot = Ligand::Atom(*neighbor);
     }
-    ligands[..drawn].sort_unstable();
+    ligands[..drawn.len()].sort_unstable();
     Some(ligands)
 }
 
-/// Numbers of single, double and other bonds that are drawn at an atom.
-fn bonds(molecule: &Molecule, atom: AtomIx) -> (usize, usize, usize) {
-    let mut counts = (0, 0, 0);
+/// Numbers of bonds that are drawn at an atom.
+#[derive(Default)]
+struct Bonds {
+    double: usize,
+    dative: usize,
+    /// Triple bonds and those whose order is not stated.
+    other: usize,
+}
+
+fn bonds(molecule: &Molecule, atom: AtomIx) -> Bonds {
+    let mut counts = Bonds::default();
     for n in molecule.neighbors(atom) {
         match n.order {
-            Order::Single => counts.0 += 1,
-            Order::Double => counts.1 += 1,
-            Order::Triple | Order::Special(_) => counts.2 += 1,
+            Order::Single => {}
+            Order::Double => counts.double += 1,
+            order if order.is_dative() => counts.dative += 1,
+            order if order.is_hydrogen_bond() => {}
+            Order::Triple | Order::Special(_) => counts.other += 1,
         }
     }
     counts
 }
 
 fn four_ligands_hold(molecule: &Molecule, atom: AtomIx) -> bool {
-    let (_, double, other) = bonds(molecule, atom);
+    let bonds = bonds(molecule, atom);
     let charge = molecule.atom(atom).charge;
-    if other > 0 {
+    if bonds.other > 0 {
         return false;
     }
     match molecule.element(atom) {
-        Element::C | Element::SI | Element::GE | Element::SN => double == 0 && charge == 0,
-        Element::B => double == 0 && charge == -1,
-        // ammonium and N-oxide, the latter also drawn with N=O
-        Element::N => (double == 0 && charge == 1) || (double == 1 && charge == 0),
+        Element::C | Element::SI | Element::GE | Element::SN => {
+            bonds.double == 0 && bonds.dative == 0 && charge == 0
+        }
+        // a borate, or a borane that takes the pair of a donor
+        Element::B => bonds.double == 0 && (charge == -1 || (charge == 0 && bonds.dative == 1)),
+        // ammonium and N-oxide, the latter also drawn with N=O; an amine that gives its pair
+        Element::N => {
+            (bonds.double == 0 && (charge == 1 || (charge == 0 && bonds.dative == 1)))
+                || (bonds.double == 1 && charge == 0 && bonds.dative == 0)
+        }
         Element::P | Element::AS | Element::SB => true,
         Element::S | Element::SE | Element::TE => true,
         _ => false,
@@ -69,17 +86,25 @@ fn four_ligands_hold(molecule: &Molecule, atom: AtomIx) -> bool {
 }
 
 fn lone_pair_holds(molecule: &Molecule, rings: &Rings, atom: AtomIx) -> bool {
-    let (_, double, other) = bonds(molecule, atom);
+    let bonds = bonds(molecule, atom);
     let charge = molecule.atom(atom).charge;
-    if other > 0 {
+    if bonds.other > 0 {
         return false;
     }
+    let donates = bonds.dative > 0;
     match molecule.element(atom) {
-        Element::N => double == 0 && charge == 0 && nitrogen_cannot_invert(molecule, rings, atom),
-        Element::P | Element::AS | Element::SB => double == 0 && charge == 0,
-        Element::S | Element::SE | Element::TE => {
-            (double == 1 && charge == 0) || (double == 0 && charge == 1)
+        Element::N => {
+            bonds.double == 0
+                && charge == 0
+                && !donates
+                && nitrogen_cannot_invert(molecule, rings, atom)
         }
+        Element::P | Element::AS | Element::SB => bonds.double == 0 && charge == 0 && !donates,
+        // of the two pairs of a sulfide one may be given away
+        Element::S | Element::SE | Element::TE => matches!(
+            (bonds.double, charge, bonds.dative),
+            (1, 0, 0) | (0, 1, 0) | (0, 0, 1)
+        ),
         _ => false,
     }
 }

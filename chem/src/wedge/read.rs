@@ -7,8 +7,10 @@
 //! (ST-0.4, ST-0.5, ST-1.2.10, ST-1.2.12, ST-4.4, as their readers quote them); InChI technical manual,
 //! stereochemical layer.
 
-use super::{read_axis, read_center, read_double, read_helix};
+use super::{read_axis, read_center, read_double, read_helix, read_projection};
 use crate::drawing::Drawing;
+use crate::molecule::AtomIx;
+use crate::perceive::Rings;
 use crate::stereo::{Configuration, Focus, Kind, UnitIx, Units};
 
 /// Why a unit's marks cannot be read.
@@ -28,6 +30,8 @@ pub enum Doubt {
     Straight,
     /// Both ligands of one end are drawn on the same side of the double bond.
     SameSide,
+    /// The wedges are the near edge of a ring in perspective.
+    Perspective,
 }
 
 impl Doubt {
@@ -41,6 +45,9 @@ impl Doubt {
             Doubt::Overlap => "two bonds point the same way or an atom lies on the centre",
             Doubt::Straight => "a ligand lies in line with the double bond",
             Doubt::SameSide => "both ligands of one end are drawn on the same side",
+            Doubt::Perspective => {
+                "the wedges are the near edge of a ring in perspective, not those of a flat drawing"
+            }
         }
     }
 }
@@ -72,9 +79,15 @@ impl Reading {
 /// Reads the configuration of every unit from a drawing.
 pub fn read(drawing: &Drawing, units: &Units) -> Reading {
     let mut reading = Reading::default();
+    let in_perspective = near_edges(drawing, units);
     for (_, unit) in units.iter() {
         let seen = match unit.focus {
-            Focus::Center(center) => read_center::read(drawing, center, &unit.ligands),
+            Focus::Center(center) => match read_center::read(drawing, center, &unit.ligands) {
+                Ok(Configuration::Defined(_)) | Err(_) if in_perspective.contains(&center) => {
+                    Err(Doubt::Perspective)
+                }
+                seen => seen,
+            },
             Focus::Pair(ends) => match unit.kind {
                 Kind::CumulatedAxis | Kind::HinderedAxis => read_axis::read(drawing, ends, unit),
                 Kind::Helix => read_helix::read(drawing, ends, unit),
@@ -89,4 +102,17 @@ pub fn read(drawing: &Drawing, units: &Units) -> Reading {
         reading.doubts.push(seen.err());
     }
     reading
+}
+
+/// Centres of Haworth rings whose near edge is drawn with wedges.
+fn near_edges(drawing: &Drawing, units: &Units) -> Vec<AtomIx> {
+    if !read_projection::may_have_front_edge(drawing) {
+        return Vec::new();
+    }
+    let rings = Rings::find(drawing.molecule());
+    read_projection::projections(drawing, units, &rings)
+        .into_iter()
+        .filter(|(_, p)| *p == read_projection::Projection::Haworth)
+        .map(|(a, _)| a)
+        .collect()
 }

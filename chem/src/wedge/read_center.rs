@@ -6,26 +6,12 @@
 //! the opposite of the outer ones, and where two bonds are in line the third says nothing.
 
 use super::read::Doubt;
+use super::read_pattern::{Pattern, Shape};
 use crate::drawing::{Drawing, Mark};
-use crate::geom;
 use crate::molecule::{AtomIx, Order};
 use crate::stereo::{Configuration, Ligand, Parity, odd_permutation};
 use smallvec::SmallVec;
 use std::f64::consts::PI;
-
-/// Half width of the window about a straight angle in which two bonds count as in line: 0.10 rad, as in
-/// the InChI library.
-const IN_LINE: f64 = 0.10;
-/// Two bonds closer than this (5 degrees) have one direction.
-const SAME_DIRECTION: f64 = 5.0 * PI / 180.0;
-
-/// A drawn bond as seen from the centre.
-struct Spoke {
-    ligand: Ligand,
-    angle: f64,
-    /// +1 towards the reader, -1 away, 0 in the paper.
-    lift: i8,
-}
 
 pub(super) fn read(
     drawing: &Drawing,
@@ -46,15 +32,19 @@ pub(super) fn read(
     if marks.wedges == 0 {
         return Ok(Configuration::Open);
     }
-    let spokes = spokes(drawing, center)?;
-    let order: SmallVec<[Ligand; 4]> = spokes.iter().map(|s| s.ligand).collect();
-    let parity = if spokes.len() == 4 {
+    let pattern = Pattern::of(drawing, center)?;
+    let order: SmallVec<[Ligand; 4]> = pattern
+        .spokes
+        .iter()
+        .map(|s| Ligand::Atom(s.atom))
+        .collect();
+    let parity = if pattern.shape == Shape::Four {
         // bonds 0 and 2 towards the reader: seen from bond 0 the rest goes round anticlockwise
-        let sense = four(&spokes)?;
+        let sense = four(&pattern)?;
         Parity::from_even(!sense).flipped_if(odd_permutation(&order, ligands))
     } else {
         // towards the reader of the missing ligand: seen from that, the bonds go round clockwise
-        let sense = three(&spokes)?;
+        let sense = three(&pattern)?;
         let mut seen: SmallVec<[Ligand; 4]> = SmallVec::new();
         seen.extend(ligands.iter().copied().filter(|l| l.atom().is_none()));
         seen.extend(order);
@@ -86,47 +76,9 @@ fn marks(drawing: &Drawing, center: AtomIx) -> Marks {
     marks
 }
 
-/// The drawn bonds in anticlockwise order.
-fn spokes(drawing: &Drawing, center: AtomIx) -> Result<SmallVec<[Spoke; 4]>, Doubt> {
-    let mut spokes: SmallVec<[Spoke; 4]> = SmallVec::new();
-    for n in drawing.molecule().neighbors(center) {
-        let direction = drawing.direction(center, n.atom).ok_or(Doubt::Overlap)?;
-        let lift = match drawing.mark_from(center, n.bond) {
-            Mark::Solid(_) if n.order == Order::Single => 1,
-            Mark::Hashed(_) if n.order == Order::Single => -1,
-            _ => 0,
-        };
-        spokes.push(Spoke {
-            ligand: Ligand::Atom(n.atom),
-            angle: geom::angle(direction),
-            lift,
-        });
-    }
-    spokes.sort_by(|a, b| a.angle.total_cmp(&b.angle));
-    if gaps(&spokes).iter().any(|gap| *gap < SAME_DIRECTION) {
-        return Err(Doubt::Overlap);
-    }
-    Ok(spokes)
-}
-
-/// Angle from each bond to the next, anticlockwise.
-fn gaps(spokes: &[Spoke]) -> SmallVec<[f64; 4]> {
-    (0..spokes.len())
-        .map(|i| geom::turn(spokes[i].angle, spokes[(i + 1) % spokes.len()].angle))
-        .collect()
-}
-
-fn widest(gaps: &[f64]) -> (usize, f64) {
-    gaps.iter().copied().enumerate().fold(
-        (0, 0.0),
-        |best, (i, gap)| {
-            if gap > best.1 { (i, gap) } else { best }
-        },
-    )
-}
-
 /// Whether bonds 0 and 2 lie towards the reader.
-fn four(spokes: &[Spoke]) -> Result<bool, Doubt> {
+fn four(pattern: &Pattern) -> Result<bool, Doubt> {
+    let spokes = &pattern.spokes;
     let votes: SmallVec<[i8; 4]> = spokes
         .iter()
         .enumerate()
@@ -137,7 +89,7 @@ fn four(spokes: &[Spoke]) -> Result<bool, Doubt> {
         return Ok(sense);
     }
     // three alike and one that differs, all round the centre: the odd one is on the other side
-    let spread = widest(&gaps(spokes)).1 < PI;
+    let spread = pattern.widest() < PI;
     for kind in [1, -1] {
         let others: SmallVec<[usize; 4]> = (0..4).filter(|i| spokes[*i].lift != kind).collect();
         if let ([odd], true) = (others.as_slice(), spread) {
@@ -149,27 +101,28 @@ fn four(spokes: &[Spoke]) -> Result<bool, Doubt> {
 }
 
 /// Whether the three bonds lie towards the reader of the missing ligand.
-fn three(spokes: &[Spoke]) -> Result<bool, Doubt> {
-    let (at, gap) = widest(&gaps(spokes));
-    // the widest gap opens after bond `at`, so the bond that faces it is the one after the next
-    let middle = (at + 2) % 3;
-    let outer = [at, (at + 1) % 3];
+fn three(pattern: &Pattern) -> Result<bool, Doubt> {
+    let lift = |i: usize| pattern.spokes[i].lift;
     let mut votes: SmallVec<[i8; 4]> = SmallVec::new();
-    if (gap - PI).abs() < IN_LINE {
-        votes.extend(outer.iter().map(|i| spokes[*i].lift).filter(|h| *h != 0));
-        if votes.is_empty() {
-            return Err(Doubt::Stem);
+    match pattern.shape {
+        Shape::Tee { bars, .. } => {
+            votes.extend(bars.iter().map(|i| lift(*i)).filter(|h| *h != 0));
+            if votes.is_empty() {
+                return Err(Doubt::Stem);
+            }
         }
-    } else if gap > PI {
-        let lifts: SmallVec<[i8; 4]> = spokes.iter().map(|s| s.lift).collect();
-        if lifts.iter().all(|h| *h != 0 && *h == lifts[0]) {
-            return Err(Doubt::AllAlike);
+        Shape::HalfPlane { middle, outer } => {
+            let first = lift(middle);
+            if first != 0 && outer.iter().all(|i| lift(*i) == first) {
+                return Err(Doubt::AllAlike);
+            }
+            votes.push(-first);
+            votes.extend(outer.iter().map(|i| lift(*i)));
+            votes.retain(|h| *h != 0);
         }
-        votes.push(-spokes[middle].lift);
-        votes.extend(outer.iter().map(|i| spokes[*i].lift));
-        votes.retain(|h| *h != 0);
-    } else {
-        votes.extend(spokes.iter().map(|s| s.lift).filter(|h| *h != 0));
+        Shape::Spread | Shape::Four | Shape::Other => {
+            votes.extend(pattern.spokes.iter().map(|s| s.lift).filter(|h| *h != 0));
+        }
     }
     agreed(&votes)
 }
@@ -226,32 +179,36 @@ fn in_space(
 
 #[cfg(test)]
 mod tests {
+    use super::super::read_pattern::Spoke;
     use super::*;
+    use crate::geom;
+    use crate::molecule::BondIx;
 
     fn spoke(angle_degrees: f64, lift: i8) -> Spoke {
         Spoke {
-            ligand: Ligand::Hydrogen,
+            atom: AtomIx::new(0),
+            bond: BondIx::new(0),
             angle: geom::angle(geom::unit(angle_degrees.to_radians())),
             lift,
         }
     }
 
     fn read3(angles: [f64; 3], lifts: [i8; 3]) -> Result<bool, Doubt> {
-        let spokes: Vec<Spoke> = angles
+        let spokes = angles
             .iter()
             .zip(lifts)
             .map(|(a, h)| spoke(*a, h))
             .collect();
-        three(&spokes)
+        three(&Pattern::from_spokes(spokes))
     }
 
     fn read4(angles: [f64; 4], lifts: [i8; 4]) -> Result<bool, Doubt> {
-        let spokes: Vec<Spoke> = angles
+        let spokes = angles
             .iter()
             .zip(lifts)
             .map(|(a, h)| spoke(*a, h))
             .collect();
-        four(&spokes)
+        four(&Pattern::from_spokes(spokes))
     }
 
     // InChI technical manual, table of three-bond drawings; IUPAC 2006, ST-1.2.10 and ST-1.2.12

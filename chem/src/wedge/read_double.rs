@@ -6,7 +6,7 @@
 use super::read::Doubt;
 use crate::drawing::{Drawing, Mark};
 use crate::molecule::{AtomIx, Order};
-use crate::stereo::{Configuration, Ligand, Parity, Unit, Units};
+use crate::stereo::{Configuration, Kind, Ligand, Parity, Unit, Units};
 use smallvec::SmallVec;
 
 /// Sine of 5 degrees.
@@ -31,6 +31,13 @@ pub(super) fn read(
     if crossed || ends.iter().any(|end| has_wavy(drawing, units, *end)) {
         return Ok(Configuration::Either);
     }
+    // an imine whose hydrogen stands in the label only: there is nothing to see
+    if ligands
+        .chunks(2)
+        .any(|pair| pair.iter().all(|l| l.atom().is_none()))
+    {
+        return Ok(Configuration::Open);
+    }
     let first = side(drawing, ends, ends[0], &ligands[..2]);
     let second = side(drawing, ends, ends[1], &ligands[2..]);
     match (first, second) {
@@ -42,12 +49,16 @@ pub(super) fn read(
 }
 
 /// Whether a wavy bond at an end speaks for the double bond: its narrow end is here, or at an atom that
-/// has no configuration of its own to leave unknown (on paper a wavy bond shows no narrow end).
+/// has no configuration of its own to leave unknown, or at the end of another double bond (on paper a wavy
+/// bond shows no narrow end, and one that two double bonds share leaves both unknown). A centre at its
+/// narrow end keeps it for itself, as files mean it.
 fn has_wavy(drawing: &Drawing, units: &Units, end: AtomIx) -> bool {
     drawing.molecule().neighbors(end).iter().any(|n| {
         let wavy = n.order == Order::Single && matches!(drawing.mark(n.bond), Mark::Wavy(_));
         wavy && (drawing.mark_from(end, n.bond) != Mark::Plain
-            || !units.iter().any(|(_, u)| u.atoms().contains(&n.atom)))
+            || !units
+                .iter()
+                .any(|(_, u)| u.kind != Kind::DoubleBond && u.atoms().contains(&n.atom)))
     })
 }
 

@@ -35,6 +35,28 @@ pub(super) enum Step {
 }
 
 impl Step {
+    /// All steps, by their codes.
+    pub(super) const ALL: [Step; 11] = [
+        Step::R1a,
+        Step::R1b,
+        Step::R2,
+        Step::R3,
+        Step::R4a,
+        Step::Reference(true),
+        Step::Reference(false),
+        Step::R4c,
+        Step::R5(true),
+        Step::R5(false),
+        Step::R6,
+    ];
+    /// How many there are.
+    pub(super) const COUNT: usize = Step::ALL.len();
+
+    /// Its place in [`Step::ALL`].
+    pub(super) fn index(self) -> usize {
+        self.code() as usize
+    }
+
     /// The step that orders inner branches before this one refines their ties. Rule 4b never orders
     /// inner branches, and Rule 6 does not use the order by Rule 5 (both after the public CIP
     /// Validation Suite).

@@ -5,5 +5,5 @@ use crate::cip::digraph::Node;
 use std::cmp::Ordering;
 
 pub(super) fn compare(a: &Node, b: &Node) -> Ordering {
-    a.mass.total_cmp(&b.mass)
+    a.mass.cmp(&b.mass)
 }

@@ -47,6 +47,9 @@ pub(super) fn integer(field: &[u8]) -> Option<i32> {
 
 /// A finite decimal number with blanks around it.
 pub(super) fn decimal(field: &[u8]) -> Option<f64> {
+    if let Some(value) = field.try_into().ok().and_then(ten_point_four) {
+        return Some(value);
+    }
     let text = trimmed(field);
     let (negative, digits) = match text {
         [b'-', rest @ ..] => (true, rest),
@@ -71,6 +74,34 @@ pub(super) fn decimal(field: &[u8]) -> Option<f64> {
     }
     let divisor = TENS.get(after_point.unwrap_or(0))?;
     let value = mantissa as f64 / divisor;
+    Some(if negative { -value } else { value })
+}
+
+/// A number as coordinates are written: five columns, the point, four decimals. Most of a file is these.
+fn ten_point_four(field: &[u8; 10]) -> Option<f64> {
+    let digit = |b: u8| Some(b.wrapping_sub(b'0')).filter(|d| *d < 10);
+    if field[5] != b'.' {
+        return None;
+    }
+    let mut mantissa = 0u32;
+    let mut negative = false;
+    let mut started = false;
+    for b in &field[..5] {
+        match b {
+            b' ' if !started => {}
+            b'-' if !started => (negative, started) = (true, true),
+            _ => {
+                started = true;
+                mantissa = 10 * mantissa + u32::from(digit(*b)?);
+            }
+        }
+    }
+    // a digit stands before the point
+    digit(field[4])?;
+    for b in &field[6..] {
+        mantissa = 10 * mantissa + u32::from(digit(*b)?);
+    }
+    let value = f64::from(mantissa) / 1e4;
     Some(if negative { -value } else { value })
 }
 
@@ -113,6 +144,17 @@ mod tests {
 
     #[test]
     fn decimal_numbers_are_those_of_the_standard_parser() {
+        for text in ["    0.0000", "   -0.7165", "-9999.9999", "99999.9999"] {
+            let value = decimal(text.as_bytes()).unwrap();
+            assert_eq!(
+                value.to_bits(),
+                text.trim().parse::<f64>().unwrap().to_bits()
+            );
+        }
+        for text in ["   1 .0000", "  - 1.0000", "   --.0000", "    -.0000"] {
+            let standard = text.trim().parse::<f64>().ok();
+            assert_eq!(decimal(text.as_bytes()), standard, "{text}");
+        }
         for text in [
             "0.0000",
             "-0.7165",

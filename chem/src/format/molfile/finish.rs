@@ -34,15 +34,42 @@ pub(super) struct Tables {
     pub(super) points: Vec<Point>,
     pub(super) depths: Vec<f64>,
     pub(super) bonds: Vec<BondRow>,
-    /// Line of the first atom; the others follow it.
-    pub(super) atom_line: usize,
+    /// Lines of the file at which the atoms stand.
+    pub(super) atom_lines: AtomLines,
+}
+
+/// Lines of the file at which atoms stand.
+#[derive(Clone, Debug)]
+pub(super) enum AtomLines {
+    /// One after the other from this line on.
+    From(usize),
+    /// Each at its own.
+    Each(Vec<usize>),
+}
+
+impl Default for AtomLines {
+    fn default() -> AtomLines {
+        AtomLines::From(0)
+    }
+}
+
+impl AtomLines {
+    /// The line of atom `index`, which counts from 0.
+    fn of(&self, index: usize) -> usize {
+        match self {
+            AtomLines::From(first) => first + index,
+            AtomLines::Each(lines) => lines.get(index).copied().unwrap_or(0),
+        }
+    }
 }
 
 impl Tables {
     /// The drawing, or why these tables make none.
     pub(super) fn finish(mut self, notices: &mut Vec<Notice>) -> Result<Drawing, ReadError> {
-        let (atom_line, has_depth) = (self.atom_line, self.depths.iter().any(|z| *z != 0.0));
-        let mut bonds = self.localized(notices)?;
+        let has_depth = self.depths.iter().any(|z| *z != 0.0);
+        let lines = std::mem::take(&mut self.atom_lines);
+        let atom_line = lines.of(0);
+        let mut bonds = self.localized(&lines, notices)?;
         let mut marks = Vec::with_capacity(bonds.len());
         for (row, bond) in self.bonds.iter().zip(&mut bonds) {
             marks.push(mark(row, bond.order, notices));
@@ -62,15 +89,19 @@ impl Tables {
                 "the atoms have depth (z): a model in space, not a flat drawing".to_owned(),
             ));
         }
-        places(&drawing, atom_line, has_depth, notices);
-        valences(&drawing, atom_line, notices);
-        placeholders(&drawing, atom_line, notices);
+        places(&drawing, &lines, &rows, notices);
+        valences(&drawing, &lines, notices);
+        placeholders(&drawing, &lines, notices);
         special_bonds(&drawing, &rows, notices);
         Ok(drawing)
     }
 
     /// Bonds with localized orders: aromatic ones turned into alternating ones.
-    fn localized(&self, notices: &mut Vec<Notice>) -> Result<Vec<Bond>, ReadError> {
+    fn localized(
+        &self,
+        lines: &AtomLines,
+        notices: &mut Vec<Notice>,
+    ) -> Result<Vec<Bond>, ReadError> {
         let order = |kind: u8| match kind {
             1 | 4 => Order::Single,
             2 => Order::Double,
@@ -90,7 +121,7 @@ impl Tables {
             .collect();
         if let Some(line) = aromatic.first().map(|i| self.bonds[*i].line) {
             need::localize(&self.atoms, &mut bonds, &aromatic)
-                .map_err(|(atom, reason)| ReadError::line(self.atom_line + atom, reason))?;
+                .map_err(|(atom, reason)| ReadError::line(lines.of(atom), reason))?;
             notices.push(Notice::new(
                 line,
                 "aromatic-bonds",
@@ -118,18 +149,19 @@ fn mark(row: &BondRow, order: Order, notices: &mut Vec<Notice>) -> Mark {
                     row.ends[0] + 1,
                     row.ends[1] + 1
                 ),
-            ));
+            )
+            .about(&row.ends.map(AtomIx::new)));
             Mark::Plain
         }
     }
 }
 
-fn places(drawing: &Drawing, line: usize, has_depth: bool, notices: &mut Vec<Notice>) {
-    let points = drawing.points();
+fn places(drawing: &Drawing, lines: &AtomLines, rows: &[BondRow], notices: &mut Vec<Notice>) {
+    let (points, has_depth) = (drawing.points(), drawing.depths().is_some());
     if points.len() > 1 && points.iter().all(|p| *p == Point::ORIGIN) {
         if !has_depth {
             notices.push(Notice::new(
-                line,
+                lines.of(0),
                 "no-coordinates",
                 "all atoms stand at 0, 0: nothing is drawn, and no wedge can be read".to_owned(),
             ));
@@ -151,17 +183,17 @@ fn places(drawing: &Drawing, line: usize, has_depth: bool, notices: &mut Vec<Not
         if let Some(b) = close {
             let (first, second) = (a.min(b), a.max(b));
             notices.push(Notice::new(
-                line + *second as usize,
+                lines.of(*second as usize),
                 "same-place",
                 format!("atoms {} and {} stand on one spot", first + 1, second + 1),
             ));
         }
     }
-    uneven(drawing, line, notices);
+    uneven(drawing, rows, notices);
 }
 
 /// Bonds far from the usual length: 0.4 to 2.5 times the median passes.
-fn uneven(drawing: &Drawing, line: usize, notices: &mut Vec<Notice>) {
+fn uneven(drawing: &Drawing, rows: &[BondRow], notices: &mut Vec<Notice>) {
     let (m, usual) = (drawing.molecule(), drawing.bond_length());
     let length = |b: BondIx| {
         let [a, c] = m.bond(b).ends;
@@ -170,7 +202,7 @@ fn uneven(drawing: &Drawing, line: usize, notices: &mut Vec<Notice>) {
     if let Some(b) = m.bonds().find(|b| !(0.4..=2.5).contains(&length(*b))) {
         let [a, c] = m.bond(b).ends;
         notices.push(Notice::new(
-            line + m.n_atoms() + b.index(),
+            rows.get(b.index()).map_or(0, |row| row.line),
             "uneven-lengths",
             format!(
                 "bond lengths are uneven: that of atoms {} and {} is {:.2} times the usual one",
@@ -182,11 +214,11 @@ fn uneven(drawing: &Drawing, line: usize, notices: &mut Vec<Notice>) {
     }
 }
 
-fn valences(drawing: &Drawing, line: usize, notices: &mut Vec<Notice>) {
+fn valences(drawing: &Drawing, lines: &AtomLines, notices: &mut Vec<Notice>) {
     let m = drawing.molecule();
     for a in m.atoms().filter(|a| !m.valence_is_usual(*a)) {
         notices.push(Notice::new(
-            line + a.index(),
+            lines.of(a.index()),
             "valence",
             format!(
                 "atom {} ({}) has an unusual valence: {}",
@@ -198,7 +230,7 @@ fn valences(drawing: &Drawing, line: usize, notices: &mut Vec<Notice>) {
     }
 }
 
-fn placeholders(drawing: &Drawing, line: usize, notices: &mut Vec<Notice>) {
+fn placeholders(drawing: &Drawing, lines: &AtomLines, notices: &mut Vec<Notice>) {
     let m = drawing.molecule();
     for a in m.atoms() {
         let atom = m.atom(a);
@@ -206,13 +238,13 @@ fn placeholders(drawing: &Drawing, line: usize, notices: &mut Vec<Notice>) {
         let (n, symbol) = (a.index() + 1, atom.element.symbol());
         if atom.element.number() == 0 {
             notices.push(Notice::new(
-                line + a.index(),
+                lines.of(a.index()),
                 "placeholder",
                 format!("atom {n} ({alias}) stands for something not stated; what depends on it cannot be decided"),
             ));
         } else if **alias != *symbol {
             notices.push(Notice::new(
-                line + a.index(),
+                lines.of(a.index()),
                 "alias",
                 format!("atom {n} is shown as '{alias}' but counts as {symbol}"),
             ));

@@ -5,16 +5,28 @@ mod finish;
 mod need;
 mod symbol;
 mod v2000;
+mod v3000;
+mod writer;
 
 use super::lines::Lines;
-use super::{Notice, ReadError, Reason, Record};
+use super::{Notice, ReadError, Reason, Record, StereoGroup, Version};
+use crate::drawing::Drawing;
 
-pub use v2000::write;
+pub use writer::write;
+
+/// What stands below the header.
+struct Body {
+    drawing: Drawing,
+    extra: Vec<String>,
+    chiral_flag: bool,
+    stereo_groups: Vec<StereoGroup>,
+    version: Version,
+}
 
 /// Reads a molfile. `first_line` is the number of its first line in the file, for messages.
 ///
 /// # Errors
-/// Where the text is no V2000 molfile or leaves open what is drawn, with line, columns and a remedy.
+/// Where the text is no molfile or leaves open what is drawn, with line, columns and a remedy.
 pub fn read(text: &str, first_line: usize) -> Result<Record, ReadError> {
     let text = text.strip_prefix('\u{feff}').unwrap_or(text);
     let mut lines = Lines::new(text, first_line);
@@ -23,10 +35,11 @@ pub fn read(text: &str, first_line: usize) -> Result<Record, ReadError> {
     let counts_number = lines.number();
     // `header` has seen this line
     let counts = lines.next().unwrap_or_default();
-    if version(counts) == Some("V3000") {
-        return Err(ReadError::line(counts_number, Reason::V3000));
-    }
-    let body = v2000::read(counts, counts_number, &mut lines, &mut notices)?;
+    let body = if version(counts) == Some("V3000") || v3000::begins(&lines) {
+        v3000::read(counts, counts_number, lines, &mut notices)?
+    } else {
+        v2000::read(counts, counts_number, &mut lines, &mut notices)?
+    };
     let [title, program_line, comment] = header.map(str::to_owned);
     Ok(Record {
         title,
@@ -35,6 +48,8 @@ pub fn read(text: &str, first_line: usize) -> Result<Record, ReadError> {
         drawing: body.drawing,
         fields: Vec::new(),
         extra: body.extra,
+        version: body.version,
+        stereo_groups: body.stereo_groups,
         chiral_flag: body.chiral_flag,
         notices,
     })

@@ -24,10 +24,9 @@ mod write;
 
 pub use error::{Fault, SmilesError};
 pub use file::{LineReader, recognize};
-pub use tail::{Group, GroupKind};
 pub use write::{Unwritable, Written, write};
 
-use super::Notice;
+use super::{GroupKind, Notice, StereoGroup};
 use crate::geom::Point;
 use crate::molecule::Molecule;
 use crate::perceive::Rings;
@@ -48,7 +47,7 @@ pub struct Smiles {
     /// Configuration of each unit.
     pub configurations: Vec<Configuration>,
     /// Groups of centres that the tail names; centres in none are as written.
-    pub groups: Vec<Group>,
+    pub groups: Vec<StereoGroup>,
     /// Where the tail puts the atoms (x right, y up).
     pub points: Option<Vec<Point>>,
     /// Text after the molecule and its tail.
@@ -185,7 +184,7 @@ impl Smiles {
         let number = numbers.max().unwrap_or(0).saturating_add(1);
         if !atoms.is_empty() {
             let kind = GroupKind::And(number);
-            self.groups.push(Group { kind, atoms });
+            self.groups.push(StereoGroup { kind, atoms });
         }
         self.notices.push(Notice::new(
             0,

@@ -5,34 +5,14 @@
 //! before. Atom numbers count from 0 in the order of the line. What is not read here is told.
 
 use super::error::{Fault, SmilesError};
-use crate::format::Notice;
+use crate::format::{GroupKind, Notice, StereoGroup};
 use crate::geom::Point;
 use crate::molecule::AtomIx;
-
-/// What holds for the centres of a group together.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
-pub enum GroupKind {
-    /// As written.
-    Absolute,
-    /// One of the two: as written or all of them the other way round; which is not known.
-    Or(u32),
-    /// Both, mixed: as written and all of them the other way round.
-    And(u32),
-}
-
-/// Centres whose configurations are stated together.
-#[derive(Clone, Debug, PartialEq, Eq)]
-pub struct Group {
-    /// What holds for them, with the number of the group.
-    pub kind: GroupKind,
-    /// The centres, ascending.
-    pub atoms: Vec<AtomIx>,
-}
 
 /// What a tail says.
 #[derive(Debug, Default)]
 pub(super) struct Tail {
-    pub(super) groups: Vec<Group>,
+    pub(super) groups: Vec<StereoGroup>,
     /// That the whole is a racemate.
     pub(super) racemic: bool,
     pub(super) points: Option<Vec<Point>>,
@@ -66,7 +46,7 @@ pub(super) fn read(
             let same = tail.groups.iter_mut().find(|g| g.kind == kind);
             match same {
                 Some(known) => known.atoms.extend(atoms),
-                None => tail.groups.push(Group { kind, atoms }),
+                None => tail.groups.push(StereoGroup { kind, atoms }),
             }
         } else if !field.is_empty() {
             ignored.push(field.to_owned());
@@ -214,9 +194,9 @@ mod tests {
             found,
             [
                 (GroupKind::Absolute, vec![0]),
-                (GroupKind::Or(1), vec![1, 2, 4]),
                 (GroupKind::And(1), vec![3]),
                 (GroupKind::And(2), vec![5]),
+                (GroupKind::Or(1), vec![1, 2, 4]),
             ]
         );
         assert!(notices.is_empty());

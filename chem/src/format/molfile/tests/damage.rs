@@ -97,7 +97,7 @@ fn wrong_counts_tell_both_numbers() {
         &reason,
     );
     assert_eq!(bad("a\nb\n\nno counts\n").reason, Reason::NoCountsLine);
-    refused(&changed("V2000", "V3000"), 4, None, &Reason::V3000);
+    refused(&changed("V2000", "V3000"), 4, None, &Reason::NotV3000);
 }
 
 #[test]

@@ -10,6 +10,9 @@ use crate::molecule::{AtomIx, BondIx, Order, Radical};
 mod aromatic;
 mod chance;
 mod damage;
+mod v3000;
+mod v3000_damage;
+mod v3000_round;
 mod writing;
 
 /// A molfile of atoms at given places, with bond lines and properties as given.

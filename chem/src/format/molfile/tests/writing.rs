@@ -2,7 +2,7 @@
 
 use super::*;
 use crate::drawing::{Drawing, Edit};
-use crate::format::WriteError;
+use crate::format::{GroupKind, WriteError};
 use crate::molecule::Atom;
 
 #[test]
@@ -34,24 +34,51 @@ fn the_header_names_program_and_date() {
     assert!(good(&text).chiral_flag);
 }
 
+fn carbon(at: Point) -> Edit {
+    Edit::AddAtom(Atom::new(Element::C), at)
+}
+
 #[test]
 fn what_does_not_fit_is_not_written() {
-    let atom = |at| Edit::AddAtom(Atom::new(Element::C), at);
-    let many: Vec<Edit> = (0..1000)
-        .map(|i| atom(Point::new(f64::from(i), 0.0)))
-        .collect();
-    let (drawing, _) = Drawing::empty().apply(&many).unwrap();
-    let error = write(&Record::new("", drawing), &WriteOptions::default()).unwrap_err();
-    assert_eq!(
-        error,
-        WriteError::NeedsV3000 {
-            atoms: 1000,
-            bonds: 0
-        }
-    );
     let (far, _) = Drawing::empty()
-        .apply(&[atom(Point::new(1e6, 0.0))])
+        .apply(&[carbon(Point::new(1e6, 0.0))])
         .unwrap();
-    let error = write(&Record::new("", far), &WriteOptions::default()).unwrap_err();
-    assert_eq!(error, WriteError::TooFar(1));
+    for version in [Version::V2000, Version::V3000] {
+        let mut record = Record::new("", far.clone());
+        record.version = version;
+        let error = write(&record, &WriteOptions::default()).unwrap_err();
+        assert_eq!(error, WriteError::TooFar(1));
+    }
+}
+
+#[test]
+fn the_version_is_the_one_that_has_room() {
+    let drawing = |n: u32| {
+        let many: Vec<Edit> = (0..n)
+            .map(|i| carbon(Point::new(f64::from(i), 0.0)))
+            .collect();
+        Drawing::empty().apply(&many).unwrap().0
+    };
+    let is_v3000 = |record: &Record| written(record).contains(" V3000\n");
+    let record = |n| Record::new("", drawing(n));
+    assert!(!is_v3000(&record(999)));
+    let large = record(1000);
+    assert!(is_v3000(&large));
+    let again = good(&written(&large));
+    assert_eq!(again.drawing.points(), large.drawing.points());
+    // a record stays in the version it came in
+    let mut small = record(2);
+    small.version = Version::V3000;
+    assert!(is_v3000(&small));
+    // no version has room for stereo groups beside lines of V2000
+    let mut both = record(2);
+    both.extra.push("M  STY  1   1 DAT".to_owned());
+    both.stereo_groups.push(StereoGroup {
+        kind: GroupKind::And(1),
+        atoms: vec![AtomIx::new(1)],
+    });
+    let error = write(&both, &WriteOptions::default()).unwrap_err();
+    assert_eq!(error, WriteError::ExtraLines);
+    both.extra.clear();
+    assert!(written(&both).contains("\nM  V30 MDLV30/STERAC1 ATOMS=(1 2)\n"));
 }

@@ -131,7 +131,7 @@ fn row(
             let reason = Reason::OutOfRange {
                 field: "the type of the bond",
                 value: i64::from(other),
-                allowed: "1 to 10",
+                allowed: "0 to 10",
             };
             return Err(ReadError::at(line, 6, 9, reason));
         }
@@ -174,7 +174,7 @@ fn row(
 }
 
 /// Refuses a second bond between the same two atoms.
-fn twice(tables: &Tables) -> Result<(), ReadError> {
+pub(in super::super) fn twice(tables: &Tables) -> Result<(), ReadError> {
     let mut pairs: Vec<(usize, usize, usize)> = tables
         .bonds
         .iter()

@@ -7,20 +7,15 @@ mod recount;
 mod writer;
 
 use super::super::lines::Lines;
-use super::super::{Notice, ReadError, Reason};
+use super::super::{Notice, ReadError, Reason, Version};
+use super::Body;
 use super::columns::{field, integer, words};
-use super::finish::Tables;
-use crate::drawing::Drawing;
+use super::finish::{AtomLines, Tables};
 
+pub(super) use bonds::twice;
+pub(super) use properties::isotope;
 pub(super) use recount::looks_like_atom;
-pub use writer::write;
-
-/// What stands below the header.
-pub(super) struct Body {
-    pub(super) drawing: Drawing,
-    pub(super) extra: Vec<String>,
-    pub(super) chiral_flag: bool,
-}
+pub(super) use writer::write;
 
 /// Numbers of the counts line.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -44,7 +39,7 @@ pub(super) fn read(
     let counts = counts(counts_line, number, notices)?;
     let after_counts = lines.clone();
     let mut tables = Tables {
-        atom_line: lines.number(),
+        atom_lines: AtomLines::From(lines.number()),
         ..Tables::default()
     };
     let outcome = tables_and_properties(&counts, &mut tables, lines, notices);
@@ -68,6 +63,8 @@ pub(super) fn read(
         drawing: tables.finish(notices)?,
         extra,
         chiral_flag: counts.chiral,
+        stereo_groups: Vec::new(),
+        version: Version::V2000,
     })
 }
 

@@ -86,6 +86,14 @@ fn property(
             let skipped = lines.by_ref().take(count as usize);
             found.extra.extend(skipped.map(str::to_owned));
         }
+        // kept as a property it would hide the whole table of a V3000 molfile whose head is damaged
+        "M  V30" => {
+            let reason = Reason::Misplaced {
+                found: "M  V30".to_owned(),
+                expected: "a property line of V2000 or M  END",
+            };
+            return Err(ReadError::at(number, 0, 6, reason));
+        }
         _ if line.trim().is_empty() => {}
         // an atom or a bond that the counts line does not know of
         _ if looks_like_bond(line) || looks_like_atom(line) => {
@@ -236,7 +244,8 @@ fn apply(
     Ok(extra)
 }
 
-fn isotope(
+/// Puts a mass number on an atom, with a notice if it is an unlikely one; `None` if it is none at all.
+pub(in super::super) fn isotope(
     index: usize,
     value: i32,
     line: usize,

@@ -1,80 +1,36 @@
 //! Molfiles written: version 2000, each wedge with its narrow end first.
 
-use super::super::super::{Record, WriteError, WriteOptions};
+use super::super::super::{Record, WriteError};
 use super::super::symbol;
+use super::super::writer::{one_line, put};
 use crate::drawing::{Drawing, End, Mark};
 use crate::element::Element;
 use crate::molecule::{Atom, AtomIx, Molecule, Order, Radical};
-use std::fmt::Write;
 
-/// Name of the program in the second header line: eight columns.
-const PROGRAM: &str = "Wedgewrt";
-
-/// The molfile of a record, to `M  END`, with line feeds. Order of atoms and bonds and coordinates are
+/// The table of a record, from the counts line to `M  END`. Order of atoms and bonds and coordinates are
 /// those of the drawing; the parity columns are 0; charges, radicals and isotopes stand in `M` lines.
+/// There are at most 999 atoms and bonds.
 ///
 /// # Errors
-/// If the drawing does not fit the columns of V2000.
-pub fn write(record: &Record, options: &WriteOptions) -> Result<String, WriteError> {
+/// If something stated of an atom does not fit the columns.
+pub(in super::super) fn write(record: &Record, out: &mut String) -> Result<(), WriteError> {
     let m = record.drawing.molecule();
-    let (n_atoms, n_bonds) = (m.n_atoms(), m.n_bonds());
-    if n_atoms > 999 || n_bonds > 999 {
-        return Err(WriteError::NeedsV3000 {
-            atoms: n_atoms,
-            bonds: n_bonds,
-        });
-    }
-    let mut out = String::with_capacity(200 + 70 * n_atoms + 22 * n_bonds);
-    header(&mut out, record, options);
-    let flag = u8::from(record.chiral_flag);
+    let (flag, n_atoms, n_bonds) = (u8::from(record.chiral_flag), m.n_atoms(), m.n_bonds());
     put(
-        &mut out,
+        out,
         format_args!("{n_atoms:3}{n_bonds:3}  0  0{flag:3}  0  0  0  0  0999 V2000\n"),
     );
     for a in m.atoms() {
-        atom_line(&mut out, &record.drawing, a)?;
+        atom_line(out, &record.drawing, a)?;
     }
-    bond_lines(&mut out, &record.drawing);
-    properties(&mut out, m)?;
+    bond_lines(out, &record.drawing);
+    properties(out, m)?;
     for line in &record.extra {
         out.push_str(&one_line(line));
         out.push('\n');
     }
     out.push_str("M  END\n");
-    Ok(out)
-}
-
-/// Writing to a string cannot fail.
-fn put(out: &mut String, text: std::fmt::Arguments<'_>) {
-    let _ = out.write_fmt(text);
-}
-
-/// A text without line ends, so that it stays one line.
-fn one_line(text: &str) -> String {
-    text.replace(['\n', '\r'], " ")
-}
-
-fn header(out: &mut String, record: &Record, options: &WriteOptions) {
-    let guarded = |text: &str| {
-        let text = one_line(text);
-        // a record must not end in its own header
-        if text.starts_with("$$$$") {
-            format!(" {text}")
-        } else {
-            text
-        }
-    };
-    let date = options.date.as_deref().unwrap_or_default();
-    let date: String = date.chars().filter(char::is_ascii_digit).take(10).collect();
-    let dimension = if record.drawing.depths().is_some() {
-        "3D"
-    } else {
-        "2D"
-    };
-    out.push_str(&guarded(&record.title));
-    put(out, format_args!("\n  {PROGRAM:8}{date:10}{dimension}\n"));
-    out.push_str(&guarded(&record.comment));
-    out.push('\n');
+    Ok(())
 }
 
 fn atom_line(out: &mut String, drawing: &Drawing, a: AtomIx) -> Result<(), WriteError> {

@@ -294,7 +294,7 @@ fn large_systems_end() {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(2000))]
+    #![proptest_config(ProptestConfig { cases: 2_000, failure_persistence: None, ..ProptestConfig::default() })]
 
     /// No text makes the reader fail in another way than by an error; what it reads can be written.
     #[test]

@@ -10,7 +10,7 @@ use chem::stereo::{Configuration, Kind, Ligand, Parity, Unit, Units, odd_permuta
 
 /// A molecule with the configurations of its units.
 #[derive(Clone, Debug)]
-pub struct Known {
+pub struct Isomer {
     /// Atoms and bonds.
     pub molecule: Molecule,
     /// Its rings.
@@ -21,9 +21,9 @@ pub struct Known {
     pub configurations: Vec<Configuration>,
 }
 
-impl From<Smiles> for Known {
-    fn from(line: Smiles) -> Known {
-        Known {
+impl From<Smiles> for Isomer {
+    fn from(line: Smiles) -> Isomer {
+        Isomer {
             molecule: line.molecule,
             rings: line.rings,
             units: line.units,
@@ -32,7 +32,7 @@ impl From<Smiles> for Known {
     }
 }
 
-impl Known {
+impl Isomer {
     /// What it carries.
     pub fn labels(&self) -> Labels {
         Labels::parse(&pipeline::labels_of(
@@ -45,7 +45,7 @@ impl Known {
 
     /// Its mirror image.
     #[must_use]
-    pub fn mirrored(&self) -> Known {
+    pub fn mirrored(&self) -> Isomer {
         let mut other = self.clone();
         for ((_, unit), configuration) in self.units.iter().zip(&mut other.configurations) {
             if let (Configuration::Defined(p), false) =
@@ -61,7 +61,7 @@ impl Known {
     ///
     /// # Panics
     /// If a unit is lost on the way.
-    pub fn reordered(&self, dice: &mut Dice) -> (Known, Vec<usize>) {
+    pub fn reordered(&self, dice: &mut Dice) -> (Isomer, Vec<usize>) {
         let m = &self.molecule;
         let old_atoms = dice.order(m.n_atoms());
         let mut new = vec![AtomIx::new(0); m.n_atoms()];
@@ -93,7 +93,7 @@ impl Known {
                 other => *other,
             };
         }
-        let known = Known {
+        let known = Isomer {
             molecule,
             rings,
             units,
@@ -106,7 +106,7 @@ impl Known {
     ///
     /// # Panics
     /// If it cannot be written or read.
-    pub fn rewritten(&self) -> (Known, Vec<usize>, String) {
+    pub fn rewritten(&self) -> (Isomer, Vec<usize>, String) {
         let written = smiles::write(&self.molecule, &self.units, &self.configurations)
             .unwrap_or_else(|e| panic!("{e}"));
         assert!(written.unsaid.is_empty(), "not all is in {}", written.text);

@@ -164,12 +164,11 @@ def compare_labels(name, lines, folder):
 
 
 def isomer(line):
-    """RDKit's canonical line; None if it refuses it."""
+    """RDKit's canonical line, map numbers kept: they tell branches apart that differ in configuration only,
+    which its canonical order does not always do; None if it refuses the line."""
     mol = rdkit_mol(line)
     if mol is None:
         return None
-    for atom in mol.GetAtoms():
-        atom.SetAtomMapNum(0)
     # once more, so that what its writer drops is dropped on both sides
     again = rdkit_mol(Chem.MolToSmiles(mol))
     return again and Chem.MolToSmiles(again)

@@ -35,12 +35,13 @@ impl From<Smiles> for Isomer {
 impl Isomer {
     /// What it carries.
     pub fn labels(&self) -> Labels {
-        Labels::parse(&pipeline::labels_of(
+        let carried = pipeline::labels_of(
             &self.molecule,
             &self.rings,
             &self.units,
             &self.configurations,
-        ))
+        );
+        Labels::parse(&carried.labels)
     }
 
     /// Its mirror image.

@@ -20,6 +20,8 @@ struct Answer {
     notices: Vec<Notice>,
     /// What the labels alone do not show: contradictions, wedges that say nothing.
     faults: Vec<String>,
+    /// Letters that rest on open places.
+    notes: Vec<String>,
 }
 
 pub(super) fn run(args: &Labels) -> Result<Status, Failure> {
@@ -66,11 +68,12 @@ fn one_file(path: &Path, many: bool, args: &Labels, out: &mut Target) -> Result<
                 error: Some(FAULT.to_owned()),
                 notices: Vec::new(),
                 faults: Vec::new(),
+                notes: Vec::new(),
             });
             for notice in &answer.notices {
                 say(&format!("{name}: record {number}, {notice}"));
             }
-            for fault in &answer.faults {
+            for fault in answer.faults.iter().chain(&answer.notes) {
                 say(&format!("{name}: record {number}, {fault}"));
             }
             faulty += usize::from(!answer.faults.is_empty());
@@ -100,30 +103,26 @@ fn one_file(path: &Path, many: bool, args: &Labels, out: &mut Target) -> Result<
 struct Carried<T> {
     labels: T,
     faults: Vec<String>,
+    notes: Vec<String>,
     notices: Vec<Notice>,
 }
 
 /// The labels of a record alone, which is quicker than a report.
 fn labels_of(piece: &Piece) -> Result<Carried<String>, ReadError> {
-    if piece.is_notation {
+    let (carried, notices) = if piece.is_notation {
         let line = piece.read_notation()?;
-        return Ok(Carried {
-            labels: pipeline::labels_of(
-                &line.molecule,
-                &line.rings,
-                &line.units,
-                &line.configurations,
-            ),
-            faults: Vec::new(),
-            notices: line.notices,
-        });
-    }
-    let record = piece.read()?;
-    let carried = pipeline::carried(&record.drawing);
+        let (units, configurations) = (&line.units, &line.configurations);
+        let carried = pipeline::labels_of(&line.molecule, &line.rings, units, configurations);
+        (carried, line.notices)
+    } else {
+        let record = piece.read()?;
+        (pipeline::carried(&record.drawing), record.notices)
+    };
     Ok(Carried {
         labels: carried.labels,
         faults: carried.faults,
-        notices: record.notices,
+        notes: carried.notes,
+        notices,
     })
 }
 
@@ -146,6 +145,7 @@ fn report_of(piece: &Piece) -> Result<Carried<Vec<UnitJson>>, ReadError> {
             .map(|(place, why)| UnitJson::new(place, why))
             .collect(),
         faults: report.faults(),
+        notes: Vec::new(),
         notices,
     })
 }
@@ -161,6 +161,7 @@ fn in_table(piece: &Piece) -> Answer {
             )),
             error: None,
             faults: carried.faults,
+            notes: carried.notes,
             notices: carried.notices,
         },
         Err(error) => Answer {
@@ -168,6 +169,7 @@ fn in_table(piece: &Piece) -> Answer {
             error: Some(error.to_string()),
             notices: Vec::new(),
             faults: Vec::new(),
+            notes: Vec::new(),
         },
     }
 }
@@ -189,6 +191,7 @@ fn in_json(piece: &Piece, file: Option<&str>) -> Answer {
         error: error.map(|e| e.to_string()),
         notices,
         faults,
+        notes: Vec::new(),
     }
 }
 
@@ -239,6 +242,8 @@ struct UnitJson {
     kind: &'static str,
     atoms: Vec<usize>,
     carries: Option<String>,
+    #[serde(skip_serializing_if = "std::ops::Not::not")]
+    provisional: bool,
     sense: &'static str,
     verdict: &'static str,
     rule: Option<&'static str>,
@@ -306,6 +311,7 @@ impl UnitJson {
             kind: place.kind.name(),
             atoms: place.atoms.iter().map(|a| a.index() + 1).collect(),
             carries: place.carries.map(|d| d.to_string()),
+            provisional: place.is_provisional,
             sense: place.sense.name(),
             verdict: place.verdict.name(),
             rule: place.rule.map(chem::cip::Rule::name),

@@ -2,7 +2,7 @@
 
 use crate::element::Element;
 use crate::molecule::{AtomIx, Molecule};
-use crate::perceive::{Ratio, Rings, delocalised};
+use crate::perceive::{Ratio, Rings, delocalised, drawn_without_charges};
 use std::cmp::Ordering;
 
 /// Place of a value among all that occur in the molecule: order and equality are those of the values.
@@ -85,7 +85,10 @@ impl Context {
                     duplicates: if neglected || neglects_pi(molecule, n.atom) {
                         0
                     } else {
-                        n.order.pairs().saturating_sub(1)
+                        let dative = [a, n.atom]
+                            .iter()
+                            .any(|end| drawn_without_charges(molecule, *end) == Some(n.bond));
+                        n.order.pairs().saturating_sub(1 + u8::from(dative))
                     },
                     in_ring: rings.has_bond(n.bond),
                     is_vague: n.order.is_vague(),

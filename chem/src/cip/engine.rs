@@ -354,29 +354,46 @@ impl<'a> Engine<'a> {
         Ok(None)
     }
 
-    /// Rule 1a on the sets beyond two nodes: all atomic numbers from high to low; the longer set wins.
+    /// Rule 1a on the sets beyond two nodes: all atomic numbers from high to low; the longer set wins. A
+    /// placeholder in them matters only if some atom in its place would change the outcome.
     fn compare_sets(&mut self, a: Branch, b: Branch) -> Result<Ordering, Stop> {
-        let sets = [self.numbers(a)?, self.numbers(b)?];
-        Ok(sets[0].as_slice().cmp(sets[1].as_slice()))
+        let (low_a, unknown_a) = self.numbers(a, Code::MIN)?;
+        let (low_b, unknown_b) = self.numbers(b, Code::MIN)?;
+        if !unknown_a && !unknown_b {
+            return Ok(low_a.cmp(&low_b));
+        }
+        let (high_a, _) = self.numbers(a, Code::MAX)?;
+        let (high_b, _) = self.numbers(b, Code::MAX)?;
+        if low_a > high_b {
+            Ok(Ordering::Greater)
+        } else if high_a < low_b {
+            Ok(Ordering::Less)
+        } else {
+            Err(Stop::Placeholder)
+        }
     }
 
-    /// Atomic numbers beyond a branch, from high to low.
-    fn numbers(&mut self, branch: Branch) -> Result<SmallVec<[Code; 6]>, Stop> {
+    /// Atomic numbers beyond a branch, from high to low, with one in the place of those not known; and
+    /// whether there are such.
+    fn numbers(
+        &mut self,
+        branch: Branch,
+        unknown: Code,
+    ) -> Result<(SmallVec<[Code; 6]>, bool), Stop> {
         let set = self.tree.away_from(branch.node, branch.from)?;
         self.spend(set.len() as u64)?;
         let mut numbers = SmallVec::new();
+        let mut has_unknown = false;
         for ix in &set {
             let node = self.tree.node(*ix);
-            if node.wildcard {
-                return Err(Stop::Placeholder);
-            }
-            numbers.push(node.number);
+            has_unknown |= node.wildcard;
+            numbers.push(if node.wildcard { unknown } else { node.number });
         }
         // children stand in this order already; a parent among them comes last
-        if self.tree.node(branch.node).parent != branch.from {
+        if has_unknown || self.tree.node(branch.node).parent != branch.from {
             numbers.sort_unstable_by(|x: &Code, y| y.cmp(x));
         }
-        Ok(numbers)
+        Ok((numbers, has_unknown))
     }
 
     fn compare_nodes(&mut self, a: NodeIx, b: NodeIx, step: Step) -> Result<Ordering, Stop> {

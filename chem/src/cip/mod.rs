@@ -20,6 +20,7 @@ mod tests;
 mod unit;
 mod why;
 
+pub use candidates::Outlook;
 pub use why::{Compared, Tie};
 
 use crate::molecule::Molecule;
@@ -157,6 +158,9 @@ pub struct UnitLabel {
     pub descriptor: Result<Descriptor, Missing>,
     /// The ligands in order, where they could be ranked.
     pub ranking: Option<Ranking>,
+    /// Whether the descriptor rests on units that are open: it would be another one, or none, under some
+    /// configuration of theirs. Only [`Ranker::label_all`] looks.
+    pub is_provisional: bool,
 }
 
 /// Ranks and labels the units of one molecule.
@@ -247,13 +251,16 @@ impl<'a> Ranker<'a> {
     /// [`Missing::Undefined`] if it could carry a descriptor, else [`Missing::Alike`].
     pub fn label_all(&self, configurations: &[Configuration]) -> Vec<UnitLabel> {
         let defined = self.label_defined(configurations);
-        let could = self.could_carry(configurations);
+        let outlook = self.outlook(configurations, &defined);
         defined
             .into_iter()
-            .zip(could)
             .enumerate()
-            .map(|(i, (label, could))| {
-                label.unwrap_or_else(|| self.undefined(UnitIx::new(i), could))
+            .map(|(i, label)| match label {
+                Some(label) => UnitLabel {
+                    is_provisional: outlook.is_provisional[i],
+                    ..label
+                },
+                None => self.undefined(UnitIx::new(i), outlook.could_carry[i]),
             })
             .collect()
     }
@@ -335,6 +342,7 @@ impl<'a> Ranker<'a> {
         UnitLabel {
             descriptor: Err(missing),
             ranking,
+            is_provisional: false,
         }
     }
 
@@ -362,14 +370,17 @@ impl<'a> Ranker<'a> {
             Ok(Some((ranking, varies))) => UnitLabel {
                 descriptor: Ok(unit::letter(kind, parity.flipped_if(ranking.odd), varies)),
                 ranking: Some(ranking),
+                is_provisional: false,
             },
             Ok(None) => UnitLabel {
                 descriptor: Err(Missing::Alike),
                 ranking: None,
+                is_provisional: false,
             },
             Err(stop) => UnitLabel {
                 descriptor: Err(Missing::Stopped(stop)),
                 ranking: None,
+                is_provisional: false,
             },
         }
     }

@@ -4,7 +4,7 @@
 //! mean atomic number over the places that the double bond could take (IUPAC 2013 recommendations,
 //! P-92.1.4.3, as digested from open implementations; equal weight for each neighbour).
 
-use super::Rings;
+use super::{Rings, drawn_without_charges};
 use crate::element::Element;
 use crate::molecule::{AtomIx, Molecule, Order};
 
@@ -90,8 +90,14 @@ pub fn delocalised(molecule: &Molecule, rings: &Rings) -> Vec<Option<Delocalised
 fn role(molecule: &Molecule, rings: &Rings, atom: AtomIx) -> Role {
     let (mut single, mut double) = (molecule.hydrogens(atom), 0);
     let mut in_ring = false;
+    let dative = drawn_without_charges(molecule, atom);
+    let charge = match dative {
+        Some(_) => 1,
+        None => molecule.atom(atom).charge,
+    };
     for n in molecule.neighbors(atom) {
         match n.order {
+            Order::Double if Some(n.bond) == dative => single += 1,
             Order::Single => single += 1,
             Order::Double => double += 1,
             Order::Triple | Order::Special(_) => return Role::None,
@@ -101,12 +107,7 @@ fn role(molecule: &Molecule, rings: &Rings, atom: AtomIx) -> Role {
     if !in_ring {
         return Role::None;
     }
-    match (
-        molecule.element(atom),
-        molecule.atom(atom).charge,
-        double,
-        single,
-    ) {
+    match (molecule.element(atom), charge, double, single) {
         (Element::C | Element::SI | Element::GE, 0, 1, 2) => Role::Double,
         (Element::C | Element::SI | Element::GE, -1, 0, 3) => Role::Anion,
         (Element::N | Element::P | Element::AS, 0, 1, 1) => Role::Double,
@@ -142,8 +143,10 @@ fn drop_outsiders(molecule: &Molecule, rings: &Rings, roles: &mut [Role]) {
         if roles[atom.index()] == Role::None {
             continue;
         }
+        let dative = drawn_without_charges(molecule, atom);
         let leads_out = molecule.neighbors(atom).iter().any(|n| {
             n.order == Order::Double
+                && Some(n.bond) != dative
                 && (roles[n.atom.index()] != Role::Double || !rings.has_bond(n.bond))
         });
         if leads_out || members(molecule, rings, roles, atom).count() < 2 {

@@ -137,29 +137,10 @@ fn refusal_of_search(units: &Units, goals: &[Goal], error: &SearchError) -> Refu
                 names(list)
             ),
         ),
-        SearchError::Stopped(ix, Stop::Nodes(n)) => (
+        SearchError::Stopped(ix, stop) => (
             "not-decided",
             atoms(&[*ix]),
-            format!(
-                "{} is not decided: its ranking needs more than {n} nodes",
-                name(units.get(*ix))
-            ),
-        ),
-        SearchError::Stopped(ix, Stop::Placeholder) => (
-            "not-decided",
-            atoms(&[*ix]),
-            format!(
-                "{} is not decided: it depends on a placeholder or on a bond whose order is not stated; draw the group itself",
-                name(units.get(*ix))
-            ),
-        ),
-        SearchError::Stopped(ix, Stop::Combinations) => (
-            "not-decided",
-            atoms(&[*ix]),
-            format!(
-                "{} is not decided: too many combinations of open places would have to be tried",
-                name(units.get(*ix))
-            ),
+            stopped(&name(units.get(*ix)), *stop),
         ),
         SearchError::TooMany(list) => (
             "not-decided",
@@ -336,4 +317,19 @@ fn read_back(
         edits,
         report,
     })
+}
+
+/// That the ranking of a place stopped, and what can be done.
+fn stopped(name: &str, stop: Stop) -> String {
+    match stop {
+        Stop::Nodes(n) => {
+            format!("{name} is not decided: its ranking needs more than {n} nodes")
+        }
+        Stop::Placeholder => format!(
+            "{name} is not decided: it depends on a placeholder or on a bond whose order is not stated; draw the group itself"
+        ),
+        Stop::Combinations => format!(
+            "{name} is not decided: too many combinations of open places would have to be tried"
+        ),
+    }
 }

@@ -80,6 +80,8 @@ pub struct Place {
     pub must: Option<Descriptor>,
     /// What it carries.
     pub carries: Option<Descriptor>,
+    /// Whether the letter rests on places that are open, and may change once they are drawn.
+    pub is_provisional: bool,
     /// What is drawn.
     pub sense: Sense,
     /// How the two compare.
@@ -153,16 +155,17 @@ impl Report {
             .places
             .iter()
             .filter(|p| p.sense == Sense::Contradiction)
-            .map(|p| {
-                let atoms: Vec<String> = p
-                    .atoms
-                    .iter()
-                    .map(|a| (a.index() + 1).to_string())
-                    .collect();
-                format!("atom {}: {}", atoms.join(" and "), p.note)
-            });
+            .map(|p| report::about(&p.atoms, &p.note));
         let idle = self.idle.iter().map(|i| i.text.clone());
         contradictions.chain(idle).collect()
+    }
+
+    /// What to know of letters that are carried: those that rest on open places, a sentence each.
+    pub fn notes(&self) -> Vec<String> {
+        let provisional = self.places.iter().filter(|p| p.is_provisional);
+        provisional
+            .map(|p| report::about(&p.atoms, &p.note))
+            .collect()
     }
 }
 

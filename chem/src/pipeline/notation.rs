@@ -1,7 +1,7 @@
 //! What a line of notation carries: as of a drawing, save that there are no marks to look at.
 
-use super::report::{explained, spell};
-use super::{Place, Report, Sense, Verdict};
+use super::report::{PROVISIONAL, about, explained, spell};
+use super::{Carried, Place, Report, Sense, Verdict};
 use crate::cip::{Limits, Missing, Ranker, Tie, UnitLabel};
 use crate::element::Element;
 use crate::format::smiles::Smiles;
@@ -9,27 +9,53 @@ use crate::molecule::Molecule;
 use crate::perceive::Rings;
 use crate::stereo::{Configuration, Focus, Kind, Ligand, Unit, Units};
 
-/// The labels of a molecule whose units have these configurations: `3R 7E 8E`. Units that are open are not
-/// ranked. `rings` and `units` are those of the molecule.
+/// The labels of a molecule whose units have these configurations, and which of them are provisional.
+/// Units that are open are not ranked. `rings` and `units` are those of the molecule.
 pub fn labels_of(
     molecule: &Molecule,
     rings: &Rings,
     units: &Units,
     configurations: &[Configuration],
-) -> String {
+) -> Carried {
     let defined = |c: &Configuration| matches!(c, Configuration::Defined(_));
     if !configurations.iter().any(defined) {
-        return String::new();
+        return Carried::default();
     }
     let ranker = Ranker::new(molecule, rings, units, Limits::default());
     let labels = ranker.label_defined(configurations);
+    let outlook = may_be_provisional(configurations, &labels)
+        .then(|| ranker.outlook(configurations, &labels));
+    let notes = outlook
+        .map(|outlook| {
+            let concerned = units
+                .iter()
+                .filter(|(ix, _)| outlook.is_provisional[ix.index()]);
+            concerned
+                .map(|(_, unit)| about(&unit.atoms(), PROVISIONAL))
+                .collect()
+        })
+        .unwrap_or_default();
     let list = units
         .iter()
         .zip(labels)
         .filter_map(|((_, unit), label)| Some((unit, label?.descriptor.ok()?)))
         .flat_map(|(unit, d)| unit.atoms().into_iter().map(move |a| (a, d)))
         .collect();
-    spell(list)
+    Carried {
+        labels: spell(list),
+        faults: Vec::new(),
+        notes,
+    }
+}
+
+/// Whether a letter rests on other units while some unit is open.
+fn may_be_provisional(configurations: &[Configuration], labels: &[Option<UnitLabel>]) -> bool {
+    let rests = |label: &UnitLabel| {
+        let rule = label.ranking.as_ref().map(|r| r.rule);
+        label.descriptor.is_ok() && rule.is_some_and(|r| !r.is_constitutional())
+    };
+    let is_open = |c: &Configuration| !matches!(c, Configuration::Defined(_));
+    labels.iter().flatten().any(rests) && configurations.iter().any(is_open)
 }
 
 /// What a line carries, place by place; nothing is asked of it.
@@ -98,6 +124,7 @@ fn place(unit: &Unit, label: &UnitLabel, configuration: Configuration) -> Place 
         Configuration::Either => (Sense::Either, Verdict::Open),
     };
     let note = match label.descriptor {
+        Ok(_) if label.is_provisional => PROVISIONAL.to_owned(),
         Ok(_) => String::new(),
         Err(Missing::Undefined) if label.ranking.is_none() => {
             "no configuration is written; whether it can carry a descriptor depends on other places"
@@ -112,6 +139,7 @@ fn place(unit: &Unit, label: &UnitLabel, configuration: Configuration) -> Place 
         atoms: unit.atoms().to_vec(),
         must: None,
         carries: label.descriptor.ok(),
+        is_provisional: label.is_provisional,
         sense,
         verdict,
         rule: ranking.map(|r| r.rule),
@@ -135,7 +163,7 @@ mod tests {
             &line.units,
             &line.configurations,
         );
-        assert_eq!(labels, "2R 4S");
+        assert_eq!(labels.labels, "2R 4S");
         let report = report_of(&line);
         assert_eq!(report.labels_line(), "2R 4S");
         assert!(report.faults().is_empty());
@@ -152,6 +180,7 @@ mod tests {
             &line.units,
             &line.configurations,
         )
+        .labels
     }
 
     // OpenSMILES, "Tetrahedral centers": each column one configuration in several orders of writing

@@ -10,6 +10,9 @@ use crate::solve::require::Requirement;
 use crate::stereo::{Configuration, Descriptor, Focus, Kind, Ligand, Unit, UnitIx, Units};
 use crate::wedge::{self, Reading};
 
+/// What is said of a letter that rests on open places.
+pub(super) const PROVISIONAL: &str = "provisional: the letter rests on places that are open, and may be another or none once they are drawn";
+
 /// What a drawing carries, and how that stands to a requirement (an empty one asks nothing).
 pub fn report(drawing: &Drawing, requirement: &Requirement) -> Report {
     let (rings, units) = perceived(drawing);
@@ -167,6 +170,8 @@ pub struct Carried {
     pub labels: String,
     /// Contradictions and wedges that say nothing, as [`Report::faults`] gives them.
     pub faults: Vec<String>,
+    /// Letters that are provisional, as [`Report::notes`] gives them.
+    pub notes: Vec<String>,
 }
 
 /// The labels of a drawing alone, and its faults: quicker than a [`report`], since units that the drawing
@@ -187,12 +192,16 @@ pub fn carried(drawing: &Drawing) -> Carried {
         return Carried {
             labels: report.labels_line(),
             faults: report.faults(),
+            notes: report.notes(),
         };
     }
-    Carried {
-        labels: labels_of(drawing.molecule(), &rings, &units, reading.configurations()),
-        faults: Vec::new(),
-    }
+    labels_of(drawing.molecule(), &rings, &units, reading.configurations())
+}
+
+/// A sentence about a unit: `atom 3: ...`.
+pub(super) fn about(atoms: &[AtomIx], text: &str) -> String {
+    let numbers: Vec<String> = atoms.iter().map(|a| (a.index() + 1).to_string()).collect();
+    format!("atom {}: {text}", numbers.join(" and "))
 }
 
 /// Whether some mark may have to be spoken of: a unit that cannot be read, or a wedge that does not start
@@ -322,6 +331,7 @@ fn place(
                 .to_owned()
         }
         (None, Err(missing)) => missing.to_string(),
+        (None, Ok(_)) if label.is_provisional => PROVISIONAL.to_owned(),
         (None, Ok(_)) => String::new(),
     };
     Place {
@@ -329,6 +339,7 @@ fn place(
         atoms: unit.atoms().to_vec(),
         must,
         carries,
+        is_provisional: label.is_provisional,
         sense,
         verdict,
         rule: label.ranking.as_ref().map(|r| r.rule),

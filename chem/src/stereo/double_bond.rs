@@ -6,7 +6,7 @@ use super::cumulated::Chain;
 use super::{Kind, Ligand, Unit};
 use crate::element::Element;
 use crate::molecule::{AtomIx, Molecule, Order};
-use crate::perceive::Rings;
+use crate::perceive::{Rings, drawn_without_charges};
 use smallvec::SmallVec;
 
 /// The largest ring whose double bonds have one geometry only (InChI technical manual, appendix 5).
@@ -112,9 +112,13 @@ pub(super) fn chain_ligands(molecule: &Molecule, chain: &Chain) -> Option<[Ligan
 
 /// The two ligands of one end in reference order; at least the first is a drawn atom.
 fn end_ligands(molecule: &Molecule, end: AtomIx, partner: AtomIx) -> Option<[Ligand; 2]> {
-    let mut drawn: Vec<AtomIx> = Vec::with_capacity(2);
+    let mut drawn: SmallVec<[AtomIx; 2]> = SmallVec::new();
+    let dative = drawn_without_charges(molecule, end);
     for n in molecule.neighbors(end).iter().filter(|n| n.atom != partner) {
-        if n.order != Order::Single {
+        if n.order.is_hydrogen_bond() {
+            continue;
+        }
+        if n.order != Order::Single && Some(n.bond) != dative {
             return None;
         }
         drawn.push(n.atom);

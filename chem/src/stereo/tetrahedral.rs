@@ -110,7 +110,8 @@ fn lone_pair_holds(molecule: &Molecule, rings: &Rings, atom: AtomIx) -> bool {
 }
 
 /// Nitrogen in a three-membered ring, or at a bridgehead: all three bonds in rings, and two of the
-/// smallest rings through its neighbour pairs share three atoms or more (plain fusion shares two).
+/// smallest rings through its neighbour pairs share three atoms or more (plain fusion shares two, and the
+/// ring round both is left out, being larger than either).
 fn nitrogen_cannot_invert(molecule: &Molecule, rings: &Rings, atom: AtomIx) -> bool {
     let neighbors = molecule.neighbors(atom);
     if !neighbors.iter().all(|n| rings.has_bond(n.bond)) {
@@ -131,6 +132,10 @@ fn nitrogen_cannot_invert(molecule: &Molecule, rings: &Rings, atom: AtomIx) -> b
             rings.through_pair(molecule, atom, neighbors[*i].atom, neighbors[*j].atom)
         })
         .collect();
+    let mut sizes: SmallVec<[usize; 3]> = cycles.iter().map(Vec::len).collect();
+    sizes.sort_unstable();
+    let largest = sizes.get(1).copied().unwrap_or(0);
+    let cycles: Vec<&Vec<AtomIx>> = cycles.iter().filter(|c| c.len() <= largest).collect();
     // the nitrogen itself is shared and left out of each list
     let shared = |a: &[AtomIx], b: &[AtomIx]| a.iter().filter(|x| b.contains(x)).count() + 1;
     cycles

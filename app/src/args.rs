@@ -42,7 +42,7 @@ pub enum Verb {
 /// Arguments of `labels`.
 #[derive(Debug, Group)]
 pub struct Labels {
-    /// Molfiles or SD files; - is standard input
+    /// Molfiles, SD files or files of line notation (SMILES and a name a line); - is standard input
     #[arg(required = true, value_name = "FILE")]
     pub files: Vec<PathBuf>,
     /// Write one JSON object a line, with every stereogenic place

@@ -5,9 +5,10 @@ mod piece;
 pub use piece::{Piece, PieceText};
 
 use chem::format::sdf::{Chunk, Reader};
-use chem::format::{ReadError, WriteError, WriteOptions, text};
+use chem::format::smiles::{self, LineReader};
+use chem::format::{ReadError, Reason, WriteError, WriteOptions, text};
 use std::fs::{self, File};
-use std::io::{self, BufWriter, Read, Write};
+use std::io::{self, BufReader, BufWriter, Read, Write};
 use std::path::{Path, PathBuf};
 use tempfile::NamedTempFile;
 
@@ -122,7 +123,15 @@ fn must_be_file(path: &Path) -> Result<(), FileError> {
 pub struct Source {
     /// Its name in messages.
     pub name: String,
-    reader: Reader<Box<dyn Read>>,
+    cutter: Cutter,
+}
+
+/// What cuts a source into records.
+enum Cutter {
+    /// Molfiles.
+    Records(Reader<Box<dyn Read>>),
+    /// Lines of notation.
+    Lines(LineReader<BufReader<Box<dyn Read>>>),
 }
 
 impl std::fmt::Debug for Source {
@@ -140,6 +149,18 @@ impl Source {
     /// # Errors
     /// If it cannot be read or is neither.
     pub fn open(path: &Path) -> Result<Source, FileError> {
+        Source::of(path, |_| false)
+    }
+
+    /// The same; also a file of lines of notation (`C[C@H](N)C#N` and a name).
+    ///
+    /// # Errors
+    /// If it cannot be read or is none of these.
+    pub fn open_also_notation(path: &Path) -> Result<Source, FileError> {
+        Source::of(path, smiles::recognize)
+    }
+
+    fn of(path: &Path, is_notation: impl Fn(&[u8]) -> bool) -> Result<Source, FileError> {
         let name = name_of(path, "standard input");
         let mut input: Box<dyn Read> = if is_standard(path) {
             Box::new(io::stdin())
@@ -156,14 +177,18 @@ impl Source {
         if let Err(error) = read {
             return Err(FileError::Read { name, error });
         }
-        if let Err(error) = text::recognize(&beginning) {
-            return Err(FileError::Content { name, error });
-        }
+        let is_lines = match text::recognize(&beginning) {
+            Ok(()) => false,
+            Err(error) if error.reason == Reason::NotMolfile && is_notation(&beginning) => true,
+            Err(error) => return Err(FileError::Content { name, error }),
+        };
         let whole: Box<dyn Read> = Box::new(io::Cursor::new(beginning).chain(input));
-        Ok(Source {
-            name,
-            reader: Reader::new(whole),
-        })
+        let cutter = if is_lines {
+            Cutter::Lines(LineReader::new(BufReader::new(whole)))
+        } else {
+            Cutter::Records(Reader::new(whole))
+        };
+        Ok(Source { name, cutter })
     }
 
     /// The next record, as bytes.
@@ -172,7 +197,11 @@ impl Source {
     /// If the file cannot be read on.
     pub fn next_chunk(&mut self) -> Result<Option<Chunk<'_>>, FileError> {
         let name = &self.name;
-        self.reader.next_chunk().map_err(|error| FileError::Read {
+        let chunk = match &mut self.cutter {
+            Cutter::Records(reader) => reader.next_chunk(),
+            Cutter::Lines(reader) => reader.next_chunk(),
+        };
+        chunk.map_err(|error| FileError::Read {
             name: name.clone(),
             error,
         })
@@ -183,7 +212,12 @@ impl Source {
     /// # Errors
     /// If the file cannot be read on.
     pub fn next_piece(&mut self) -> Result<Option<Piece>, FileError> {
-        Ok(self.next_chunk()?.map(Piece::from))
+        let is_notation = matches!(self.cutter, Cutter::Lines(_));
+        let piece = self.next_chunk()?.map(Piece::from);
+        Ok(piece.map(|piece| Piece {
+            is_notation,
+            ..piece
+        }))
     }
 }
 

@@ -10,6 +10,7 @@ pub mod change;
 pub mod hold;
 pub mod kekule;
 pub mod labels;
+pub mod lines;
 pub mod source;
 
 use chem::drawing::Drawing;

@@ -44,7 +44,7 @@ pub(super) fn run(args: &Labels) -> Result<Status, Failure> {
 }
 
 fn one_file(path: &Path, many: bool, args: &Labels, out: &mut Target) -> Result<Status, Failure> {
-    let mut source = Source::open(path)?;
+    let mut source = Source::open_also_notation(path)?;
     let name = source.name.clone();
     if many && !args.json {
         out.write(format!("# {name}\n").as_bytes())?;
@@ -99,45 +99,84 @@ fn one_file(path: &Path, many: bool, args: &Labels, out: &mut Target) -> Result<
     })
 }
 
-fn in_table(piece: &Piece) -> Answer {
-    let record = match piece.read() {
-        Ok(record) => record,
-        Err(error) => {
-            return Answer {
-                line: None,
-                error: Some(error.to_string()),
-                notices: Vec::new(),
-                faults: Vec::new(),
-                notes: Vec::new(),
-            };
-        }
+/// What one record carries.
+struct Carried<T> {
+    labels: T,
+    faults: Vec<String>,
+    notes: Vec<String>,
+    notices: Vec<Notice>,
+}
+
+/// The labels of a record alone, which is quicker than a report.
+fn labels_of(piece: &Piece) -> Result<Carried<String>, ReadError> {
+    let (carried, notices) = if piece.is_notation {
+        let line = piece.read_notation()?;
+        let (units, configurations) = (&line.units, &line.configurations);
+        let carried = pipeline::labels_of(&line.molecule, &line.rings, units, configurations);
+        (carried, line.notices)
+    } else {
+        let record = piece.read()?;
+        (pipeline::carried(&record.drawing), record.notices)
     };
-    let carried = pipeline::carried(&record.drawing);
-    Answer {
-        line: Some(format!(
-            "{}\t{}\t{}",
-            piece.number,
-            piece.title(),
-            carried.labels
-        )),
-        error: None,
+    Ok(Carried {
+        labels: carried.labels,
         faults: carried.faults,
         notes: carried.notes,
-        notices: record.notices,
+        notices,
+    })
+}
+
+/// Every place of a record, with why.
+fn report_of(piece: &Piece) -> Result<Carried<Vec<UnitJson>>, ReadError> {
+    let (report, whys, notices) = if piece.is_notation {
+        let line = piece.read_notation()?;
+        let report = pipeline::report_of(&line);
+        let whys = pipeline::explain_of(&line, &report.places);
+        (report, whys, line.notices)
+    } else {
+        let record = piece.read()?;
+        let report = pipeline::report(&record.drawing, &Requirement::default());
+        let whys = pipeline::explain(&record.drawing, &report.places);
+        (report, whys, record.notices)
+    };
+    let units = report.places.iter().zip(whys);
+    Ok(Carried {
+        labels: units
+            .map(|(place, why)| UnitJson::new(place, why))
+            .collect(),
+        faults: report.faults(),
+        notes: Vec::new(),
+        notices,
+    })
+}
+
+fn in_table(piece: &Piece) -> Answer {
+    match labels_of(piece) {
+        Ok(carried) => Answer {
+            line: Some(format!(
+                "{}\t{}\t{}",
+                piece.number,
+                piece.title(),
+                carried.labels
+            )),
+            error: None,
+            faults: carried.faults,
+            notes: carried.notes,
+            notices: carried.notices,
+        },
+        Err(error) => Answer {
+            line: None,
+            error: Some(error.to_string()),
+            notices: Vec::new(),
+            faults: Vec::new(),
+            notes: Vec::new(),
+        },
     }
 }
 
 fn in_json(piece: &Piece, file: Option<&str>) -> Answer {
-    let (units, faults, error, notices) = match piece.read() {
-        Ok(record) => {
-            let report = pipeline::report(&record.drawing, &Requirement::default());
-            let whys = pipeline::explain(&record.drawing, &report.places);
-            let units = report.places.iter().zip(whys);
-            let units = units
-                .map(|(place, why)| UnitJson::new(place, why))
-                .collect();
-            (units, report.faults(), None, record.notices)
-        }
+    let (units, faults, error, notices) = match report_of(piece) {
+        Ok(carried) => (carried.labels, carried.faults, None, carried.notices),
         Err(error) => (Vec::new(), Vec::new(), Some(error), Vec::new()),
     };
     let json = RecordJson {

@@ -1,6 +1,7 @@
 //! One record of a file, from its bytes to its drawing.
 
 use chem::format::sdf::{Chunk, RawRecord, Reader};
+use chem::format::smiles::{self, Smiles};
 use chem::format::{Notice, ReadError, Reason, Record, text};
 use std::borrow::Cow;
 
@@ -17,6 +18,8 @@ pub struct Piece {
     pub ended: bool,
     /// Whether it is longer than any record that is read; its bytes are then not here.
     pub too_long: bool,
+    /// Whether it is a line of notation, not a molfile.
+    pub is_notation: bool,
 }
 
 /// A record as text.
@@ -38,6 +41,7 @@ impl From<Chunk<'_>> for Piece {
             bytes: chunk.bytes.to_vec(),
             ended: chunk.ended,
             too_long: chunk.too_long,
+            is_notation: false,
         }
     }
 }
@@ -51,13 +55,35 @@ impl Piece {
         self.text()?.read()
     }
 
+    /// The line of notation, understood; its notices have the line of the file.
+    ///
+    /// # Errors
+    /// What is wrong with it, and where.
+    pub fn read_notation(&self) -> Result<Smiles, ReadError> {
+        let text = self.text()?;
+        let mut line = smiles::read(&text.text).map_err(|error| ReadError {
+            line: self.line,
+            columns: Some((error.column, error.column)),
+            reason: Reason::Notation(error.reason),
+        })?;
+        line.notices.extend(text.notice);
+        for notice in &mut line.notices {
+            notice.line = self.line;
+        }
+        Ok(line)
+    }
+
     /// Its text.
     ///
     /// # Errors
     /// If it is too long or no text.
     pub fn text(&self) -> Result<PieceText<'_>, ReadError> {
         if self.too_long {
-            let reason = Reason::TooLong(Reader::<&[u8]>::LIMIT);
+            let reason = if self.is_notation {
+                Reason::Notation(smiles::Fault::TooLong(smiles::MOST_CHARACTERS))
+            } else {
+                Reason::TooLong(Reader::<&[u8]>::LIMIT)
+            };
             return Err(ReadError::line(self.line, reason));
         }
         let (text, notice) = text::decode(&self.bytes, self.line)?;
@@ -69,7 +95,7 @@ impl Piece {
         })
     }
 
-    /// Its first line, as the name to show for it; a tab or other sign that would break a table is a blank.
+    /// Its first line, or what follows a molecule in notation, as the name to show for it; a tab or other sign that would break a table is a blank.
     pub fn title(&self) -> String {
         let line = self.bytes.split(|b| matches!(b, b'\n' | b'\r')).next();
         let line = line.unwrap_or_default();
@@ -78,7 +104,12 @@ impl Piece {
             Ok(text) => text.to_owned(),
             Err(_) => line.iter().map(|b| char::from(*b)).collect(),
         };
-        text.trim_end().replace(|c: char| c.is_control(), " ")
+        let text = if self.is_notation {
+            smiles::title(&text)
+        } else {
+            text.trim_end()
+        };
+        text.replace(|c: char| c.is_control(), " ")
     }
 }
 

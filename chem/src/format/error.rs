@@ -1,5 +1,6 @@
 //! Why a record could not be read or written, and what was noticed on the way.
 
+use super::smiles;
 use crate::molecule::AtomIx;
 use std::fmt;
 
@@ -187,6 +188,8 @@ pub enum Reason {
     SeveralPatterns(Vec<usize>),
     /// Atoms and bonds that make no drawing.
     NoDrawing(String),
+    /// A line of notation that is no molecule.
+    Notation(smiles::Fault),
 }
 
 impl fmt::Display for Reason {
@@ -267,6 +270,7 @@ impl fmt::Display for Reason {
                 )
             }
             Reason::NoDrawing(why) => f.write_str(why),
+            Reason::Notation(fault) => fault.fmt(f),
         }
     }
 }
@@ -339,6 +343,7 @@ impl Reason {
                 "Draw the hydrogen as an atom, or draw single and double bonds."
             }
             Reason::NoDrawing(_) => "Correct the record.",
+            Reason::Notation(fault) => return fault.remedy(),
         };
         text.to_owned()
     }

@@ -5,10 +5,13 @@
 //! leaves a [`Notice`], and what cannot be repaired for certain is a [`ReadError`] with its place.
 
 mod error;
+mod kekule;
 mod lines;
 pub mod molfile;
+mod pairing;
 mod record;
 pub mod sdf;
+pub mod smiles;
 mod stereo_group;
 pub mod text;
 

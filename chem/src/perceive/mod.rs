@@ -8,4 +8,5 @@ mod symmetry;
 pub use dative::drawn_without_charges;
 pub use mancude::{Delocalised, Ratio, delocalised};
 pub use rings::Rings;
+pub(crate) use rings::ring_bonds;
 pub use symmetry::Symmetry;

@@ -76,8 +76,8 @@ impl Rings {
     }
 }
 
-/// Bonds that are no bridges, by depth-first search without recursion.
-fn ring_bonds(molecule: &Molecule) -> Vec<bool> {
+/// Bonds that are no bridges, by depth-first search without recursion; time linear in the bonds.
+pub(crate) fn ring_bonds(molecule: &Molecule) -> Vec<bool> {
     let n = molecule.n_atoms();
     let mut in_ring = vec![true; molecule.n_bonds()];
     let mut seen = vec![0u32; n];

@@ -2,9 +2,11 @@
 //! is carried, and carry it.
 
 mod carry;
+mod notation;
 mod report;
 
 pub use carry::carry;
+pub use notation::{explain_of, labels_of, report_of};
 pub use report::{Carried, carried, explain, report, why};
 
 use crate::cip::Rule;

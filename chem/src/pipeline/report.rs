@@ -1,17 +1,17 @@
 //! What a drawing carries, place by place.
 
-use super::{Idle, Place, Report, Sense, Verdict, perceived};
+use super::{Idle, Place, Report, Sense, Verdict, labels_of, perceived};
 use crate::cip::{Limits, Missing, Ranker, Tie, UnitLabel};
 use crate::drawing::{Drawing, Mark};
 use crate::element::Element;
-use crate::molecule::{AtomIx, Order};
+use crate::molecule::{AtomIx, Molecule, Order};
 use crate::perceive::Rings;
 use crate::solve::require::Requirement;
 use crate::stereo::{Configuration, Descriptor, Focus, Kind, Ligand, Unit, UnitIx, Units};
 use crate::wedge::{self, Reading};
 
 /// What is said of a letter that rests on open places.
-const PROVISIONAL: &str = "provisional: the letter rests on places that are open, and may be another or none once they are drawn";
+pub(super) const PROVISIONAL: &str = "provisional: the letter rests on places that are open, and may be another or none once they are drawn";
 
 /// What a drawing carries, and how that stands to a requirement (an empty one asks nothing).
 pub fn report(drawing: &Drawing, requirement: &Requirement) -> Report {
@@ -55,11 +55,21 @@ pub fn why(drawing: &Drawing, place: &Place) -> Vec<Option<Tie>> {
 
 /// [`why`] for several places of one drawing.
 pub fn explain(drawing: &Drawing, places: &[Place]) -> Vec<Vec<Option<Tie>>> {
-    let molecule = drawing.molecule();
     let (rings, units) = perceived(drawing);
-    let ranker = Ranker::new(molecule, &rings, &units, Limits::default());
     let reading = wedge::read(drawing, &units);
     let configurations = reading.configurations();
+    explained(drawing.molecule(), &rings, &units, configurations, places)
+}
+
+/// Why the ligands of some places stand in their order.
+pub(super) fn explained(
+    molecule: &Molecule,
+    rings: &Rings,
+    units: &Units,
+    configurations: &[Configuration],
+    places: &[Place],
+) -> Vec<Vec<Option<Tie>>> {
+    let ranker = Ranker::new(molecule, rings, units, Limits::default());
     let dependent = |p: &Place| p.rule.is_some_and(|rule| !rule.is_constitutional());
     // the letters of other units matter to Rules 3 and later alone
     let labels = places
@@ -171,16 +181,15 @@ pub struct Carried {
 pub fn carried(drawing: &Drawing) -> Carried {
     let (rings, units) = perceived(drawing);
     let reading = wedge::read(drawing, &units);
-    let ranker = || Ranker::new(drawing.molecule(), &rings, &units, Limits::default());
-    let defined = |c: &Configuration| matches!(c, Configuration::Defined(_));
     if is_odd(drawing, &units, &reading) {
+        let ranker = Ranker::new(drawing.molecule(), &rings, &units, Limits::default());
         let report = reported(
             drawing,
             &Requirement::default(),
             &rings,
             &units,
             &reading,
-            &ranker(),
+            &ranker,
         );
         return Carried {
             labels: report.labels_line(),
@@ -188,44 +197,7 @@ pub fn carried(drawing: &Drawing) -> Carried {
             notes: report.notes(),
         };
     }
-    if !reading.configurations().iter().any(defined) {
-        return Carried::default();
-    }
-    let ranker = ranker();
-    let labels = ranker.label_defined(reading.configurations());
-    let outlook = may_be_provisional(&reading, &labels)
-        .then(|| ranker.outlook(reading.configurations(), &labels));
-    let notes = outlook
-        .map(|outlook| {
-            let concerned = units
-                .iter()
-                .filter(|(ix, _)| outlook.is_provisional[ix.index()]);
-            concerned
-                .map(|(_, unit)| about(&unit.atoms(), PROVISIONAL))
-                .collect()
-        })
-        .unwrap_or_default();
-    let list = units
-        .iter()
-        .zip(labels)
-        .filter_map(|((_, unit), label)| Some((unit, label?.descriptor.ok()?)))
-        .flat_map(|(unit, d)| unit.atoms().into_iter().map(move |a| (a, d)))
-        .collect();
-    Carried {
-        labels: spell(list),
-        faults: Vec::new(),
-        notes,
-    }
-}
-
-/// Whether a letter rests on other units while some unit is open.
-fn may_be_provisional(reading: &Reading, labels: &[Option<UnitLabel>]) -> bool {
-    let rests = |label: &UnitLabel| {
-        let rule = label.ranking.as_ref().map(|r| r.rule);
-        label.descriptor.is_ok() && rule.is_some_and(|r| !r.is_constitutional())
-    };
-    let is_open = |c: &Configuration| !matches!(c, Configuration::Defined(_));
-    labels.iter().flatten().any(rests) && reading.configurations().iter().any(is_open)
+    labels_of(drawing.molecule(), &rings, &units, reading.configurations())
 }
 
 /// A sentence about a unit: `atom 3: ...`.

@@ -1,7 +1,7 @@
 //! From the tables of a molfile to a drawing: bond orders, marks, and what is odd about the places.
 
 use super::super::{Notice, ReadError, Reason};
-use super::kekule;
+use super::need;
 use crate::drawing::{Drawing, End, Mark};
 use crate::geom::Point;
 use crate::molecule::{Atom, AtomIx, Bond, BondIx, Molecule, Order};
@@ -120,7 +120,7 @@ impl Tables {
             .filter(|i| self.bonds[*i].kind == 4)
             .collect();
         if let Some(line) = aromatic.first().map(|i| self.bonds[*i].line) {
-            kekule::localize(&self.atoms, &mut bonds, &aromatic)
+            need::localize(&self.atoms, &mut bonds, &aromatic)
                 .map_err(|(atom, reason)| ReadError::line(lines.of(atom), reason))?;
             notices.push(Notice::new(
                 line,

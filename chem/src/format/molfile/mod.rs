@@ -2,8 +2,7 @@
 
 mod columns;
 mod finish;
-mod kekule;
-mod pairing;
+mod need;
 mod symbol;
 mod v2000;
 mod v3000;

@@ -1,10 +1,17 @@
 //! Pairs of neighboring vertices in any graph (a matching; Edmonds 1965), grown one vertex at a time.
 
+use std::cell::Cell;
+
 /// A graph and the pairs found in it.
 pub(super) struct Pairing {
     edges: Vec<Vec<usize>>,
     mate: Vec<Option<usize>>,
+    /// Vertices looked at; searches end when there were too many.
+    work: Cell<u64>,
 }
+
+/// Most vertices looked at: some seconds. A system of a thousand atoms takes a few millions.
+const MOST_WORK: u64 = 2_000_000_000;
 
 /// A tree of alternating paths from one root.
 struct Forest {
@@ -21,7 +28,13 @@ impl Pairing {
     /// No pairs yet; `edges` holds the neighbors of each vertex.
     pub(super) fn new(edges: Vec<Vec<usize>>) -> Pairing {
         let mate = vec![None; edges.len()];
-        Pairing { edges, mate }
+        let work = Cell::new(0);
+        Pairing { edges, mate, work }
+    }
+
+    /// Whether the bound of work was reached, so that what is not found may still exist.
+    pub(super) fn is_exhausted(&self) -> bool {
+        self.work.get() > MOST_WORK
     }
 
     /// The vertex that `vertex` is paired with.
@@ -60,6 +73,7 @@ impl Pairing {
     /// Alternating paths from `root`; the first unpaired vertex that one reaches, if any.
     fn search(&self, root: usize) -> (Forest, Option<usize>) {
         let n = self.edges.len();
+        self.work.set(self.work.get() + n as u64);
         let mut forest = Forest {
             outer: vec![root],
             is_outer: vec![false; n],
@@ -70,6 +84,9 @@ impl Pairing {
         let mut next = 0;
         while let Some(v) = forest.outer.get(next).copied() {
             next += 1;
+            if self.is_exhausted() {
+                break;
+            }
             for to in self.edges[v].iter().copied() {
                 if forest.base[v] == forest.base[to] || self.mate[v] == Some(to) {
                     continue;
@@ -95,6 +112,7 @@ impl Pairing {
 
     /// Draws an odd ring, closed by the edge `v to`, together into its base.
     fn contract(&self, forest: &mut Forest, root: usize, v: usize, to: usize) {
+        self.work.set(self.work.get() + 3 * self.edges.len() as u64);
         let base = self.common_base(forest, root, v, to);
         let mut in_ring = vec![false; self.edges.len()];
         self.mark_path(forest, v, base, to, &mut in_ring);

@@ -4,7 +4,9 @@
 
 mod effects;
 
-use crate::session::{Selection, Session};
+use crate::session::MEND_ALL;
+use crate::session::{Offer, Selection, Session};
+use chem::audit::Grade;
 use chem::drawing::{Edit, Mark};
 use std::borrow::Cow;
 
@@ -57,6 +59,12 @@ pub enum Command {
     GoToLine,
     /// Seek marks for the line.
     MakeItCarry,
+    /// Choose the next finding.
+    NextFinding,
+    /// Choose the one before.
+    PreviousFinding,
+    /// Mend all that keeps the meaning.
+    MendAll,
     /// The whole drawing in view.
     Fit,
     /// Larger.
@@ -67,6 +75,8 @@ pub enum Command {
     Dim,
     /// Show or fold the places.
     Places,
+    /// Show or fold the findings.
+    Findings,
     /// A named step.
     Step(String, Vec<Edit>),
     /// The line now reads so.
@@ -75,6 +85,12 @@ pub enum Command {
     Settle,
     /// Select this.
     Select(Selection),
+    /// Choose this finding.
+    ChooseFinding(usize),
+    /// Show the findings of a grade, or hide them.
+    ToggleGrade(Grade),
+    /// Take this mend.
+    Mend(Offer),
 }
 
 /// What the window must do itself, since it needs a dialog or the view.
@@ -102,6 +118,8 @@ pub enum Errand {
     Dim,
     /// Show or fold the places.
     Places,
+    /// Show or fold the findings.
+    Findings,
 }
 
 /// What came of a command.
@@ -201,6 +219,10 @@ pub const MENUS: [(&str, &[Option<Command>]); 4] = [
             Some(Command::Lower),
             Some(Command::Swap),
             Some(Command::ClearMarks),
+            None,
+            Some(Command::NextFinding),
+            Some(Command::PreviousFinding),
+            Some(Command::MendAll),
         ],
     ),
     (
@@ -211,6 +233,7 @@ pub const MENUS: [(&str, &[Option<Command>]); 4] = [
             Some(Command::Farther),
             None,
             Some(Command::Places),
+            Some(Command::Findings),
             Some(Command::Dim),
         ],
     ),
@@ -257,6 +280,13 @@ impl Command {
             Command::Farther => "Farther",
             Command::Dim => "Light or dark desk",
             Command::Places => "Places",
+            Command::Findings => "Findings",
+            Command::NextFinding => "Next finding",
+            Command::PreviousFinding => "Previous finding",
+            Command::MendAll => MEND_ALL,
+            Command::ChooseFinding(_) => "Choose a finding",
+            Command::ToggleGrade(_) => "Show or hide a grade",
+            Command::Mend(_) => "Mend",
             Command::Step(name, _) => return Cow::Owned(name.clone()),
             Command::Ask(_) => "Ask",
             Command::Settle => "Settle",
@@ -293,12 +323,19 @@ impl Command {
             Command::Farther => ctrl("Minus"),
             Command::Dim => ctrl("D"),
             Command::Places => ctrl("P"),
+            Command::Findings => ctrl("F"),
+            Command::NextFinding => ctrl("PageDown"),
+            Command::PreviousFinding => ctrl("PageUp"),
+            Command::MendAll => ctrl_shift("M"),
             Command::ClearMarks
             | Command::FigureStyle
             | Command::FigureDescriptors
             | Command::Step(..)
             | Command::Ask(_)
             | Command::Settle
+            | Command::ChooseFinding(_)
+            | Command::ToggleGrade(_)
+            | Command::Mend(_)
             | Command::Select(_) => return None,
         })
     }
@@ -334,7 +371,18 @@ impl Command {
             Command::Farther => "Reduces the view",
             Command::Dim => "Changes between a light and a dark desk; the paper stays white",
             Command::Places => "Shows or folds the list of stereogenic places",
-            Command::Step(..) | Command::Ask(_) | Command::Settle | Command::Select(_) => "",
+            Command::Findings => "Shows or folds the list of what a reader could take wrongly",
+            Command::NextFinding | Command::PreviousFinding => {
+                "Steps through the findings that are shown"
+            }
+            Command::MendAll => "Draws better what can be, without a change of meaning",
+            Command::Step(..)
+            | Command::Ask(_)
+            | Command::Settle
+            | Command::ChooseFinding(_)
+            | Command::ToggleGrade(_)
+            | Command::Mend(_)
+            | Command::Select(_) => "",
         }
     }
 
@@ -354,6 +402,10 @@ impl Command {
             Command::Swap => bond().is_some_and(|b| session.drawing().mark(b).narrow().is_some()),
             Command::ClearMarks => session.drawing().marks().iter().any(|m| *m != Mark::Plain),
             Command::MakeItCarry => session.can_carry(),
+            Command::NextFinding | Command::PreviousFinding => {
+                session.shown_findings().next().is_some()
+            }
+            Command::MendAll => session.can_mend_all() && !session.is_mending(),
             _ => true,
         }
     }
@@ -373,6 +425,7 @@ impl Command {
             Command::Farther => Errand::Zoom(false),
             Command::Dim => Errand::Dim,
             Command::Places => Errand::Places,
+            Command::Findings => Errand::Findings,
             _ => return None,
         })
     }
@@ -398,6 +451,12 @@ impl Command {
             Command::Ask(text) => session.ask(&text),
             Command::Settle => session.settle(),
             Command::MakeItCarry => session.make_it_carry(),
+            Command::NextFinding => session.step_finding(true),
+            Command::PreviousFinding => session.step_finding(false),
+            Command::ChooseFinding(i) => session.choose_finding(i),
+            Command::ToggleGrade(grade) => session.toggle_grade(grade),
+            Command::MendAll => session.mend_all(),
+            Command::Mend(offer) => return effects::mend(session, offer),
             Command::FigureStyle => session.next_figure_style(),
             Command::FigureDescriptors => session.toggle_figure_descriptors(),
             Command::Delete => return effects::delete(session),

@@ -6,16 +6,21 @@
 //! mean, and the drawing is read afresh.
 //!
 //! The search itself is not run here: it is handed out as [`Work`], may run anywhere, and comes back
-//! through [`Session::answer`].
+//! through [`Session::answer`]. So it is with the audit: [`Session::take_look`], [`Session::seen`].
 
 pub mod files;
+mod findings;
 mod history;
 mod line;
 mod selection;
 mod tally;
+mod work;
 
+pub(crate) use findings::MEND_ALL;
+pub use findings::{Look, Offer, Seen, State as Looking};
 pub use selection::Selection;
 pub use tally::Tally;
+pub use work::{Answer, Work};
 
 use crate::files::FileError;
 use chem::drawing::{Drawing, Edit, EditError, Renumbering};
@@ -27,31 +32,7 @@ use files::Document;
 use history::{History, State};
 use std::path::{Path, PathBuf};
 use std::sync::Arc;
-
-/// A search for marks, to be run off the thread that paints.
-#[derive(Clone, Debug)]
-pub struct Work {
-    id: u64,
-    drawing: Arc<Drawing>,
-    requirement: Requirement,
-}
-
-impl Work {
-    /// Runs the search; the result goes to [`Session::answer`].
-    pub fn run(&self) -> Answer {
-        Answer {
-            id: self.id,
-            result: pipeline::carry(&self.drawing, &self.requirement),
-        }
-    }
-}
-
-/// What came of a [`Work`].
-#[derive(Debug)]
-pub struct Answer {
-    id: u64,
-    result: Result<Solution, Refusal>,
-}
+use work::{Outcome, Task};
 
 /// What waits for an answer.
 #[derive(Debug)]
@@ -67,6 +48,8 @@ enum Then {
     Typed(Arc<Drawing>),
     /// Makes a step of this name.
     Step(String),
+    /// Makes the step that mends all.
+    Mend,
 }
 
 /// The line while it is typed: everything typed in one go is one step.
@@ -94,6 +77,7 @@ pub struct Session {
     pending: Option<Pending>,
     work: Option<Work>,
     next_work: u64,
+    findings: findings::Findings,
     figure: FigureChoice,
 }
 
@@ -124,11 +108,13 @@ impl Session {
     /// A document with the line that it must carry; `path` is where it was read from.
     pub fn of(document: Document, path: Option<PathBuf>, line: String) -> Session {
         let drawing = Arc::new(document.record.drawing.clone());
+        let as_read = Arc::clone(&drawing);
         let history = History::new(State {
             name: "Open".to_owned(),
             drawing,
             line,
             groups: document.record.stereo_groups.clone().into(),
+            log: Arc::default(),
             revision: 0,
         });
         let mut session = Session {
@@ -145,6 +131,7 @@ impl Session {
             pending: None,
             work: None,
             next_work: 0,
+            findings: findings::Findings::of(as_read),
             figure: FigureChoice::default(),
         };
         session.read();
@@ -319,7 +306,7 @@ impl Session {
             && !requirement.wanted.is_empty()
         {
             let requirement = requirement.clone();
-            self.give_work(base.clone(), requirement, Then::Typed(base));
+            self.give_work(base.clone(), Task::Carry(requirement), Then::Typed(base));
         }
     }
 
@@ -360,7 +347,7 @@ impl Session {
             let requirement = requirement.clone();
             let name = carry_name(self.line());
             let drawing = self.drawing().clone();
-            self.give_work(drawing, requirement, Then::Step(name));
+            self.give_work(drawing, Task::Carry(requirement), Then::Step(name));
         }
     }
 
@@ -380,7 +367,11 @@ impl Session {
             return;
         };
         let line = self.line().to_owned();
-        match (answer.result, pending.then) {
+        let result = match answer.outcome {
+            Outcome::Carried(result) => result,
+            Outcome::Mended(mended) => return self.mended(mended),
+        };
+        match (result, pending.then) {
             (Ok(solution), Then::Typed(base)) => {
                 let drawing = changed(&solution).unwrap_or(base);
                 self.complete_typed(drawing);
@@ -391,6 +382,8 @@ impl Session {
                     self.read();
                 }
             }
+            // mending all gives no solution
+            (Ok(_), Then::Mend) => {}
             (Err(refusal), then) => {
                 if let Then::Typed(base) = then {
                     self.complete_typed(base);
@@ -446,6 +439,7 @@ impl Session {
         let record = record.with_drawing_and_groups(drawing, groups);
         files::write(path, &record)?;
         self.document = Document::of(record);
+        self.findings.forget_file();
         self.path = Some(path.to_owned());
         self.saved = self.history.now().revision;
         Ok(())
@@ -457,15 +451,11 @@ impl Session {
         self.read();
     }
 
-    fn give_work(&mut self, drawing: Arc<Drawing>, requirement: Requirement, then: Then) {
+    fn give_work(&mut self, drawing: Arc<Drawing>, task: Task, then: Then) {
         self.next_work += 1;
         let id = self.next_work;
         self.pending = Some(Pending { id, then });
-        self.work = Some(Work {
-            id,
-            drawing,
-            requirement,
-        });
+        self.work = Some(Work { id, drawing, task });
     }
 
     fn stop_work(&mut self) {

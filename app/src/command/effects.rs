@@ -1,7 +1,7 @@
 //! What commands do to the drawing.
 
 use super::Effect;
-use crate::session::{Selection, Session};
+use crate::session::{Offer, Selection, Session};
 use chem::drawing::{Edit, End, Mark};
 use chem::molecule::{AtomIx, BondIx, Order};
 
@@ -45,6 +45,14 @@ pub(super) fn step(session: &mut Session, name: &str, edits: &[Edit]) -> Effect 
     match session.step(name, edits) {
         Ok(_) => Effect::Done,
         Err(e) => Effect::Refused(format!("{name}: {e}")),
+    }
+}
+
+/// Takes a mend.
+pub(super) fn mend(session: &mut Session, offer: Offer) -> Effect {
+    match session.mend(offer) {
+        Ok(()) => Effect::Done,
+        Err(e) => Effect::Refused(format!("the mend does not fit the drawing: {e}")),
     }
 }
 

@@ -1,5 +1,6 @@
 //! Steps that can be taken back: a list of whole drawings, which is simple and small enough.
 
+use chem::audit::Step;
 use chem::drawing::Drawing;
 use chem::format::StereoGroup;
 use std::sync::Arc;
@@ -17,6 +18,8 @@ pub(super) struct State {
     pub(super) line: String,
     /// Stereo groups, in the atoms of this drawing.
     pub(super) groups: Arc<[StereoGroup]>,
+    /// The mends that led here, in order; a mend taken back stands here no more.
+    pub(super) log: Arc<[Step]>,
     /// Unlike that of every other state.
     pub(super) revision: u64,
 }
@@ -74,6 +77,11 @@ impl History {
         self.now = self.state(name, drawing, line, groups);
     }
 
+    /// Writes mends into the log of the step that was made last.
+    pub(super) fn write_log(&mut self, steps: impl IntoIterator<Item = Step>) {
+        self.now.log = self.now.log.iter().cloned().chain(steps).collect();
+    }
+
     /// Forgets the last step, as if it had not been made.
     pub(super) fn drop_last(&mut self) {
         if let Some(state) = self.before.pop() {
@@ -118,6 +126,7 @@ impl History {
             drawing,
             line,
             groups,
+            log: self.now.log.clone(),
             revision: self.next_revision,
         }
     }

@@ -100,6 +100,11 @@ pub(super) fn status(ui: &mut Ui, session: &Session, sheet: &Sheet) {
             (false, None) => "not saved yet",
         };
         ui.label(small(state.to_owned()));
+        match session.log().len() {
+            0 => {}
+            1 => _ = ui.label(small("1 mend in the log".to_owned())),
+            n => _ = ui.label(small(format!("{n} mends in the log"))),
+        }
         ui.with_layout(Layout::right_to_left(Align::Center), |ui| {
             if let Some((_, percent)) = sheet.measures() {
                 ui.label(small(format!("{percent:.0} % of print")));

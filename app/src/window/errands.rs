@@ -3,6 +3,7 @@
 use super::Window;
 use super::dialogs::{Choice, Dialog, Purpose};
 use super::prompts::{self, Keep, Next, PathField, Typed};
+use super::search::Search;
 use crate::command::Errand;
 use crate::figure::{self, Form, Options};
 use crate::files;
@@ -27,6 +28,7 @@ impl Window {
                 ctx.set_theme(if dark { Theme::Light } else { Theme::Dark });
             }
             Errand::Places => self.show_places = !self.show_places,
+            Errand::Findings => self.show_findings = !self.show_findings,
         }
     }
 
@@ -60,6 +62,10 @@ impl Window {
         self.sheet.forget();
         self.band.forget();
         self.graft = None;
+        self.mending = None;
+        // what is worked out for the last document must not be taken for an answer to this one
+        self.search = Search::default();
+        self.audit = Search::default();
         self.notice = None;
         self.tell_notice();
     }
@@ -206,6 +212,19 @@ impl Window {
     pub(super) fn take_answers(&mut self, patient: bool, ctx: &Context) {
         while let Some(answer) = self.search.poll(patient, ctx) {
             self.session.answer(answer);
+        }
+    }
+
+    /// Hands what an audit found to the session, and a changed drawing to the next audit. Nothing waits.
+    pub(super) fn look(&mut self, ctx: &Context) {
+        while let Some(seen) = self.audit.poll(false, ctx) {
+            self.session.seen(seen);
+        }
+        if self.audit.is_idle() {
+            self.session.looked_in_vain();
+        }
+        if let Some(look) = self.session.take_look() {
+            self.audit.give(look, ctx);
         }
     }
 

@@ -8,6 +8,7 @@ mod bars;
 mod demo;
 mod dialogs;
 mod errands;
+mod findings;
 mod graft;
 mod paint;
 mod pen;
@@ -19,14 +20,15 @@ mod signs;
 mod theme;
 
 use crate::command::{Command, Effect, MENUS, Shortcut, ctrl, plain};
-use crate::session::Session;
+use crate::session::{Look, Offer, Session, Work};
+use chem::drawing::Drawing;
 use chem::pipeline::Verdict;
 use dialogs::Dialog;
 use egui::{CentralPanel, Context, Event, Frame, Key, Margin, Modifiers, Panel, Ui};
 use graft::{Entry, Outcome};
 use prompts::{Next, PathField};
 use search::Search;
-use sheet::Sheet;
+use sheet::{Ghost, Sheet};
 use std::path::PathBuf;
 use theme::{Colors, GRID};
 
@@ -57,7 +59,10 @@ pub struct Window {
     sheet: Sheet,
     band: band::Band,
     graft: Option<Entry>,
-    search: Search,
+    search: Search<Work>,
+    audit: Search<Look>,
+    /// The mend that the pointer or the focus is on, with the drawing that it would leave.
+    mending: Option<(Offer, Drawing)>,
     dialog: Option<Dialog>,
     path_field: Option<PathField>,
     /// Asks about unsaved work before this.
@@ -66,6 +71,7 @@ pub struct Window {
     after_save: Option<Next>,
     notice: Option<Notice>,
     show_places: bool,
+    show_findings: bool,
     typed_paths: bool,
     dressed: bool,
     closing: bool,
@@ -81,12 +87,15 @@ impl Window {
             band: band::Band::default(),
             graft: None,
             search: Search::default(),
+            audit: Search::default(),
+            mending: None,
             dialog: None,
             path_field: None,
             asking: None,
             after_save: None,
             notice: None,
             show_places: true,
+            show_findings: true,
             typed_paths: false,
             dressed: false,
             closing: false,
@@ -120,6 +129,11 @@ impl Window {
     pub fn screen_of(&self, atom: chem::molecule::AtomIx) -> Option<egui::Pos2> {
         let point = self.session.drawing().points().get(atom.index())?;
         Some(self.sheet.view.to_screen(*point))
+    }
+
+    /// Whether the drawing that a mend would leave is shown over the present one.
+    pub fn shows_mend(&self) -> bool {
+        self.mending.is_some() && self.graft.is_none()
     }
 
     fn tell_notice(&mut self) {
@@ -171,6 +185,7 @@ impl Window {
             self.take_answers(true, &ctx);
             ctx.request_repaint();
         }
+        self.look(&ctx);
         self.window_title(&ctx);
     }
 
@@ -200,30 +215,66 @@ impl Window {
                 self.notice = None;
             }
         }
-        if self.show_places {
-            let width = (ui.available_width() * 0.33).clamp(264.0, 320.0);
-            let side = if width < 320.0 { 14 } else { 24 };
-            Panel::right("places")
-                .frame(desk(Margin::symmetric(side, 20)))
-                .resizable(false)
-                .show_separator_line(false)
-                .exact_size(width)
-                .show(ui, |ui| places::show(ui, &self.session, out));
-        }
+        let with_column = self.show_places || self.show_findings;
+        let offer = if with_column {
+            self.column(ui, desk, out)
+        } else {
+            None
+        };
+        self.offer(offer);
         CentralPanel::default_margins()
             .frame(desk(Margin {
                 left: 24,
-                right: if self.show_places { 2 } else { 24 },
+                right: if with_column { 2 } else { 24 },
                 top: 2 * GRID as i8,
                 bottom: 2 * GRID as i8,
             }))
             .show(ui, |ui| self.sheet_and_graft(ui, out));
     }
 
+    /// Places and findings; gives the mend that the pointer or the focus is on.
+    fn column(
+        &self,
+        ui: &mut Ui,
+        desk: impl Fn(Margin) -> Frame,
+        out: &mut Vec<Command>,
+    ) -> Option<Offer> {
+        let width = (ui.available_width() * 0.33).clamp(264.0, 320.0);
+        let side = if width < 320.0 { 14 } else { 24 };
+        let show = |ui: &mut Ui| {
+            if self.show_findings {
+                findings::column(ui, &self.session, self.show_places, out)
+            } else {
+                places::show(ui, &self.session, true, out);
+                None
+            }
+        };
+        let panel = Panel::right("places")
+            .frame(desk(Margin::symmetric(side, 20)))
+            .resizable(false)
+            .show_separator_line(false)
+            .exact_size(width);
+        panel.show(ui, show).inner
+    }
+
+    /// Keeps the drawing that a mend would leave, to be shown over the one before.
+    fn offer(&mut self, offer: Option<Offer>) {
+        if self.mending.as_ref().map(|(of, _)| *of) == offer {
+            return;
+        }
+        let after = |offer| Some((offer, self.session.after_mend(offer)?));
+        self.mending = offer.and_then(after);
+    }
+
     fn sheet_and_graft(&mut self, ui: &mut Ui, out: &mut Vec<Command>) {
         let ghost = self.graft.as_ref().and_then(|g| g.ghost(&self.session));
+        let shown = match (&ghost, &self.mending) {
+            (Some(after), _) => Some(Ghost::Instead(after)),
+            (None, Some((_, after))) => Some(Ghost::Over(after)),
+            (None, None) => None,
+        };
         let before = out.len();
-        let response = self.sheet.show(ui, &self.session, ghost.as_ref(), out);
+        let response = self.sheet.show(ui, &self.session, shown, out);
         if out.len() > before {
             self.graft = None;
         }

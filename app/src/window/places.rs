@@ -69,37 +69,44 @@ fn selection(session: &Session, place: &Place) -> Selection {
     }
 }
 
-/// Shows the panel.
-pub(super) fn show(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
+/// Shows the places in the room that there is; they scroll. Without a list of findings beside them the
+/// marks that say nothing are told here.
+pub(super) fn show(ui: &mut Ui, session: &Session, with_faults: bool, out: &mut Vec<Command>) {
     ScrollArea::vertical().auto_shrink(false).show(ui, |ui| {
         ui.spacing_mut().item_spacing.y = 0.0;
-        heading(ui, "Places");
-        ui.add_space(GRID);
-        let places = &session.report().places;
-        if places.is_empty() {
-            let colors = Colors::of(ui);
-            let text = if session.drawing().molecule().n_atoms() == 0 {
-                "nothing is drawn yet"
-            } else {
-                "no stereogenic place in this drawing"
-            };
-            ui.label(RichText::new(text).color(colors.muted));
+        content(ui, session, out);
+        if with_faults {
             faults(ui, session);
-            return;
-        }
-        header(ui);
-        let chosen = chosen(session);
-        for place in places {
-            row(ui, session, place, chosen.is_some_and(|c| c == place), out);
-        }
-        faults(ui, session);
-        if let Some(place) = chosen {
-            ui.add_space(2.0 * GRID);
-            theme::hairline(ui, 1.0);
-            ui.add_space(2.0 * GRID);
-            why(ui, session, place);
         }
     });
+}
+
+/// The places one beneath the other.
+pub(super) fn content(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
+    heading(ui, "Places");
+    ui.add_space(GRID);
+    let places = &session.report().places;
+    if places.is_empty() {
+        let colors = Colors::of(ui);
+        let text = if session.drawing().molecule().n_atoms() == 0 {
+            "nothing is drawn yet"
+        } else {
+            "no stereogenic place in this drawing"
+        };
+        ui.label(RichText::new(text).color(colors.muted));
+        return;
+    }
+    header(ui);
+    let chosen = chosen(session);
+    for place in places {
+        row(ui, session, place, chosen.is_some_and(|c| c == place), out);
+    }
+    if let Some(place) = chosen {
+        ui.add_space(2.0 * GRID);
+        theme::hairline(ui, 1.0);
+        ui.add_space(2.0 * GRID);
+        why(ui, session, place);
+    }
 }
 
 fn heading(ui: &mut Ui, text: &str) {

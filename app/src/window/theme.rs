@@ -1,5 +1,6 @@
 //! Colors, type and spacing: all of them stand here and nowhere else.
 
+use chem::audit::Grade;
 use chem::ink::Tone;
 use chem::pipeline::Verdict;
 use egui::epaint::text::{FontInsert, FontPriority, InsertFontFamily};
@@ -76,6 +77,15 @@ impl Colors {
             Verdict::Open => self.open,
             Verdict::Contradiction => self.contradiction,
             Verdict::NotAsked => self.muted,
+        }
+    }
+
+    pub(super) fn grade(&self, grade: Grade) -> Color32 {
+        match grade {
+            Grade::Wrong => self.opposite,
+            Grade::Unclear => self.contradiction,
+            Grade::PoorStyle => self.muted,
+            Grade::Open => self.open,
         }
     }
 

@@ -32,6 +32,15 @@ struct Composed {
     triangles: Triangles,
 }
 
+/// A drawing that may come, its new parts in the accent.
+#[derive(Clone, Copy, Debug)]
+pub(super) enum Ghost<'a> {
+    /// Shown instead of the one that is there.
+    Instead(&'a Drawing),
+    /// Shown over the one that is there, whose parts that would go are faint.
+    Over(&'a Drawing),
+}
+
 /// The view and what the pointer is doing.
 #[derive(Debug)]
 pub(super) struct Sheet {
@@ -95,13 +104,12 @@ impl Sheet {
         Some((width, self.view.percent(composed.ink.points_per_unit)))
     }
 
-    /// Shows the sheet and collects what is to be done. A `ghost` is a drawing that may come, shown
-    /// instead of the one that is there with its new parts in the accent.
+    /// Shows the sheet and collects what is to be done.
     pub(super) fn show(
         &mut self,
         ui: &mut Ui,
         session: &Session,
-        ghost: Option<&Drawing>,
+        ghost: Option<Ghost<'_>>,
         out: &mut Vec<Command>,
     ) -> Response {
         let rect = ui.available_rect_before_wrap();
@@ -154,7 +162,7 @@ impl Sheet {
         });
     }
 
-    fn paint(&mut self, ui: &Ui, response: &Response, session: &Session, ghost: Option<&Drawing>) {
+    fn paint(&mut self, ui: &Ui, response: &Response, session: &Session, ghost: Option<Ghost<'_>>) {
         let rect = self.view.rect();
         let desk = Colors::of(ui);
         let painter = ui.painter_at(rect.expand(3.0));
@@ -172,9 +180,13 @@ impl Sheet {
         self.frame(&painter, session, composed, ghost.is_some());
         self.selection(&painter, session);
         let moved = self.gesture.preview(session);
-        let shown = moved.as_ref().or(ghost);
+        let shown = moved.as_ref().map(Ghost::Instead).or(ghost);
         match shown {
-            Some(after) => self.paint_ghost(&painter, session, after),
+            Some(Ghost::Instead(after)) => self.paint_ghost(&painter, session, after),
+            Some(Ghost::Over(after)) => {
+                self.paint_going(&painter, session, composed, after);
+                self.paint_ghost(&painter, session, after);
+            }
             None => {
                 let mesh = composed
                     .triangles
@@ -186,6 +198,28 @@ impl Sheet {
         }
         self.ranking(&painter, session, composed);
         self.pen_ghost(&painter, session, response);
+    }
+
+    /// What of the drawing would go or change, faint.
+    fn paint_going(
+        &self,
+        painter: &egui::Painter,
+        session: &Session,
+        composed: &Composed,
+        after: &Drawing,
+    ) {
+        let before = session.drawing();
+        let faint = theme::LIGHT.muted.gamma_multiply(0.45);
+        let to = self.view.of_ink(&composed.ink);
+        let mesh = composed.triangles.mesh(to, |part, _| {
+            let stays = match part {
+                Part::Atom(a) => same_atom(before, after, a),
+                Part::Bond(b) => same_bond(before, after, b),
+                Part::Caption(_) | Part::Note => true,
+            };
+            (!stays).then_some(faint)
+        });
+        painter.add(egui::Shape::mesh(mesh));
     }
 
     /// A drawing as it would be: what is new or other than before in the accent.
@@ -217,7 +251,7 @@ impl Sheet {
 
 fn same_atom(before: &Drawing, after: &Drawing, a: chem::molecule::AtomIx) -> bool {
     let (m, n) = (before.molecule(), after.molecule());
-    a.index() < m.n_atoms()
+    a.index() < m.n_atoms().min(n.n_atoms())
         && m.atom(a) == n.atom(a)
         && m.hydrogens(a) == n.hydrogens(a)
         && before.point(a).distance(after.point(a)) < 1e-9
@@ -225,7 +259,7 @@ fn same_atom(before: &Drawing, after: &Drawing, a: chem::molecule::AtomIx) -> bo
 
 fn same_bond(before: &Drawing, after: &Drawing, b: chem::molecule::BondIx) -> bool {
     let (m, n) = (before.molecule(), after.molecule());
-    b.index() < m.n_bonds()
+    b.index() < m.n_bonds().min(n.n_bonds())
         && m.bond(b) == n.bond(b)
         && before.mark(b) == after.mark(b)
         && n.bond(b)

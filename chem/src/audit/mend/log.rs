@@ -53,9 +53,12 @@ pub enum Trait {
 }
 
 impl Step {
-    pub(super) fn new(before: &Drawing, after: &Drawing, finding: Finding, mend: &Mend) -> Step {
+    /// What a mend of a finding changed between two drawings; atoms and bonds keep their numbers, and what
+    /// was added comes last.
+    pub fn new(before: &Drawing, after: &Drawing, finding: Finding, mend: &Mend) -> Step {
+        let mends = Vec::new();
         let mut step = Step {
-            reason: finding,
+            reason: Finding { mends, ..finding },
             text: mend.text.clone(),
             keeps_meaning: mend.keeps_meaning,
             before: Vec::new(),

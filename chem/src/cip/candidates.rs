@@ -81,8 +81,8 @@ impl Ranker<'_> {
                 Err(stop) => outlook.could_carry[i] = Err(stop),
             }
         }
-        let nothing_open = trial.open.is_empty();
-        if !nothing_open && !(trial.dependent.is_empty() && trial.lettered.is_empty()) {
+        let concerns_any = !(trial.dependent.is_empty() && trial.lettered.is_empty());
+        if concerns_any && !trial.open.is_empty() {
             self.try_combinations(configurations, &trial, &mut outlook);
         }
         outlook

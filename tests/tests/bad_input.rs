@@ -45,7 +45,7 @@ type Case = (
 const STAR: &str = "1 2 1 1; 1 3 1; 1 4 1";
 const PLAIN: &str = "C 0 0; N 0 1.5; C -1.3 -0.75; O 1.3 -0.75";
 const IDLE: &str = "atom 1 is not stereogenic";
-const PLACEHOLDER: &str = "depends on what a placeholder stands for";
+const PLACEHOLDER: &str = "it depends on a placeholder or on a bond whose order is not stated";
 const OVERLAP: &str = "an atom lies on the centre";
 
 #[rustfmt::skip]

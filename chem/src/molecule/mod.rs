@@ -121,6 +121,11 @@ impl Order {
         self == Order::Special(9)
     }
 
+    /// Whether a wedge on it can be read: it holds a ligand by one electron pair.
+    pub fn bears_wedge(self) -> bool {
+        self == Order::Single || self.is_dative()
+    }
+
     /// Whether its order is unstated or a query's: what depends on it cannot be decided.
     pub fn is_vague(self) -> bool {
         matches!(self, Order::Special(_)) && !self.is_hydrogen_bond() && !self.is_dative()

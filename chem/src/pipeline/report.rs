@@ -4,7 +4,7 @@ use super::{Idle, Place, Report, Sense, Verdict, labels_of, perceived};
 use crate::cip::{Limits, Missing, Ranker, Tie, UnitLabel};
 use crate::drawing::{Drawing, Mark};
 use crate::element::Element;
-use crate::molecule::{AtomIx, Molecule, Order};
+use crate::molecule::{AtomIx, Molecule};
 use crate::perceive::Rings;
 use crate::solve::require::Requirement;
 use crate::stereo::{Configuration, Descriptor, Focus, Kind, Ligand, Unit, UnitIx, Units};
@@ -132,7 +132,7 @@ fn idle(drawing: &Drawing, rings: &Rings, units: &Units, labels: &[UnitLabel]) -
                     "the wedge from atom {n} to atom {w} says nothing: two ligands of atom {n} are alike"
                 )
             }
-            Some(_) if molecule.bond(bond).order != Order::Single => format!(
+            Some(_) if !molecule.bond(bond).order.bears_wedge() => format!(
                 "the wedge from atom {n} to atom {w} is on a bond that is not single and says nothing"
             ),
             Some(_) => continue,
@@ -243,7 +243,7 @@ fn wanted(requirement: &Requirement, unit: &Unit) -> Option<Descriptor> {
     requirement
         .wanted
         .iter()
-        .find(|(a, _)| atoms.contains(a))
+        .find(|(a, d)| atoms.contains(a) && unit.kind.can_carry(*d))
         .map(|(_, d)| *d)
 }
 

@@ -63,7 +63,14 @@ fn unit(molecule: &Molecule, rings: &Rings, bond: BondIx) -> Option<Unit> {
 /// The two ligands of a flat atom outside rings at the far end of an axis, the lower one first.
 fn group(molecule: &Molecule, rings: &Rings, end: AtomIx, partner: AtomIx) -> Option<[Ligand; 2]> {
     let others = flat_neighbors(molecule, end, partner)?;
-    (!rings.has_atom(molecule, end)).then(|| others.map(Ligand::Atom))
+    // carboxyl, ester and nitro groups turn too easily for an axis (common practice, no source)
+    let turns = others.iter().all(|a| {
+        matches!(
+            molecule.element(*a),
+            Element::O | Element::S | Element::SE | Element::TE
+        )
+    });
+    (!turns && !rings.has_atom(molecule, end)).then(|| others.map(Ligand::Atom))
 }
 
 /// The two ring neighbors of an axis atom, the lower one first.

@@ -8,7 +8,7 @@
 use super::read::Doubt;
 use super::read_pattern::{Pattern, Shape};
 use crate::drawing::{Drawing, Mark};
-use crate::molecule::{AtomIx, Order};
+use crate::molecule::AtomIx;
 use crate::stereo::{Configuration, Ligand, Parity, odd_permutation};
 use smallvec::SmallVec;
 use std::f64::consts::PI;
@@ -64,7 +64,7 @@ fn marks(drawing: &Drawing, center: AtomIx) -> Marks {
         wedges: 0,
     };
     for n in drawing.molecule().neighbors(center) {
-        if n.order != Order::Single {
+        if !n.order.bears_wedge() {
             continue;
         }
         match drawing.mark_from(center, n.bond) {

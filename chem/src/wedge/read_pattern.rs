@@ -3,7 +3,7 @@
 use super::read::Doubt;
 use crate::drawing::{Drawing, Mark};
 use crate::geom;
-use crate::molecule::{AtomIx, BondIx, Order};
+use crate::molecule::{AtomIx, BondIx};
 use smallvec::SmallVec;
 use std::f64::consts::PI;
 
@@ -69,11 +69,12 @@ impl Pattern {
     /// If a neighbour lies on the atom or two lie in one direction.
     pub fn of(drawing: &Drawing, center: AtomIx) -> Result<Pattern, Doubt> {
         let mut spokes: SmallVec<[Spoke; 4]> = SmallVec::new();
-        for n in drawing.molecule().neighbors(center) {
+        let neighbors = drawing.molecule().neighbors(center).iter();
+        for n in neighbors.filter(|n| !n.order.is_hydrogen_bond()) {
             let direction = drawing.direction(center, n.atom).ok_or(Doubt::Overlap)?;
             let lift = match drawing.mark_from(center, n.bond) {
-                Mark::Solid(_) if n.order == Order::Single => 1,
-                Mark::Hashed(_) if n.order == Order::Single => -1,
+                Mark::Solid(_) if n.order.bears_wedge() => 1,
+                Mark::Hashed(_) if n.order.bears_wedge() => -1,
                 _ => 0,
             };
             spokes.push(Spoke {

@@ -71,7 +71,7 @@ pub(super) fn fused(frame: &Frame, rings: &[Vec<usize>]) -> Option<Vec<Point>> {
             (std::cmp::Reverse(missing), known(r), std::cmp::Reverse(**r))
         })?;
         open.retain(|r| *r != next);
-        close(frame, rings, &done, next, &mut places)?;
+        close(rings, &done, next, &mut places)?;
         done.push(next);
     }
     places.into_iter().collect()
@@ -83,7 +83,6 @@ fn shared(a: &[usize], b: &[usize]) -> usize {
 
 /// Places the missing atoms of a ring on the free side of those that are there.
 fn close(
-    frame: &Frame,
     rings: &[Vec<usize>],
     done: &[usize],
     next: usize,
@@ -137,7 +136,6 @@ fn close(
     } else {
         arc(p, q, missing.len())
     };
-    debug_assert!(frame.len() >= size);
     for (a, point) in missing.iter().zip(points) {
         places[*a] = Some(point);
     }

@@ -39,6 +39,8 @@ EXPLAINED = [
     (r"^CC1=CC=C\(C=C1\)C2=C3C=CC\(=C\(C4=CC=C\(N4\).*OC\)N3$",
      "a quinone triptycene on a porphyrin: RDKit's newer labeller differs at atom 66 from its older one and "
      "from itself on the same part without the porphyrin"),
+    (r"^\[CH3:18\]/\[CH:17\]=\[C:4\]", "a double bond whose branches differ in configuration only: whether RDKit "
+                                        "reads it depends on the order of writing"),
     (r"=\[C@+(AL\d)?\]=|=C=C=", "RDKit reads no axes and no cumulated chains"),
 ]
 
@@ -186,7 +188,8 @@ def is_same(given, written):
         return a is b
     if line_a == line_b:
         return True
-    return a.GetNumBonds() == b.GetNumBonds() and all(
+    # of large symmetric molecules that could take for ever
+    return a.GetNumAtoms() == b.GetNumAtoms() <= 60 and a.GetNumBonds() == b.GetNumBonds() and all(
         x.HasSubstructMatch(y, useChirality=True) for x, y in ((a, b), (b, a)))
 
 

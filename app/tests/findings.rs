@@ -63,7 +63,8 @@ fn looked(h: &mut Driven<'_>) {
 }
 
 fn click(h: &mut Driven<'_>, words: &str) {
-    h.get_by_role_and_label(Role::Button, words).click();
+    h.get_by_role_and_label(Role::Button, words)
+        .click_accesskit();
     h.run_steps(2);
     looked(h);
 }
@@ -72,7 +73,7 @@ fn click(h: &mut Driven<'_>, words: &str) {
 fn choose(h: &mut Driven<'_>, begin: &str) {
     let is_it = |label: Option<String>| label.is_some_and(|l| l.starts_with(begin));
     h.get_by(|n| n.role() == Role::Button && is_it(n.label()))
-        .click();
+        .click_accesskit();
     h.run_steps(3);
 }
 
@@ -158,7 +159,7 @@ fn the_line_makes_wrong_what_it_is_not_and_its_mend_serves_it() {
         label.is_some_and(|l| l.ends_with("sets the meaning, as the line asks"))
     };
     h.get_by(|n| n.role() == Role::Button && serves(n.label()))
-        .click();
+        .click_accesskit();
     h.run_steps(2);
     looked(&mut h);
     assert!(h.state().session().report().all_agree());
@@ -203,18 +204,20 @@ fn a_count_shows_and_hides_its_grade() {
     let begins = |h: &Driven<'_>, words: &str| {
         let words = words.to_owned();
         let is_it = move |label: Option<String>| label.is_some_and(|l| l.starts_with(&words));
-        h.query_by(|n| n.role() == Role::Button && is_it(n.label()))
+        h.query_all_by(|n| n.role() == Role::Button && is_it(n.label()))
+            .next()
             .is_some()
     };
     assert!(begins(&h, "unclear: "));
     let chip = h.get_by_role_and_label(Role::CheckBox, "1 unclear");
     assert_eq!(chip.accesskit_node().toggled(), Some(Toggled::True));
-    chip.click();
+    chip.click_accesskit();
     h.run_steps(2);
     assert!(!begins(&h, "unclear: ") && begins(&h, "wrong: "));
     for (grade, name) in [(Grade::Wrong, "wrong"), (Grade::Open, "open")] {
         let words = format!("{} {name}", count(&h, grade));
-        h.get_by_role_and_label(Role::CheckBox, &words).click();
+        h.get_by_role_and_label(Role::CheckBox, &words)
+            .click_accesskit();
         h.run_steps(2);
     }
     assert!(
@@ -224,7 +227,8 @@ fn a_count_shows_and_hides_its_grade() {
     // a hidden finding is not stepped to
     keys(&mut h, Modifiers::COMMAND, Key::PageDown);
     assert_eq!(h.state().session().chosen_finding(), None);
-    h.get_by_role_and_label(Role::CheckBox, "1 unclear").click();
+    h.get_by_role_and_label(Role::CheckBox, "1 unclear")
+        .click_accesskit();
     h.run_steps(2);
     keys(&mut h, Modifiers::COMMAND, Key::PageDown);
     assert_eq!(selected(&h), [8]);
@@ -249,6 +253,8 @@ fn findings_are_stepped_through_round_and_round() {
 fn what_a_mend_would_leave_is_shown_and_nothing_is_changed() {
     let mut h = wide(COLLEAGUE);
     choose(&mut h, "unclear: ");
+    // the row is scrolled to
+    h.run_steps(30);
     assert!(!h.state().shows_mend());
     let revision = h.state().session().revision();
     let at = h.get_by_role_and_label(Role::Button, IDLE).rect().center();
@@ -276,7 +282,7 @@ fn a_small_window_scrolls_to_what_is_chosen() {
     h.run_steps(30);
     let begin = |label: Option<String>| label.is_some_and(|l| l.starts_with("wrong: "));
     let row = h.get_all_by_role(Role::Button).find(|n| {
-        begin(n.accesskit_node().label()) && n.accesskit_node().is_selected() == Some(true)
+        begin(n.accesskit_node().label()) && n.accesskit_node().toggled() == Some(Toggled::True)
     });
     let rect = row.unwrap().rect();
     assert!(rect.min.y >= 0.0 && rect.min.y < 300.0, "{rect:?}");

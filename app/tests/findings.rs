@@ -111,9 +111,9 @@ fn a_fault_is_seen_mended_and_brought_back() {
         "unclear: The solid wedge from atom 8 to atom 9 says nothing",
     );
     assert_eq!(selected(&h), [8]);
-    assert_ne!(mark(&h, 8), Mark::Plain);
+    assert_ne!(mark(&h, 7), Mark::Plain);
     click(&mut h, IDLE);
-    assert_eq!(mark(&h, 8), Mark::Plain);
+    assert_eq!(mark(&h, 7), Mark::Plain);
     assert_eq!(count(&h, Grade::Unclear), 0);
     let session = h.state().session();
     assert_eq!(session.undo_name(), Some("Make the bond 8-9 plain"));
@@ -129,7 +129,7 @@ fn a_fault_is_seen_mended_and_brought_back() {
     assert_eq!(entry.after.len(), 1);
     assert!(h.query_by_label("1 mend in the log").is_some());
     keys(&mut h, Modifiers::COMMAND, Key::Z);
-    assert_ne!(mark(&h, 8), Mark::Plain);
+    assert_ne!(mark(&h, 7), Mark::Plain);
     assert_eq!(count(&h, Grade::Unclear), 1);
     assert!(h.state().session().log().is_empty());
     assert!(h.query_by_label("1 mend in the log").is_none());
@@ -271,7 +271,7 @@ fn what_a_mend_would_leave_is_shown_and_nothing_is_changed() {
     h.key_press(Key::Enter);
     h.run_steps(2);
     looked(&mut h);
-    assert_eq!(mark(&h, 8), Mark::Plain);
+    assert_eq!(mark(&h, 7), Mark::Plain);
     assert!(!h.state().shows_mend());
 }
 

@@ -47,7 +47,7 @@ pub(super) fn column(
     let share = if session.findings().is_empty() {
         96.0
     } else {
-        0.5 * room
+        0.6 * room
     };
     let beneath = Panel::bottom("findings")
         .frame(egui::Frame::NONE)
@@ -223,7 +223,8 @@ fn all(ui: &mut Ui, session: &Session, out: &mut Vec<Command>) {
         let button = egui::Button::new(words)
             .stroke(egui::Stroke::new(1.0, colors.accent))
             .min_size(egui::vec2(ui.available_width(), 32.0));
-        if ui.add(button).on_hover_text(command.help()).clicked() {
+        let response = ui.vertical_centered(|ui| ui.add(button)).inner;
+        if response.on_hover_text(command.help()).clicked() {
             out.push(command);
         }
     }

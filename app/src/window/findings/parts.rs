@@ -10,7 +10,9 @@ use egui::{
 use std::sync::Arc;
 
 /// Where the words of a row begin: the sign stands before them.
-const INDENT: f32 = 24.0;
+const INDENT: f32 = 26.0;
+/// Space inside a row at its right.
+const PAD: f32 = 6.0;
 const RADIUS: CornerRadius = CornerRadius::same(4);
 
 /// A count that shows or hides its grade; whether it was pressed.
@@ -63,7 +65,7 @@ fn wrapped(ui: &Ui, words: String, size: f32, color: egui::Color32, width: f32) 
 /// A finding: its sign, its sentence, and in small its grade and what it rests on.
 pub(super) fn row(ui: &mut Ui, finding: &Finding, chosen: bool) -> Response {
     let colors = Colors::of(ui);
-    let width = ui.available_width() - INDENT;
+    let width = ui.available_width() - INDENT - PAD;
     let said = sentence(&finding.text);
     let words = wrapped(ui, said.clone(), TEXT - 0.5, colors.ink, width);
     let (grade, clause) = (finding.grade.name(), finding.clause);
@@ -80,19 +82,18 @@ pub(super) fn row(ui: &mut Ui, finding: &Finding, chosen: bool) -> Response {
     response.widget_info(|| WidgetInfo::selected(Role::Button, true, chosen, &spoken));
     let tip = format!("that this is {grade}: {}", clause.grade.words());
     let response = response.on_hover_text(tip);
-    let wide = rect.expand2(vec2(GRID, 0.0));
     if chosen || response.hovered() {
         let strength = if chosen { 1.0 } else { 0.5 };
         let fill = colors.chosen.gamma_multiply(strength);
-        ui.painter().rect_filled(wide, RADIUS, fill);
+        ui.painter().rect_filled(rect, RADIUS, fill);
     }
     if response.has_focus() {
         let line = Stroke::new(1.0, colors.accent);
         ui.painter()
-            .rect_stroke(wide, RADIUS, line, StrokeKind::Inside);
+            .rect_stroke(rect, RADIUS, line, StrokeKind::Inside);
     }
     let top = rect.min.y + 0.75 * GRID;
-    let at = pos2(rect.min.x + 7.0, top + 0.65 * TEXT);
+    let at = pos2(rect.min.x + 13.0, top + 0.65 * TEXT);
     signs::grade(ui.painter(), at, 6.0, finding.grade, &colors);
     let x = rect.min.x + INDENT;
     let beneath = top + words.size().y + 2.0;

@@ -2,8 +2,7 @@
 //!
 //! `pace FILE.sdf` prints seconds for splitting the file into records, for reading them, and for reading and
 //! labelling them, each the median of five, then the slowest records. `pace FILE.sdf each` prints for every
-//! record its milliseconds, how many of its places carry a letter, and how many are not decided. Times are
-//! those of the processor where the system tells them, else of the clock.
+//! record its milliseconds, how many of its places carry a letter, and how many are not decided.
 #![allow(
     clippy::print_stdout,
     clippy::print_stderr,
@@ -15,35 +14,6 @@ use chem::format::text;
 use chem::pipeline;
 use chem::solve::require::Requirement;
 use std::time::Instant;
-
-/// A moment, for measuring from it.
-struct Moment {
-    processor: Option<f64>,
-    clock: Instant,
-}
-
-impl Moment {
-    fn now() -> Moment {
-        Moment {
-            processor: processor_seconds(),
-            clock: Instant::now(),
-        }
-    }
-
-    fn seconds(&self) -> f64 {
-        match (self.processor, processor_seconds()) {
-            (Some(start), Some(end)) => end - start,
-            _ => self.clock.elapsed().as_secs_f64(),
-        }
-    }
-}
-
-/// Seconds that this process has spent on a processor, where Linux tells them.
-fn processor_seconds() -> Option<f64> {
-    let text = std::fs::read_to_string("/proc/self/schedstat").ok()?;
-    let nanoseconds: u64 = text.split_whitespace().next()?.parse().ok()?;
-    Some(nanoseconds as f64 / 1e9)
-}
 
 fn main() -> std::process::ExitCode {
     let mut args = std::env::args().skip(1);
@@ -71,9 +41,9 @@ fn main() -> std::process::ExitCode {
     let mut slow: Vec<(f64, String)> = pieces
         .iter()
         .map(|p| {
-            let start = Moment::now();
+            let start = Instant::now();
             labelled(p);
-            (start.seconds(), title(p))
+            (start.elapsed().as_secs_f64(), title(p))
         })
         .collect();
     slow.sort_by(|a, b| b.0.total_cmp(&a.0));
@@ -86,13 +56,13 @@ fn main() -> std::process::ExitCode {
 /// One line for each record.
 fn each(bytes: &[u8]) {
     split(bytes, |bytes| {
-        let start = Moment::now();
+        let start = Instant::now();
         let Some(record) = read(bytes) else {
             println!("{}\tcannot be read", title(bytes));
             return;
         };
         let report = pipeline::report(&record.drawing, &Requirement::default());
-        let milliseconds = 1000.0 * start.seconds();
+        let milliseconds = 1000.0 * start.elapsed().as_secs_f64();
         let carried = report.places.iter().filter(|p| p.carries.is_some());
         let undecided = report
             .places
@@ -131,9 +101,9 @@ fn labelled(bytes: &[u8]) -> bool {
 fn median(mut run: impl FnMut() -> usize) -> f64 {
     let mut seconds = [0.0; 5];
     for second in &mut seconds {
-        let start = Moment::now();
+        let start = Instant::now();
         std::hint::black_box(run());
-        *second = start.seconds();
+        *second = start.elapsed().as_secs_f64();
     }
     seconds.sort_by(f64::total_cmp);
     seconds[2]

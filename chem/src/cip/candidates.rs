@@ -10,12 +10,12 @@ use crate::molecule::AtomIx;
 use crate::stereo::{Configuration, Kind, Ligand, Parity, Unit, UnitIx};
 
 /// With so many open units or fewer, every combination is tried.
-const FEW: usize = 6;
+const FEW: usize = 4;
 /// Combinations tried where there are more: a unit that needs two others to differ is missed with a
-/// chance of one in 2^24.
-const ROUNDS: u64 = 24;
+/// chance of one in 2^16.
+const ROUNDS: u64 = 16;
 /// Comparisons that all combinations together may take.
-const MOST_WORK: u64 = 1_000_000;
+const MOST_WORK: u64 = 200_000;
 
 /// What open units could change.
 #[derive(Clone, Debug, PartialEq, Eq)]

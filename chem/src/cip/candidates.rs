@@ -28,6 +28,15 @@ pub struct Outlook {
     pub is_provisional: Vec<bool>,
 }
 
+/// Whether an open unit could carry a descriptor, by itself.
+enum Prospect {
+    Sure,
+    /// It depends on other units.
+    Dependent,
+    None,
+    Stopped(Stop),
+}
+
 /// Units that a combination of configurations is tried for.
 struct Trial<'l> {
     open: Vec<UnitIx>,
@@ -38,11 +47,13 @@ struct Trial<'l> {
 
 impl Ranker<'_> {
     /// What the open units could change; `labels` are those of the units that have a configuration. Hindered
-    /// axes and helices count as open only once a mark speaks of them.
+    /// axes and helices count as open only once a mark speaks of them. Whether open units could carry a
+    /// descriptor is found out for those `asked` for.
     pub fn outlook(
         &self,
         configurations: &[Configuration],
         labels: &[Option<UnitLabel>],
+        asked: impl Fn(UnitIx) -> bool,
     ) -> Outlook {
         let mut outlook = Outlook {
             could_carry: vec![Ok(false); configurations.len()],
@@ -53,6 +64,7 @@ impl Ranker<'_> {
             dependent: Vec::new(),
             lettered: Vec::new(),
         };
+        let mut others = Vec::new();
         for (ix, unit) in self.units.iter() {
             let i = ix.index();
             match configurations[i] {
@@ -66,26 +78,46 @@ impl Ranker<'_> {
                     continue;
                 }
                 Configuration::Open if needs_mark(unit) => continue,
+                Configuration::Open | Configuration::Either if !asked(ix) => {
+                    others.push(ix);
+                    continue;
+                }
                 Configuration::Open | Configuration::Either => {}
             }
-            match self.by_constitution(ix) {
-                Ok(Some(_)) => {
+            match self.prospect(ix) {
+                Prospect::Sure => {
                     outlook.could_carry[i] = Ok(true);
                     trial.open.push(ix);
                 }
-                Ok(None) if self.may_be_parted(ix) => {
+                Prospect::Dependent => {
                     trial.dependent.push(ix);
                     trial.open.push(ix);
                 }
-                Ok(None) => {}
-                Err(stop) => outlook.could_carry[i] = Err(stop),
+                Prospect::None => {}
+                Prospect::Stopped(stop) => outlook.could_carry[i] = Err(stop),
             }
         }
         let concerns_any = !(trial.dependent.is_empty() && trial.lettered.is_empty());
-        if concerns_any && !trial.open.is_empty() {
+        if !concerns_any {
+            return outlook;
+        }
+        let counts =
+            |ix: &UnitIx| matches!(self.prospect(*ix), Prospect::Sure | Prospect::Dependent);
+        trial.open.extend(others.into_iter().filter(counts));
+        trial.open.sort_unstable();
+        if !trial.open.is_empty() {
             self.try_combinations(configurations, &trial, &mut outlook);
         }
         outlook
+    }
+
+    fn prospect(&self, ix: UnitIx) -> Prospect {
+        match self.by_constitution(ix) {
+            Ok(Some(_)) => Prospect::Sure,
+            Ok(None) if self.may_be_parted(ix) => Prospect::Dependent,
+            Ok(None) => Prospect::None,
+            Err(stop) => Prospect::Stopped(stop),
+        }
     }
 
     fn try_combinations(

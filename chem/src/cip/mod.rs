@@ -250,8 +250,17 @@ impl<'a> Ranker<'a> {
     /// The labels of all units in a molecule whose units have these configurations. A unit without one is
     /// [`Missing::Undefined`] if it could carry a descriptor, else [`Missing::Alike`].
     pub fn label_all(&self, configurations: &[Configuration]) -> Vec<UnitLabel> {
+        self.label_asked(configurations, |_| true)
+    }
+
+    /// The same, but open units that are not `asked` for are taken as undefined and not ranked.
+    pub fn label_asked(
+        &self,
+        configurations: &[Configuration],
+        asked: impl Fn(UnitIx) -> bool,
+    ) -> Vec<UnitLabel> {
         let defined = self.label_defined(configurations);
-        let outlook = self.outlook(configurations, &defined);
+        let outlook = self.outlook(configurations, &defined, &asked);
         defined
             .into_iter()
             .enumerate()
@@ -260,7 +269,14 @@ impl<'a> Ranker<'a> {
                     is_provisional: outlook.is_provisional[i],
                     ..label
                 },
-                None => self.undefined(UnitIx::new(i), outlook.could_carry[i]),
+                None if asked(UnitIx::new(i)) => {
+                    self.undefined(UnitIx::new(i), outlook.could_carry[i])
+                }
+                None => UnitLabel {
+                    descriptor: Err(Missing::Undefined),
+                    ranking: None,
+                    is_provisional: false,
+                },
             })
             .collect()
     }

@@ -24,7 +24,7 @@ pub fn labels_of(
     let ranker = Ranker::new(molecule, rings, units, Limits::default());
     let labels = ranker.label_defined(configurations);
     let outlook = may_be_provisional(configurations, &labels)
-        .then(|| ranker.outlook(configurations, &labels));
+        .then(|| ranker.outlook(configurations, &labels, |_| false));
     let notes = outlook
         .map(|outlook| {
             let concerned = units

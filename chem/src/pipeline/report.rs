@@ -18,7 +18,8 @@ pub fn report(drawing: &Drawing, requirement: &Requirement) -> Report {
     let (rings, units) = perceived(drawing);
     let ranker = Ranker::new(drawing.molecule(), &rings, &units, Limits::default());
     let reading = wedge::read(drawing, &units);
-    reported(drawing, requirement, &rings, &units, &reading, &ranker)
+    let labels = ranker.label_all(reading.configurations());
+    reported(drawing, requirement, &rings, &units, &reading, &labels)
 }
 
 fn reported(
@@ -27,9 +28,8 @@ fn reported(
     rings: &Rings,
     units: &Units,
     reading: &Reading,
-    ranker: &Ranker<'_>,
+    labels: &[UnitLabel],
 ) -> Report {
-    let labels = ranker.label_all(reading.configurations());
     let mut places: Vec<Place> = units
         .iter()
         .filter_map(|(ix, unit)| {
@@ -42,7 +42,7 @@ fn reported(
     places.sort_by_key(|p| p.atoms.clone());
     Report {
         places,
-        idle: idle(drawing, rings, units, &labels),
+        idle: idle(drawing, rings, units, labels),
     }
 }
 
@@ -183,14 +183,11 @@ pub fn carried(drawing: &Drawing) -> Carried {
     let reading = wedge::read(drawing, &units);
     if is_odd(drawing, &units, &reading) {
         let ranker = Ranker::new(drawing.molecule(), &rings, &units, Limits::default());
-        let report = reported(
-            drawing,
-            &Requirement::default(),
-            &rings,
-            &units,
-            &reading,
-            &ranker,
-        );
+        // open places that no mark speaks of are not told here
+        let asked = |ix: UnitIx| reading.doubt(ix).is_some() || has_mark(drawing, units.get(ix));
+        let labels = ranker.label_asked(reading.configurations(), asked);
+        let nothing = Requirement::default();
+        let report = reported(drawing, &nothing, &rings, &units, &reading, &labels);
         return Carried {
             labels: report.labels_line(),
             faults: report.faults(),

@@ -2,9 +2,9 @@
 
 use super::records::{self, FAULT};
 use super::wish::Wish;
-use super::{Failure, Status, say};
+use super::{Failure, Status, each_file, say};
 use crate::args::Audit;
-use crate::files::{FileError, Piece, Source, Target};
+use crate::files::{Piece, Source, Target};
 use chem::audit::{self, Finding, Grade};
 use chem::format::Notice;
 use serde::Serialize;
@@ -24,21 +24,7 @@ struct Answer {
 
 pub(super) fn run(args: &Audit) -> Result<Status, Failure> {
     let wish = Wish::new(args.carry.as_deref(), args.carry_field.as_deref())?;
-    let mut out = Target::create(Path::new("-"))?;
-    let mut status = Status::Good;
-    for path in &args.files {
-        // a file that cannot be used does not keep the others from it
-        match one_file(path, args, wish, &mut out) {
-            Ok(ended) => status = status.max(ended),
-            Err(failure @ Failure::File(FileError::Write { .. })) => return Err(failure),
-            Err(failure) => {
-                say(&failure.to_string());
-                status = Status::Unusable;
-            }
-        }
-    }
-    out.save()?;
-    Ok(status)
+    each_file(&args.files, |path, out| one_file(path, args, wish, out))
 }
 
 fn one_file(

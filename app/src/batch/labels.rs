@@ -1,9 +1,9 @@
 //! `labels`: what each drawing carries.
 
 use super::records::{self, FAULT};
-use super::{Failure, Status, say};
+use super::{Failure, Status, each_file, say};
 use crate::args::Labels;
-use crate::files::{FileError, Piece, Source, Target};
+use crate::files::{Piece, Source, Target};
 use chem::cip::{Compared, Tie};
 use chem::format::{Notice, ReadError};
 use chem::pipeline::{self, Place};
@@ -25,22 +25,8 @@ struct Answer {
 }
 
 pub(super) fn run(args: &Labels) -> Result<Status, Failure> {
-    let mut out = Target::create(Path::new("-"))?;
-    let mut status = Status::Good;
     let many = args.files.len() > 1;
-    for path in &args.files {
-        // a file that cannot be used does not keep the others from it
-        match one_file(path, many, args, &mut out) {
-            Ok(ended) => status = status.max(ended),
-            Err(failure @ Failure::File(FileError::Write { .. })) => return Err(failure),
-            Err(failure) => {
-                say(&failure.to_string());
-                status = Status::Unusable;
-            }
-        }
-    }
-    out.save()?;
-    Ok(status)
+    each_file(&args.files, |path, out| one_file(path, many, args, out))
 }
 
 fn one_file(path: &Path, many: bool, args: &Labels, out: &mut Target) -> Result<Status, Failure> {

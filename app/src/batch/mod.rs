@@ -10,8 +10,9 @@ mod records;
 mod wish;
 
 use crate::args::Verb;
-use crate::files::FileError;
+use crate::files::{FileError, Target};
 use std::io::{self, Write};
+use std::path::{Path, PathBuf};
 
 /// How a run ended.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
@@ -92,6 +93,28 @@ pub fn run(verb: Verb) -> Status {
         say(&failure.to_string());
         Status::Unusable
     })
+}
+
+/// Does `one` for each file and sends what it writes to standard output. A file that cannot be used does
+/// not keep the others from it.
+fn each_file(
+    files: &[PathBuf],
+    mut one: impl FnMut(&Path, &mut Target) -> Result<Status, Failure>,
+) -> Result<Status, Failure> {
+    let mut out = Target::create(Path::new("-"))?;
+    let mut status = Status::Good;
+    for path in files {
+        match one(path, &mut out) {
+            Ok(ended) => status = status.max(ended),
+            Err(failure @ Failure::File(FileError::Write { .. })) => return Err(failure),
+            Err(failure) => {
+                say(&failure.to_string());
+                status = Status::Unusable;
+            }
+        }
+    }
+    out.save()?;
+    Ok(status)
 }
 
 /// A message on standard error, under the program's name.

@@ -85,10 +85,9 @@ impl Context {
                     duplicates: if neglected || neglects_pi(molecule, n.atom) {
                         0
                     } else {
-                        let dative = [a, n.atom]
-                            .iter()
-                            .any(|end| drawn_without_charges(molecule, *end) == Some(n.bond));
-                        n.order.pairs().saturating_sub(1 + u8::from(dative))
+                        let further = n.order.pairs().saturating_sub(1);
+                        let charged = |end| drawn_without_charges(molecule, end) == Some(n.bond);
+                        further - u8::from(further > 0 && (charged(a) || charged(n.atom)))
                     },
                     in_ring: rings.has_bond(n.bond),
                     is_vague: n.order.is_vague(),

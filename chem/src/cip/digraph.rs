@@ -32,6 +32,16 @@ pub(super) enum NodeKind {
     Hydrogen,
 }
 
+/// Whether it is known what a node stands for.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) enum Known {
+    Yes,
+    /// Some atom or other is there.
+    Placeholder,
+    /// The order of the bond that leads there is not stated: perhaps none is there.
+    BondUnstated,
+}
+
 #[derive(Clone, Debug)]
 pub(super) struct Node {
     /// The atom it stands for; of a hydrogen, the atom that bears it.
@@ -42,13 +52,13 @@ pub(super) struct Node {
     pub(super) sphere: u32,
     /// Of a ring duplicate, the sphere of the atom that it repeats.
     pub(super) original_sphere: u32,
-    /// Atomic number; whether it, or the bond that leads here, is unknown says `wildcard`.
+    /// Atomic number, as far as it is known.
     pub(super) number: Code,
     /// Mass for Rule 2.
     pub(super) mass: Code,
     n_children: u32,
     pub(super) kind: NodeKind,
-    pub(super) wildcard: bool,
+    pub(super) known: Known,
     grown: bool,
     /// Auxiliary descriptor, once found.
     pub(super) descriptor: Option<Descriptor>,
@@ -151,7 +161,7 @@ impl<'a> Digraph<'a> {
                     if bond.is_vague
                         && let Some(child) = self.nodes.last_mut()
                     {
-                        child.wildcard = true;
+                        child.known = Known::BondUnstated;
                     }
                 }
                 for _ in 0..bond.duplicates {
@@ -221,7 +231,11 @@ impl<'a> Digraph<'a> {
             mass,
             n_children: 0,
             kind,
-            wildcard: of.wildcard && kind != NodeKind::Hydrogen,
+            known: if of.wildcard && kind != NodeKind::Hydrogen {
+                Known::Placeholder
+            } else {
+                Known::Yes
+            },
             grown: false,
             descriptor: None,
         });

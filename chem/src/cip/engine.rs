@@ -10,7 +10,7 @@
 
 use super::Stop;
 use super::context::Code;
-use super::digraph::{Digraph, NodeIx, NodeKind, Nodes};
+use super::digraph::{Digraph, Known, NodeIx, NodeKind, Nodes};
 use super::rules::{Step, rule4b};
 use crate::molecule::AtomIx;
 use rustc_hash::FxHashMap;
@@ -57,6 +57,13 @@ impl Ranked {
     fn is_tied(&self, i: usize) -> bool {
         i + 1 < self.nodes.len() && i < 64 && self.ties & (1 << i) != 0
     }
+}
+
+/// What to take for a number that is not known.
+#[derive(Clone, Copy)]
+enum Bound {
+    Lowest,
+    Highest,
 }
 
 /// Known orders of what lies beyond a node, seen from its parent, under one step.
@@ -354,16 +361,16 @@ impl<'a> Engine<'a> {
         Ok(None)
     }
 
-    /// Rule 1a on the sets beyond two nodes: all atomic numbers from high to low; the longer set wins. A
-    /// placeholder in them matters only if some atom in its place would change the outcome.
+    /// Rule 1a on the sets beyond two nodes: all atomic numbers from high to low; the longer set wins. What
+    /// is not known in them matters only if some atom in its place would change the outcome.
     fn compare_sets(&mut self, a: Branch, b: Branch) -> Result<Ordering, Stop> {
-        let (low_a, unknown_a) = self.numbers(a, Code::MIN)?;
-        let (low_b, unknown_b) = self.numbers(b, Code::MIN)?;
-        if !unknown_a && !unknown_b {
+        let (low_a, all_known_a) = self.numbers(a, Bound::Lowest)?;
+        let (low_b, all_known_b) = self.numbers(b, Bound::Lowest)?;
+        if all_known_a && all_known_b {
             return Ok(low_a.cmp(&low_b));
         }
-        let (high_a, _) = self.numbers(a, Code::MAX)?;
-        let (high_b, _) = self.numbers(b, Code::MAX)?;
+        let (high_a, _) = self.numbers(a, Bound::Highest)?;
+        let (high_b, _) = self.numbers(b, Bound::Highest)?;
         if low_a > high_b {
             Ok(Ordering::Greater)
         } else if high_a < low_b {
@@ -373,33 +380,38 @@ impl<'a> Engine<'a> {
         }
     }
 
-    /// Atomic numbers beyond a branch, from high to low, with one in the place of those not known; and
-    /// whether there are such.
+    /// Atomic numbers beyond a branch, from high to low, as low or as high as they may be where something is
+    /// not known; and whether all is known.
     fn numbers(
         &mut self,
         branch: Branch,
-        unknown: Code,
+        bound: Bound,
     ) -> Result<(SmallVec<[Code; 6]>, bool), Stop> {
         let set = self.tree.away_from(branch.node, branch.from)?;
         self.spend(set.len() as u64)?;
         let mut numbers = SmallVec::new();
-        let mut has_unknown = false;
+        let mut all_known = true;
         for ix in &set {
             let node = self.tree.node(*ix);
-            has_unknown |= node.wildcard;
-            numbers.push(if node.wildcard { unknown } else { node.number });
+            all_known &= node.known == Known::Yes;
+            match (node.known, bound) {
+                (Known::Yes, _) => numbers.push(node.number),
+                (_, Bound::Highest) => numbers.push(Code::MAX),
+                (Known::Placeholder, Bound::Lowest) => numbers.push(Code::MIN),
+                (Known::BondUnstated, Bound::Lowest) => {}
+            }
         }
         // children stand in this order already; a parent among them comes last
-        if has_unknown || self.tree.node(branch.node).parent != branch.from {
+        if !all_known || self.tree.node(branch.node).parent != branch.from {
             numbers.sort_unstable_by(|x: &Code, y| y.cmp(x));
         }
-        Ok((numbers, has_unknown))
+        Ok((numbers, all_known))
     }
 
     fn compare_nodes(&mut self, a: NodeIx, b: NodeIx, step: Step) -> Result<Ordering, Stop> {
         self.spend(1)?;
         let (a, b) = (self.tree.node(a), self.tree.node(b));
-        if step == Step::R1a && (a.wildcard || b.wildcard) {
+        if step == Step::R1a && (a.known != Known::Yes || b.known != Known::Yes) {
             return Err(Stop::Placeholder);
         }
         Ok(step.compare(a, b, self.reference))

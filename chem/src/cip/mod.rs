@@ -163,6 +163,14 @@ pub struct UnitLabel {
     pub is_provisional: bool,
 }
 
+impl UnitLabel {
+    /// Whether there is a letter and it rests on other units (Rules 3 to 6).
+    pub fn rests_on_others(&self) -> bool {
+        let late = |ranking: &Ranking| !ranking.rule.is_constitutional();
+        self.descriptor.is_ok() && self.ranking.as_ref().is_some_and(late)
+    }
+}
+
 /// Ranks and labels the units of one molecule.
 #[derive(Debug)]
 pub struct Ranker<'a> {

@@ -3,11 +3,10 @@
 use super::report::{PROVISIONAL, about, explained, spell};
 use super::{Carried, Place, Report, Sense, Verdict};
 use crate::cip::{Limits, Missing, Ranker, Tie, UnitLabel};
-use crate::element::Element;
 use crate::format::smiles::Smiles;
 use crate::molecule::Molecule;
 use crate::perceive::Rings;
-use crate::stereo::{Configuration, Focus, Kind, Ligand, Unit, Units};
+use crate::stereo::{Configuration, Unit, Units};
 
 /// The labels of a molecule whose units have these configurations, and which of them are provisional.
 /// Units that are open are not ranked. `rings` and `units` are those of the molecule.
@@ -50,12 +49,8 @@ pub fn labels_of(
 
 /// Whether a letter rests on other units while some unit is open.
 fn may_be_provisional(configurations: &[Configuration], labels: &[Option<UnitLabel>]) -> bool {
-    let rests = |label: &UnitLabel| {
-        let rule = label.ranking.as_ref().map(|r| r.rule);
-        label.descriptor.is_ok() && rule.is_some_and(|r| !r.is_constitutional())
-    };
     let is_open = |c: &Configuration| !matches!(c, Configuration::Defined(_));
-    labels.iter().flatten().any(rests) && configurations.iter().any(is_open)
+    labels.iter().flatten().any(UnitLabel::rests_on_others) && configurations.iter().any(is_open)
 }
 
 /// What a line carries, place by place; nothing is asked of it.
@@ -101,17 +96,7 @@ fn is_shown(
 ) -> bool {
     match label.descriptor {
         Ok(_) => true,
-        Err(Missing::Undefined) => {
-            // a nitrogen that its cage holds is not open, merely unmarked; an axis may turn freely
-            let held_by_cage = match unit.focus {
-                Focus::Center(atom) => {
-                    molecule.element(atom) == Element::N && unit.ligands.contains(&Ligand::LonePair)
-                }
-                Focus::Pair(_) => false,
-            };
-            let needs_mark = matches!(unit.kind, Kind::HinderedAxis | Kind::Helix);
-            !held_by_cage && !needs_mark
-        }
+        Err(Missing::Undefined) => !unit.is_held_nitrogen(molecule) && !unit.kind.needs_mark(),
         Err(Missing::Stopped(_)) => matches!(configuration, Configuration::Defined(_)),
         Err(Missing::Alike) => false,
     }

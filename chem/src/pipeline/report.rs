@@ -260,14 +260,10 @@ fn is_shown(
     match label.descriptor {
         // a nitrogen that its cage holds is not open, merely unmarked
         Err(Missing::Undefined) => {
-            let held_by_cage = unit.ligands.contains(&Ligand::LonePair)
-                && drawing.molecule().element(unit.atoms()[0]) == Element::N
-                && matches!(unit.focus, Focus::Center(_));
             let silent =
                 reading.doubt(ix).is_none() && reading.configuration(ix) == Configuration::Open;
-            // only a mark says that rotation about a bond is hindered or that rings form a helix
-            let needs_mark = matches!(unit.kind, Kind::HinderedAxis | Kind::Helix);
-            !((held_by_cage || needs_mark) && silent)
+            let unmarked = unit.is_held_nitrogen(drawing.molecule()) || unit.kind.needs_mark();
+            !(unmarked && silent)
         }
         Err(Missing::Stopped(_)) => has_mark(drawing, unit),
         _ => false,

@@ -111,3 +111,50 @@ fn flat_neighbors(molecule: &Molecule, end: AtomIx, partner: AtomIx) -> Option<[
         _ => None,
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::super::Units;
+    use super::*;
+    use crate::molecule::tests::build;
+
+    /// Hindered axes of a benzene ring with methyl groups beside a substituent on atom 0.
+    fn axes(symbols: &[&str], bonds: &[(usize, usize, u8)]) -> Vec<([usize; 2], [bool; 2])> {
+        let ring = (0..6).map(|i| (i, (i + 1) % 6, if i % 2 == 0 { 2 } else { 1 }));
+        let all: Vec<_> = ring
+            .chain([(1, 6, 1), (5, 7, 1)])
+            .chain(bonds.iter().copied())
+            .collect();
+        let m = build(&[&["C"; 8], symbols].concat(), &all);
+        let units = Units::find(&m, &Rings::find(&m));
+        let hindered = units.iter().filter(|(_, u)| u.kind == Kind::HinderedAxis);
+        hindered
+            .filter_map(|(_, u)| match u.focus {
+                Focus::Pair(ends) => Some((ends.map(AtomIx::index), u.mute)),
+                Focus::Center(_) => None,
+            })
+            .collect()
+    }
+
+    #[test]
+    fn a_flat_group_on_a_flat_ring() {
+        // a styrene, a benzamide and an anilide: the ring's end alone speaks
+        let styrene = [(0, 8, 1), (8, 9, 2), (8, 10, 1)];
+        let expected = [([0, 8], [false, true])];
+        assert_eq!(axes(&["C", "C", "Cl"], &styrene), expected);
+        let amide = [(0, 8, 1), (8, 9, 2), (8, 10, 1), (10, 11, 1)];
+        assert_eq!(axes(&["C", "O", "N", "C"], &amide), expected);
+        let anilide = [(0, 8, 1), (8, 9, 1), (8, 10, 1), (10, 11, 2)];
+        assert_eq!(axes(&["N", "C", "C", "O"], &anilide), expected);
+    }
+
+    #[test]
+    fn groups_that_turn_or_are_not_flat() {
+        let acid = [(0, 8, 1), (8, 9, 2), (8, 10, 1)];
+        assert!(axes(&["C", "O", "O"], &acid).is_empty());
+        let alkyl = [(0, 8, 1), (8, 9, 1), (8, 10, 1)];
+        assert!(axes(&["C", "C", "Cl"], &alkyl).is_empty());
+        // a vinyl group with a hydrogen at the axis
+        assert!(axes(&["C", "C"], &[(0, 8, 1), (8, 9, 2)]).is_empty());
+    }
+}

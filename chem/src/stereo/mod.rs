@@ -18,6 +18,7 @@ mod tetrahedral;
 pub use descriptor::Descriptor;
 pub use double_bond::LARGEST_CIS_RING;
 
+use crate::element::Element;
 use crate::molecule::{AtomIx, Molecule};
 use crate::perceive::Rings;
 use smallvec::SmallVec;
@@ -47,6 +48,12 @@ impl Kind {
             Kind::HinderedAxis => "hindered-axis",
             Kind::Helix => "helix",
         }
+    }
+
+    /// Whether only a mark can tell that a unit of this kind is there: that rotation is hindered, or that
+    /// rings form a helix.
+    pub fn needs_mark(self) -> bool {
+        matches!(self, Kind::HinderedAxis | Kind::Helix)
     }
 
     /// Whether a unit of this kind can carry such a letter at all.
@@ -132,6 +139,17 @@ impl Unit {
         match self.focus {
             Focus::Center(a) => SmallVec::from_slice(&[a]),
             Focus::Pair(ends) => SmallVec::from_slice(&ends),
+        }
+    }
+
+    /// Whether it is a nitrogen with a lone pair: its cage holds it, so that without a mark it is not open,
+    /// merely unmarked.
+    pub fn is_held_nitrogen(&self, molecule: &Molecule) -> bool {
+        match self.focus {
+            Focus::Center(atom) => {
+                molecule.element(atom) == Element::N && self.ligands.contains(&Ligand::LonePair)
+            }
+            Focus::Pair(_) => false,
         }
     }
 
